@@ -7,3 +7,8 @@
 
 // 0 · knows no chemistry
 pub mod numeric;
+
+// 1 · vocabulary
+pub mod problem;
+pub mod quantity;
+pub mod units;
