@@ -12,3 +12,20 @@ pub mod numeric;
 pub mod problem;
 pub mod quantity;
 pub mod units;
+pub mod citation;
+pub mod constants;
+pub mod wording;
+
+// 3 · what was observed
+pub mod measurements;
+
+// 4 · one run
+pub mod rate_law;
+
+// 5 · all runs
+pub mod temperature_law;
+
+// 6 · deciding
+pub mod answer;
+pub mod grounds;
+pub mod question;

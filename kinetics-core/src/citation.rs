@@ -1,0 +1,56 @@
+//! Published sources, as values, so that page, record and code name the same ones.
+
+use serde::Serialize;
+
+/// A published source of a method or a figure.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+pub struct Citation {
+    /// Authors, as printed.
+    pub authors: &'static str,
+    /// Year of publication.
+    pub year: u16,
+    /// Journal or publisher, volume, page.
+    pub place: &'static str,
+    /// What it is cited for.
+    pub used_for: &'static str,
+}
+
+macro_rules! citations {
+    ($($(#[$doc:meta])* $name:ident = $authors:literal, $year:literal, $place:literal, $for:literal;)*) => {
+        $($(#[$doc])* pub const $name: Citation =
+            Citation { authors: $authors, year: $year, place: $place, used_for: $for };)*
+    };
+}
+
+citations! {
+    /// The Arrhenius equation.
+    ARRHENIUS = "S. Arrhenius", 1889, "Z. Phys. Chem. 4, 226", "the exponential law of k and T";
+    /// The Eyring equation.
+    EYRING = "H. Eyring", 1935, "J. Chem. Phys. 3, 107", "the Eyring law, ΔH‡ and ΔS‡";
+    /// Centring at a reference temperature.
+    REFERENCE_TEMPERATURE = "M. Schwaab and J. C. Pinto", 2007, "Chem. Eng. Sci. 62, 2750",
+        "the reference temperature that keeps k and Ea apart";
+    /// QR for least squares.
+    LEAST_SQUARES = "Å. Björck", 1996, "Numerical Methods for Least Squares Problems, SIAM",
+        "weighted least squares by QR";
+    /// Q-profile interval of the run-to-run variance.
+    Q_PROFILE = "W. Viechtbauer", 2007, "Stat. Med. 26, 37",
+        "what the data say of the scatter between runs";
+    /// Generalised inference.
+    GENERALISED_INFERENCE = "H. K. Iyer, C. M. Wang and T. Mathew", 2004,
+        "J. Am. Stat. Assoc. 99, 1060", "intervals averaged over that scatter";
+    /// Regression intervals and diagnostics.
+    REGRESSION = "N. R. Draper and H. Smith", 1998, "Applied Regression Analysis, 3rd ed., Wiley",
+        "confidence and prediction intervals of a line, F test of a further term";
+    /// Influence.
+    INFLUENCE = "R. D. Cook", 1977, "Technometrics 19, 15", "the influence of single runs";
+    /// Constants.
+    CONSTANTS = "CODATA", 2022, "recommended values, exact since the 2019 SI", "R, k_B and h";
+}
+
+impl Citation {
+    /// One line for a list of references.
+    pub fn line(&self) -> String {
+        format!("{} {}, {}: {}.", self.authors, self.year, self.place, self.used_for)
+    }
+}

@@ -1,0 +1,14 @@
+//! What was observed, typed: runs with a temperature and a rate constant.
+
+use crate::quantity::Kelvin;
+
+/// One run as a law sees it.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Observation {
+    /// Temperature of the run.
+    pub temperature: Kelvin,
+    /// ln of its rate constant, in the base unit of the study.
+    pub ln_rate: f64,
+    /// Standard deviation of that logarithm, where an error is stated.
+    pub ln_sd: Option<f64>,
+}

@@ -1,0 +1,308 @@
+//! The blanks of a question: read from a study, or from what was typed into the sentence.
+
+use serde_json::{Map, Value};
+
+use super::{MOST_ROWS, Question, quantity_value};
+use crate::answer::{Basis, Refusal};
+use crate::problem::shortened;
+use crate::quantity::{Kelvin, Quantity, Seconds};
+
+/// What a blank takes.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum BlankKind {
+    /// A temperature.
+    Temperature,
+    /// A part of the initial amount, or a concentration.
+    Part,
+    /// A time.
+    Time,
+}
+
+impl BlankKind {
+    /// What is expected, in words.
+    pub fn expected(self) -> &'static str {
+        match self {
+            Self::Temperature => "a temperature such as 25 °C, or several: 5, 25, 40 °C",
+            Self::Part => "a part such as 5 %, or a concentration such as 0.1 mol/L",
+            Self::Time => "a time such as 8 h, or several: 1, 7, 30 d",
+        }
+    }
+
+    fn default_unit(self) -> Option<&'static str> {
+        match self {
+            Self::Part => Some("%"),
+            Self::Temperature | Self::Time => None,
+        }
+    }
+
+    fn check(self, quantity: &Quantity) -> Result<(), String> {
+        let outcome = match self {
+            Self::Temperature => quantity.kelvin().map(drop),
+            Self::Part => quantity.concentration().map(drop),
+            Self::Time => quantity.seconds().map(drop),
+        };
+        outcome.map_err(|error| error.to_string())
+    }
+}
+
+/// Filled blanks of one question, one value each.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Blanks {
+    values: Vec<(&'static str, Quantity)>,
+    /// Whether a blank held a list, so that the answer is a table.
+    pub from_list: bool,
+}
+
+impl Blanks {
+    fn quantity(&self, name: &str) -> Result<&Quantity, Refusal> {
+        self.values
+            .iter()
+            .find(|(n, _)| *n == name)
+            .map(|(_, q)| q)
+            .ok_or_else(|| Refusal::new(format!("The blank “{name}” is empty."), "Fill it in."))
+    }
+
+    /// A temperature.
+    ///
+    /// # Errors
+    /// A missing blank, an unknown unit, or a temperature that is not above 0 K.
+    pub fn temperature(&self, name: &str) -> Result<Kelvin, Refusal> {
+        let quantity = self.quantity(name)?;
+        quantity.kelvin().map_err(|error| unusable(&error, BlankKind::Temperature))
+    }
+
+    /// A time above zero.
+    ///
+    /// # Errors
+    /// A missing blank, an unknown unit, or a time that is not above zero.
+    pub fn time(&self, name: &str) -> Result<Seconds, Refusal> {
+        let time =
+            self.quantity(name)?.seconds().map_err(|error| unusable(&error, BlankKind::Time))?;
+        if time.0 > 0.0 {
+            Ok(time)
+        } else {
+            Err(Refusal::new("The time is not above zero.", "Write a time above zero."))
+        }
+    }
+
+    /// A part of the initial amount as a fraction; a concentration is divided by the initial one.
+    ///
+    /// # Errors
+    /// A missing blank, an unknown unit, or a concentration that cannot be compared with the
+    /// initial one.
+    pub fn part(&self, name: &str, basis: &Basis) -> Result<f64, Refusal> {
+        let quantity = self.quantity(name)?;
+        if let Ok(fraction) = quantity.fraction() {
+            return Ok(fraction);
+        }
+        let (value, kind) =
+            quantity.concentration().map_err(|error| unusable(&error, BlankKind::Part))?;
+        let initial = basis.initial_concentration.ok_or_else(|| {
+            Refusal::new(
+                format!("{quantity} is a part of an initial concentration that is not stated."),
+                "State the initial concentration, or ask in %.",
+            )
+        })?;
+        if initial.kind == kind {
+            Ok(value / initial.value)
+        } else {
+            Err(Refusal::new(
+                format!("{quantity} does not convert into the unit of the initial concentration."),
+                "Use the same kind of concentration for both, or ask in %.",
+            ))
+        }
+    }
+
+    /// The blanks as a study states them.
+    pub fn to_map(&self) -> Map<String, Value> {
+        self.values.iter().map(|(name, q)| ((*name).into(), quantity_value(q))).collect()
+    }
+}
+
+fn unusable(error: &crate::units::UnitError, kind: BlankKind) -> Refusal {
+    let said = error.to_string();
+    let mut letters = said.chars();
+    let first: String = letters.next().map(|c| c.to_uppercase().collect()).unwrap_or_default();
+    Refusal::new(format!("{first}{}.", letters.as_str()), format!("Write {}.", kind.expected()))
+}
+
+/// Every combination of the lists in a question's blanks, the last blank running fastest.
+pub(super) fn read(
+    question: &Question,
+    asked: &Map<String, Value>,
+) -> Result<Vec<Blanks>, Refusal> {
+    let mut combinations = vec![Blanks { values: Vec::new(), from_list: false }];
+    for blank in question.blanks {
+        let given = asked.get(blank.name).filter(|v| !v.is_null()).ok_or_else(|| {
+            Refusal::new(
+                format!("The blank “{}” is empty.", blank.name),
+                format!("Write {}.", blank.kind.expected()),
+            )
+        })?;
+        let (entries, is_list) = match given {
+            Value::Array(several) => (several.as_slice(), true),
+            single => (std::slice::from_ref(single), false),
+        };
+        if combinations.len().saturating_mul(entries.len()) > MOST_ROWS {
+            return Err(Refusal::new(
+                format!("The lists make more than {MOST_ROWS} combinations."),
+                "Shorten them, or ask twice.",
+            ));
+        }
+        let quantities = entries
+            .iter()
+            .map(|entry| {
+                serde_json::from_value::<Quantity>(entry.clone()).map_err(|_| {
+                    Refusal::new(
+                        format!(
+                            "The blank “{}” holds {}.",
+                            blank.name,
+                            shortened(&entry.to_string())
+                        ),
+                        format!("Write {}.", blank.kind.expected()),
+                    )
+                })
+            })
+            .collect::<Result<Vec<Quantity>, Refusal>>()?;
+        combinations = combinations
+            .iter()
+            .flat_map(|so_far| {
+                quantities.iter().map(|quantity| {
+                    let mut next = so_far.clone();
+                    next.values.push((blank.name, quantity.clone()));
+                    next.from_list |= is_list;
+                    next
+                })
+            })
+            .collect();
+    }
+    if combinations.is_empty() {
+        return Err(Refusal::new("A list is empty.", "Write at least one value."));
+    }
+    Ok(combinations)
+}
+
+/// Reads what was typed into a blank: one quantity or a list that shares the last unit,
+/// `25 °C`, `5, 25, 40 °C`, `8 h; 2 d`. `decimal` is the decimal sign in use; with `,` a list is
+/// separated by `;` or by a comma before a space.
+///
+/// # Errors
+/// What was found and what is expected, as a sentence.
+pub fn parse_blank(text: &str, kind: BlankKind, decimal: char) -> Result<Vec<Quantity>, String> {
+    let complaint =
+        |found: &str| format!("Found “{}”, expected {}.", shortened(found.trim()), kind.expected());
+    let mut entries: Vec<(f64, String)> = Vec::new();
+    for piece in split_list(text, decimal) {
+        let (number, unit) = split_number(piece, decimal).ok_or_else(|| complaint(piece))?;
+        entries.push((number, unit.to_owned()));
+    }
+    let mut last_unit = kind.default_unit().unwrap_or_default().to_owned();
+    for (_, unit) in entries.iter_mut().rev() {
+        if unit.is_empty() {
+            unit.clone_from(&last_unit);
+        } else {
+            last_unit.clone_from(unit);
+        }
+    }
+    let quantities: Vec<Quantity> =
+        entries.into_iter().map(|(value, unit)| Quantity { value, unit }).collect();
+    if quantities.is_empty() || quantities.len() > MOST_ROWS {
+        return Err(complaint(text));
+    }
+    for quantity in &quantities {
+        if quantity.unit.is_empty() {
+            return Err(complaint(text));
+        }
+        kind.check(quantity)?;
+    }
+    Ok(quantities)
+}
+
+fn split_list(text: &str, decimal: char) -> impl Iterator<Item = &str> {
+    let mut pieces = Vec::new();
+    let mut start = 0;
+    for (at, sign) in text.char_indices() {
+        let next_is_space = text[at + sign.len_utf8()..].starts_with(char::is_whitespace);
+        if sign == ';' || (sign == ',' && (decimal != ',' || next_is_space)) {
+            pieces.push(&text[start..at]);
+            start = at + sign.len_utf8();
+        }
+    }
+    pieces.push(&text[start..]);
+    pieces.into_iter().map(str::trim).filter(|p| !p.is_empty())
+}
+
+fn split_number(piece: &str, decimal: char) -> Option<(f64, &str)> {
+    let end = piece
+        .char_indices()
+        .find(|(_, c)| !(c.is_ascii_digit() || matches!(c, '.' | ',' | '-' | '+' | '\u{2212}')))
+        .map_or(piece.len(), |(at, _)| at);
+    // An exponent belongs to the number: 1e-3 h.
+    let exponent = piece[end..].strip_prefix(['e', 'E']).and_then(|rest| {
+        let digits = rest
+            .char_indices()
+            .find(|(i, c)| !(c.is_ascii_digit() || (*i == 0 && matches!(c, '-' | '+'))))
+            .map_or(rest.len(), |(at, _)| at);
+        rest[..digits].ends_with(|c: char| c.is_ascii_digit()).then_some(end + 1 + digits)
+    });
+    let end = exponent.unwrap_or(end);
+    let mut number = piece[..end].replace('\u{2212}', "-");
+    if decimal == ',' {
+        number = number.replace(',', ".");
+    }
+    number.parse().ok().filter(|n: &f64| n.is_finite()).map(|n| (n, piece[end..].trim()))
+}
+
+#[cfg(test)]
+#[allow(clippy::unwrap_used)]
+mod tests {
+    use super::*;
+
+    fn read(text: &str, kind: BlankKind, decimal: char) -> Vec<(f64, String)> {
+        let quantities = parse_blank(text, kind, decimal).unwrap();
+        quantities.into_iter().map(|q| (q.value, q.unit)).collect()
+    }
+
+    #[test]
+    fn one_value_or_several_share_the_unit_that_follows() {
+        let celsius = |v: f64| (v, "°C".to_owned());
+        assert_eq!(read("25 °C", BlankKind::Temperature, '.'), [celsius(25.0)]);
+        assert_eq!(
+            read("5, 25,40°C", BlankKind::Temperature, '.'),
+            [celsius(5.0), celsius(25.0), celsius(40.0)]
+        );
+        assert_eq!(read("2,5; 7,5 °C", BlankKind::Temperature, ','), [celsius(2.5), celsius(7.5)]);
+        assert_eq!(
+            read("8 h; 2 d", BlankKind::Time, '.'),
+            [(8.0, "h".to_owned()), (2.0, "d".to_owned())]
+        );
+        assert_eq!(read("\u{2212}18 °C", BlankKind::Temperature, '.'), [celsius(-18.0)]);
+        assert_eq!(read("1e-3 h", BlankKind::Time, '.'), [(1e-3, "h".to_owned())]);
+        assert_eq!(read("5", BlankKind::Part, '.'), [(5.0, "%".to_owned())]);
+    }
+
+    #[test]
+    fn what_is_no_quantity_is_said() {
+        for text in ["", "warm", "25", "25 h", "-300 °C", "NaN °C", "1e999 °C", "<b>"] {
+            let message = parse_blank(text, BlankKind::Temperature, '.').unwrap_err();
+            assert!(message.len() > 20, "{text}: {message}");
+        }
+    }
+
+    #[test]
+    fn lists_multiply_and_the_last_runs_fastest() {
+        let asked = serde_json::json!({
+            "temperature": [{"value": 5, "unit": "°C"}, {"value": 25, "unit": "°C"}],
+            "gone": [{"value": 1, "unit": "%"}, {"value": 5, "unit": "%"}]
+        });
+        let question = Question::of_code("time-to-extent").unwrap();
+        let combinations = super::read(question, asked.as_object().unwrap()).unwrap();
+        let gone: Vec<f64> =
+            combinations.iter().map(|b| b.quantity("gone").unwrap().value).collect();
+        let at: Vec<f64> =
+            combinations.iter().map(|b| b.quantity("temperature").unwrap().value).collect();
+        assert_eq!(gone, [1.0, 5.0, 1.0, 5.0]);
+        assert_eq!(at, [5.0, 5.0, 25.0, 25.0]);
+        assert!(combinations[0].from_list);
+    }
+}

@@ -1,0 +1,165 @@
+//! The questions that can be asked: each a sentence with blanks and the function that answers it.
+//!
+//! A question is one file here and one line in [`QUESTIONS`]; page, study file and record take
+//! everything from there.
+
+mod blanks;
+mod rate_at;
+mod speed_up;
+mod time_to_extent;
+
+pub use blanks::{BlankKind, Blanks, parse_blank};
+
+use serde_json::{Map, Value};
+
+use crate::answer::{Answer, Basis, Refusal};
+use crate::quantity::Quantity;
+
+/// A kind of question.
+#[derive(Debug, Clone, Copy)]
+pub struct Question {
+    /// Its code in a study.
+    pub code: &'static str,
+    /// The sentence, each blank's name in square brackets.
+    pub sentence: &'static str,
+    /// The blanks in the order of the sentence.
+    pub blanks: &'static [Blank],
+    /// Works out the answer from filled blanks.
+    pub answer: fn(&Blanks, &Basis) -> Result<Answer, Refusal>,
+}
+
+/// A gap in a question's sentence.
+#[derive(Debug, Clone, Copy)]
+pub struct Blank {
+    /// Its key in a study.
+    pub name: &'static str,
+    /// What goes in.
+    pub kind: BlankKind,
+    /// What a new question starts with, as one would type it.
+    pub example: &'static str,
+}
+
+/// Every question, in the order of the menu.
+pub const QUESTIONS: [Question; 3] =
+    [time_to_extent::QUESTION, speed_up::QUESTION, rate_at::QUESTION];
+
+/// More combinations of lists than this are refused.
+pub const MOST_ROWS: usize = 1000;
+
+impl Question {
+    /// The question of a code.
+    pub fn of_code(code: &str) -> Option<&'static Self> {
+        QUESTIONS.iter().find(|q| q.code == code)
+    }
+
+    /// The sentence cut at its blanks: text, then blank and text in turn.
+    pub fn pieces(&self) -> Vec<Piece> {
+        let mut pieces = Vec::new();
+        for part in self.sentence.split('[') {
+            match part.split_once(']') {
+                Some((name, text)) => {
+                    pieces.extend(self.blanks.iter().find(|b| b.name == name).map(Piece::Blank));
+                    pieces.push(Piece::Text(text));
+                }
+                None => pieces.push(Piece::Text(part)),
+            }
+        }
+        pieces
+    }
+}
+
+/// A stretch of a question's sentence.
+#[derive(Debug, Clone, Copy)]
+pub enum Piece {
+    /// Fixed words.
+    Text(&'static str),
+    /// A gap to fill.
+    Blank(&'static Blank),
+}
+
+/// Answers one entry of a study's `asked`; a missing basis refuses with its reason.
+pub fn answer(asked: &Map<String, Value>, basis: Result<&Basis, &Refusal>) -> Answer {
+    let code = asked.get("question").and_then(Value::as_str).unwrap_or_default();
+    let Some(question) = Question::of_code(code) else {
+        let known: Vec<&str> = QUESTIONS.iter().map(|q| q.code).collect();
+        let reason = format!("“{}” is no question known here.", crate::problem::shortened(code));
+        let needs = format!("Known questions are: {}.", known.join(", "));
+        return Answer::refused(code, Refusal::new(reason, needs));
+    };
+    let outcome = blanks::read(question, asked).and_then(|combinations| {
+        let basis = basis.map_err(Clone::clone)?;
+        Ok(answer_each(question, &combinations, basis))
+    });
+    outcome.unwrap_or_else(|refusal| Answer::refused(code, refusal))
+}
+
+fn answer_each(question: &Question, combinations: &[Blanks], basis: &Basis) -> Answer {
+    let one = |blanks: &Blanks| {
+        (question.answer)(blanks, basis)
+            .map(|answer| {
+                if answer.value.is_some_and(f64::is_finite) {
+                    Ok(answer)
+                } else {
+                    Err(Refusal::new(
+                        "The numbers become too large or too small to compute with.",
+                        "Ask for a temperature nearer to the measured ones.",
+                    ))
+                }
+            })
+            .and_then(|checked| checked)
+            .unwrap_or_else(|refusal| Answer::refused(question.code, refusal))
+    };
+    match combinations {
+        [single] if !single.from_list => one(single),
+        several => {
+            let rows: Vec<Answer> = several
+                .iter()
+                .map(|blanks| Answer { blanks: Some(blanks.to_map()), ..one(blanks) })
+                .collect();
+            let sentence = format!("{} answers, one for each combination.", rows.len());
+            Answer { sentence, rows: Some(rows), ..Answer::empty(question.code) }
+        }
+    }
+}
+
+/// A question with the examples of its blanks filled in, as an entry of `asked`.
+pub fn example(question: &Question) -> Map<String, Value> {
+    let mut asked = Map::new();
+    asked.insert("question".into(), question.code.into());
+    for blank in question.blanks {
+        if let Ok([quantity]) = parse_blank(blank.example, blank.kind, '.').as_deref() {
+            asked.insert(blank.name.into(), quantity_value(quantity));
+        }
+    }
+    asked
+}
+
+fn quantity_value(quantity: &Quantity) -> Value {
+    serde_json::to_value(quantity).unwrap_or(Value::Null)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn every_blank_stands_in_its_sentence_and_has_a_readable_example() {
+        for question in &QUESTIONS {
+            let blanks: Vec<&str> = question
+                .pieces()
+                .iter()
+                .filter_map(|p| if let Piece::Blank(b) = p { Some(b.name) } else { None })
+                .collect();
+            let declared: Vec<&str> = question.blanks.iter().map(|b| b.name).collect();
+            assert_eq!(blanks, declared, "{}", question.code);
+            assert_eq!(example(question).len(), question.blanks.len() + 1, "{}", question.code);
+        }
+    }
+
+    #[test]
+    fn codes_are_unique() {
+        for (i, question) in QUESTIONS.iter().enumerate() {
+            assert!(QUESTIONS[..i].iter().all(|q| q.code != question.code));
+        }
+    }
+}

@@ -1,0 +1,406 @@
+//! Where intervals come from: fitting a law under one of the scatter choices.
+//!
+//! *From the residuals*: ordinary least squares on ln k, s² = RSS/ν, Student's t.
+//! *As stated*: weights 1/s², covariance (XᵀWX)⁻¹, normal.
+//! *As stated plus run-to-run*: Var(ln kᵢ) = sᵢ² + τ² with τ unknown. Q(τ) = Σ w r² is
+//! chi-squared with ν degrees of freedom at the true τ, which turns every τ into the
+//! probability that the true one is larger (a Q-profile: Viechtbauer, Stat. Med. 2007, 26,
+//! 37; a generalised pivotal quantity: Iyer, Wang & Mathew, J. Am. Stat. Assoc. 2004, 99,
+//! 1060). The normal distributions of a target at each τ are averaged with these masses.
+
+use nalgebra::DMatrix;
+use thiserror::Error;
+
+use super::{Component, FittedLaw, Kernel, MAX_PARAMETERS, TemperatureLaw};
+use crate::measurements::Observation;
+use crate::numeric::distributions::{chi_squared_cdf, chi_squared_tail};
+use crate::numeric::least_squares::{self, LeastSquaresError, LinearFit};
+use crate::numeric::roots::crossing;
+use crate::quantity::Kelvin;
+
+/// Which scatter is asked for.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub enum ScatterChoice {
+    /// Stated errors plus run-to-run scatter where every run states its error and there are at
+    /// least three, as stated with two such runs, else from the residuals.
+    #[default]
+    Automatic,
+    /// Stated errors are ignored.
+    FromResiduals,
+    /// Stated errors are taken as all there is.
+    AsStated,
+    /// Stated errors and an unknown scatter between runs.
+    AsStatedPlusRunToRun,
+}
+
+/// Which scatter the intervals stand on.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Scatter {
+    /// As many parameters as runs and no stated errors: there are no intervals.
+    NoneKnown,
+    /// Residuals about the law.
+    FromResiduals,
+    /// Stated errors alone; also the stated uncertainty of a known law.
+    AsStated,
+    /// Stated errors and run-to-run scatter.
+    AsStatedPlusRunToRun,
+}
+
+/// Why no law could be fitted.
+#[derive(Debug, Clone, PartialEq, Error)]
+pub enum LawError {
+    /// No run is usable.
+    #[error("nothing measured yet")]
+    NothingMeasured,
+    /// Fewer distinct temperatures than the law has parameters.
+    #[error(
+        "{found} distinct temperature{}, where this law needs {needed}",
+        if *found == 1 { "" } else { "s" }
+    )]
+    TooFewTemperatures {
+        /// Distinct temperatures measured.
+        found: usize,
+        /// Parameters of the law.
+        needed: usize,
+    },
+    /// The choice needs an error for every run.
+    #[error("{missing} of the runs state no error")]
+    ErrorsMissing {
+        /// How many runs lack theirs.
+        missing: usize,
+    },
+    /// Numbers beyond what can be computed with.
+    #[error("the rate constants or errors are too far apart to compute with")]
+    NotComputable,
+}
+
+/// Fits `law` to the runs under a scatter choice.
+///
+/// # Errors
+/// See [`LawError`]; a choice that needs stated errors is refused where a run lacks its own.
+pub fn fit(
+    law: TemperatureLaw,
+    observations: &[Observation],
+    choice: ScatterChoice,
+) -> Result<FittedLaw, LawError> {
+    let problem = Problem::new(law, observations)?;
+    let stated = problem.stated_sd(observations);
+    match (choice, stated) {
+        (ScatterChoice::FromResiduals, _) | (ScatterChoice::Automatic, Err(_)) => {
+            problem.from_residuals()
+        }
+        (_, Err(missing)) => Err(missing),
+        (ScatterChoice::AsStated, Ok(sd)) => problem.as_stated(&sd),
+        (ScatterChoice::AsStatedPlusRunToRun | ScatterChoice::Automatic, Ok(sd)) => {
+            if problem.degrees_of_freedom == 0 {
+                problem.as_stated(&sd)
+            } else {
+                problem.as_stated_plus_run_to_run(&sd)
+            }
+        }
+    }
+}
+
+/// One law, one set of runs: what every scatter choice shares.
+struct Problem {
+    law: TemperatureLaw,
+    temperatures: Vec<Kelvin>,
+    ln_rates: Vec<f64>,
+    degrees_of_freedom: usize,
+}
+
+impl Problem {
+    fn new(law: TemperatureLaw, observations: &[Observation]) -> Result<Self, LawError> {
+        if observations.is_empty() {
+            return Err(LawError::NothingMeasured);
+        }
+        let mut distinct: Vec<f64> = observations.iter().map(|o| o.temperature.0).collect();
+        distinct.sort_by(f64::total_cmp);
+        distinct.dedup();
+        let needed = law.parameters();
+        if distinct.len() < needed {
+            return Err(LawError::TooFewTemperatures { found: distinct.len(), needed });
+        }
+        Ok(Self {
+            law,
+            temperatures: observations.iter().map(|o| o.temperature).collect(),
+            ln_rates: observations.iter().map(|o| o.ln_rate).collect(),
+            degrees_of_freedom: observations.len() - needed,
+        })
+    }
+
+    fn stated_sd(&self, observations: &[Observation]) -> Result<Vec<f64>, LawError> {
+        let stated: Vec<f64> = observations.iter().filter_map(|o| o.ln_sd).collect();
+        let missing = observations.len() - stated.len();
+        if missing == 0 { Ok(stated) } else { Err(LawError::ErrorsMissing { missing }) }
+    }
+
+    /// T0 with 1/T0 = Σ w x / Σ w.
+    fn reference(&self, weights: &[f64]) -> Kelvin {
+        let weighted: f64 = weights.iter().zip(&self.temperatures).map(|(w, t)| w / t.0).sum();
+        Kelvin(weights.iter().sum::<f64>() / weighted)
+    }
+
+    fn solve(&self, reference: Kelvin, weights: &[f64]) -> Result<LinearFit, LawError> {
+        let contrasts: Vec<_> =
+            self.temperatures.iter().map(|t| self.law.ln_rate(*t, reference)).collect();
+        let design = DMatrix::from_fn(contrasts.len(), self.law.parameters(), |row, column| {
+            contrasts[row].coefficients[column]
+        });
+        let observed: Vec<f64> =
+            self.ln_rates.iter().zip(&contrasts).map(|(y, c)| y - c.constant).collect();
+        least_squares::fit(&design, &observed, weights).map_err(|error| match error {
+            LeastSquaresError::TooFewRows | LeastSquaresError::RankDeficient => {
+                LawError::TooFewTemperatures { found: 1, needed: self.law.parameters() }
+            }
+            LeastSquaresError::NotFinite => LawError::NotComputable,
+        })
+    }
+
+    fn fitted(&self, reference: Kelvin, weights: Vec<f64>, fit: LinearFit) -> FittedLaw {
+        FittedLaw {
+            law: self.law,
+            reference,
+            parameters: fit.coefficients.as_slice().to_vec(),
+            covariance: Some(fit.covariance),
+            degrees_of_freedom: Some(self.degrees_of_freedom),
+            scatter: Scatter::NoneKnown,
+            kernel: Kernel::Normal,
+            components: Vec::new(),
+            run_to_run_sd: None,
+            chi_squared: None,
+            residuals: fit.residuals,
+            weights,
+            leverages: fit.leverages,
+        }
+    }
+
+    fn from_residuals(&self) -> Result<FittedLaw, LawError> {
+        let weights = vec![1.0; self.ln_rates.len()];
+        let reference = self.reference(&weights);
+        let fit = self.solve(reference, &weights)?;
+        let sum_of_squares = fit.weighted_sum_of_squares;
+        let mut fitted = self.fitted(reference, weights, fit);
+        if self.degrees_of_freedom == 0 {
+            fitted.covariance = None;
+            return Ok(fitted);
+        }
+        let degrees = self.degrees_of_freedom as f64;
+        let variance = sum_of_squares / degrees;
+        let covariance = fitted.covariance.take().map(|c| c * variance);
+        fitted.covariance.clone_from(&covariance);
+        fitted.scatter = Scatter::FromResiduals;
+        fitted.kernel = Kernel::StudentT(degrees);
+        fitted.components.extend(covariance.map(|covariance| Component {
+            weight: 1.0,
+            run_to_run_sd: 0.0,
+            parameters: fitted.parameters.clone(),
+            covariance,
+            run_variance: variance,
+        }));
+        Ok(fitted)
+    }
+
+    fn as_stated(&self, sd: &[f64]) -> Result<FittedLaw, LawError> {
+        let weights = weights(sd, 0.0);
+        let reference = self.reference(&weights);
+        let fit = self.solve(reference, &weights)?;
+        let component = component(1.0, 0.0, &fit);
+        let chi_squared = self.chi_squared(fit.weighted_sum_of_squares);
+        Ok(FittedLaw {
+            scatter: Scatter::AsStated,
+            components: vec![component],
+            chi_squared,
+            ..self.fitted(reference, weights, fit)
+        })
+    }
+
+    fn as_stated_plus_run_to_run(&self, sd: &[f64]) -> Result<FittedLaw, LawError> {
+        let degrees = self.degrees_of_freedom as f64;
+        let provisional = self.reference(&weights(sd, 0.0));
+        let misfit = |reference: Kelvin, tau: f64| -> Result<f64, LawError> {
+            Ok(self.solve(reference, &weights(sd, tau))?.weighted_sum_of_squares)
+        };
+        let smallest = sd.iter().copied().fold(f64::INFINITY, f64::min);
+
+        // The estimate: the τ at which Q meets its expectation ν, or none.
+        let as_stated = misfit(provisional, 0.0)?;
+        let mut tau = 0.0;
+        if as_stated > degrees {
+            let mut above = smallest;
+            while misfit(provisional, above)? > degrees {
+                above *= 2.0;
+            }
+            let falling = |tau: f64| misfit(provisional, tau).map_or(0.0, |q| -q);
+            tau = crossing(falling, -degrees, 0.0, above);
+        }
+        let final_weights = weights(sd, tau);
+        let reference = self.reference(&final_weights);
+        let fit = self.solve(reference, &final_weights)?;
+
+        Ok(FittedLaw {
+            scatter: Scatter::AsStatedPlusRunToRun,
+            components: self.mixture(reference, sd, smallest)?,
+            run_to_run_sd: Some(tau),
+            chi_squared: self.chi_squared(as_stated),
+            ..self.fitted(reference, final_weights, fit)
+        })
+    }
+
+    /// The normal distributions at a ladder of τ, each with the probability that the true τ
+    /// lies about there.
+    fn mixture(
+        &self,
+        reference: Kelvin,
+        sd: &[f64],
+        smallest: f64,
+    ) -> Result<Vec<Component>, LawError> {
+        let degrees = self.degrees_of_freedom as f64;
+        let mut nodes: Vec<(f64, f64, LinearFit)> = Vec::new();
+        let mut tau = 0.0;
+        loop {
+            let fit = self.solve(reference, &weights(sd, tau))?;
+            // The probability that the true scatter is smaller than this τ is 1 − F.
+            let larger = chi_squared_cdf(fit.weighted_sum_of_squares, degrees);
+            nodes.push((tau, larger, fit));
+            if larger < LAST_NODE_PROBABILITY || nodes.len() > MOST_NODES {
+                break;
+            }
+            tau = if tau == 0.0 { FIRST_NODE * smallest } else { tau * NODE_RATIO };
+        }
+
+        let mut masses = vec![0.0; nodes.len()];
+        masses[0] = 1.0 - nodes[0].1;
+        for j in 0..nodes.len() - 1 {
+            let between = nodes[j].1 - nodes[j + 1].1;
+            masses[j] += 0.5 * between;
+            masses[j + 1] += 0.5 * between;
+        }
+        let last = nodes.len() - 1;
+        masses[last] += nodes[last].1;
+        Ok(nodes
+            .iter()
+            .zip(masses)
+            .filter(|(_, mass)| *mass > NEGLIGIBLE_MASS)
+            .map(|((tau, _, fit), mass)| component(mass, *tau, fit))
+            .collect())
+    }
+
+    fn chi_squared(&self, misfit: f64) -> Option<(f64, f64)> {
+        let degrees = self.degrees_of_freedom as f64;
+        (degrees > 0.0).then(|| (misfit, chi_squared_tail(misfit, degrees)))
+    }
+}
+
+/// First τ above zero, as a share of the smallest stated error.
+const FIRST_NODE: f64 = 0.01;
+/// exp(0.06), the step of the ladder.
+const NODE_RATIO: f64 = 1.061_836_546_545_359_6;
+/// The ladder ends where the true τ is larger with less than this probability.
+const LAST_NODE_PROBABILITY: f64 = 1e-4;
+/// Fourteen decades: a bound for data whose Q never falls.
+const MOST_NODES: usize = 540;
+/// Components lighter than this change no printed digit.
+const NEGLIGIBLE_MASS: f64 = 1e-9;
+
+fn weights(sd: &[f64], tau: f64) -> Vec<f64> {
+    sd.iter().map(|s| 1.0 / (s * s + tau * tau)).collect()
+}
+
+fn component(weight: f64, tau: f64, fit: &LinearFit) -> Component {
+    debug_assert!(fit.coefficients.len() <= MAX_PARAMETERS);
+    Component {
+        weight,
+        run_to_run_sd: tau,
+        parameters: fit.coefficients.as_slice().to_vec(),
+        covariance: fit.covariance.clone(),
+        run_variance: tau * tau,
+    }
+}
+
+#[cfg(test)]
+#[allow(clippy::unwrap_used)]
+mod tests {
+    use super::*;
+    use crate::numeric::distributions::{normal_quantile, student_t_quantile};
+    use crate::temperature_law::Target;
+
+    fn runs(sd: Option<f64>) -> Vec<Observation> {
+        [(323.15, -4.02), (333.15, -2.88), (343.15, -2.05), (353.15, -1.02)]
+            .iter()
+            .map(|&(t, y)| Observation { temperature: Kelvin(t), ln_rate: y, ln_sd: sd })
+            .collect()
+    }
+
+    fn energy_interval(fitted: &FittedLaw) -> (f64, f64) {
+        let energy = fitted.law.activation_energy(fitted.reference, fitted.reference);
+        fitted.interval(&energy, Target::Mean, 0.95).unwrap()
+    }
+
+    #[test]
+    fn two_runs_without_errors_have_a_line_and_no_interval() {
+        let line = fit(TemperatureLaw::Arrhenius, &runs(None)[..2], ScatterChoice::Automatic);
+        let line = line.unwrap();
+        assert_eq!(line.scatter, Scatter::NoneKnown);
+        assert!(!line.has_intervals() && line.covariance.is_none());
+        assert!((line.ln_rate(Kelvin(333.15)) + 2.88).abs() < 1e-12);
+    }
+
+    #[test]
+    fn two_runs_with_errors_stand_on_them() {
+        let line = fit(TemperatureLaw::Arrhenius, &runs(Some(0.05))[..2], ScatterChoice::Automatic);
+        let line = line.unwrap();
+        assert_eq!(line.scatter, Scatter::AsStated);
+        let (low, high) = energy_interval(&line);
+        let x = 1.0 / 323.15 - 1.0 / 333.15;
+        let sd = 0.05 * 2.0_f64.sqrt() / x * crate::constants::MOLAR_GAS_CONSTANT;
+        assert!(((high - low) / (2.0 * normal_quantile(0.975) * sd) - 1.0).abs() < 1e-9);
+    }
+
+    /// With equal errors so small that they do not matter, the averaged interval must become
+    /// least squares with t; what remains is the ladder's step.
+    #[test]
+    fn averaged_interval_becomes_student_t() {
+        let t = energy_interval(
+            &fit(TemperatureLaw::Arrhenius, &runs(None), ScatterChoice::Automatic).unwrap(),
+        );
+        let fitted =
+            fit(TemperatureLaw::Arrhenius, &runs(Some(1e-6)), ScatterChoice::Automatic).unwrap();
+        let averaged = energy_interval(&fitted);
+        assert_eq!(fitted.scatter, Scatter::AsStatedPlusRunToRun);
+        assert!((averaged.0 / t.0 - 1.0).abs() < 1e-3, "{averaged:?} {t:?}");
+        assert!((averaged.1 / t.1 - 1.0).abs() < 1e-3, "{averaged:?} {t:?}");
+        let total: f64 = fitted.components.iter().map(|c| c.weight).sum();
+        assert!((total - 1.0).abs() < 1e-6);
+    }
+
+    #[test]
+    fn generous_stated_errors_leave_no_run_to_run_scatter() {
+        let fitted =
+            fit(TemperatureLaw::Arrhenius, &runs(Some(0.5)), ScatterChoice::Automatic).unwrap();
+        assert_eq!(fitted.run_to_run_sd, Some(0.0));
+        let (_, p) = fitted.chi_squared.unwrap();
+        assert!(p > 0.5);
+    }
+
+    #[test]
+    fn a_future_run_scatters_more_than_the_mean() {
+        let fitted = fit(TemperatureLaw::Arrhenius, &runs(None), ScatterChoice::Automatic).unwrap();
+        let rate = fitted.ln_rate_contrast(Kelvin(338.15));
+        let mean = fitted.interval(&rate, Target::Mean, 0.95).unwrap();
+        let run = fitted.interval(&rate, Target::NextRun, 0.95).unwrap();
+        let s = fitted.components[0].run_variance.sqrt();
+        assert!(run.0 < mean.0 && run.1 > mean.1);
+        assert!(run.1 - run.0 > 2.0 * s * student_t_quantile(0.975, 2.0));
+    }
+
+    #[test]
+    fn unusable_runs_are_refused_in_words() {
+        let one = fit(TemperatureLaw::Arrhenius, &runs(None)[..1], ScatterChoice::Automatic);
+        assert_eq!(one.unwrap_err().to_string(), "1 distinct temperature, where this law needs 2");
+        let none = fit(TemperatureLaw::Arrhenius, &[], ScatterChoice::Automatic);
+        assert_eq!(none.unwrap_err(), LawError::NothingMeasured);
+        let stated = fit(TemperatureLaw::Arrhenius, &runs(None), ScatterChoice::AsStated);
+        assert_eq!(stated.unwrap_err(), LawError::ErrorsMissing { missing: 4 });
+    }
+}

@@ -1,0 +1,95 @@
+//! Times in the unit that reads best.
+
+use super::Display;
+use super::number::{Figures, significant};
+use crate::quantity::Seconds;
+use crate::units::TimeUnit;
+
+/// From how many seconds on a unit is used: minutes from two, hours from two, days from three,
+/// months from four, years from two. Weeks are never picked: a week and a half reads badly.
+const LADDER: [(f64, TimeUnit); 5] = [
+    (2.0 * 31_557_600.0, TimeUnit::Year),
+    (4.0 * 2_629_800.0, TimeUnit::Month),
+    (3.0 * 86_400.0, TimeUnit::Day),
+    (2.0 * 3600.0, TimeUnit::Hour),
+    (2.0 * 60.0, TimeUnit::Minute),
+];
+
+fn best_unit(time_seconds: f64, display: &Display) -> TimeUnit {
+    display.time.unwrap_or_else(|| {
+        LADDER
+            .iter()
+            .find(|(from, _)| time_seconds.abs() >= *from)
+            .map_or(TimeUnit::Second, |(_, unit)| *unit)
+    })
+}
+
+/// "6.5 years", "44 h": words for days and longer, symbols for what a clock counts.
+fn with_unit(number: &str, unit: TimeUnit) -> String {
+    let name = match unit {
+        TimeUnit::Second | TimeUnit::Minute | TimeUnit::Hour => unit.symbol(),
+        longer => longer.word(number != "1"),
+    };
+    format!("{number}\u{a0}{name}")
+}
+
+/// A time without an interval.
+pub fn duration(time: Seconds, figures: Figures, display: &Display) -> String {
+    let unit = best_unit(time.0, display);
+    with_unit(&figures.number(unit.from_seconds(time.0), display.decimal), unit)
+}
+
+/// A time and its limits: ("6.5 years", "3.2", "13") in one unit where they are of one size,
+/// else each limit in its own ("9 days", "40 min", "200 years").
+pub fn duration_with_range(
+    time: Seconds,
+    range: (f64, f64),
+    display: &Display,
+) -> (String, String, String) {
+    let unit = best_unit(time.0, display);
+    let figures = Figures::supported(time.0, Some(range));
+    let value = unit.from_seconds(time.0);
+    let (low, high) = (unit.from_seconds(range.0), unit.from_seconds(range.1));
+    let number = with_unit(&figures.number(value, display.decimal), unit);
+    if low > 0.0 && high / low < 50.0 && low >= 0.1 {
+        let (low, high) = figures.limits(value, low, high, display.decimal);
+        return (number, low, high);
+    }
+    let alone = |limit: f64| {
+        let unit = best_unit(limit, display);
+        with_unit(&significant(unit.from_seconds(limit), 2, display.decimal), unit)
+    };
+    (number, alone(range.0), alone(range.1))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    const YEAR: f64 = 31_557_600.0;
+
+    #[test]
+    fn times_choose_their_unit() {
+        let display = Display::default();
+        let say = |seconds: f64| duration(Seconds(seconds), Figures::exactly(2), &display);
+        assert_eq!(say(90.0), "90\u{a0}s");
+        assert_eq!(say(600.0), "10\u{a0}min");
+        assert_eq!(say(44.0 * 3600.0), "44\u{a0}h");
+        assert_eq!(say(22.0 * 86_400.0), "22\u{a0}days");
+        assert_eq!(say(1.5 * YEAR), "18\u{a0}months");
+        assert_eq!(say(6.54 * YEAR), "6.5\u{a0}years");
+        let hours = Display { time: Some(TimeUnit::Hour), ..display };
+        assert_eq!(duration(Seconds(86_400.0), Figures::exactly(2), &hours), "24\u{a0}h");
+    }
+
+    #[test]
+    fn limits_share_the_unit_unless_they_are_of_another_size() {
+        let display = Display::default();
+        let (time, low, high) =
+            duration_with_range(Seconds(6.54 * YEAR), (3.21 * YEAR, 13.3 * YEAR), &display);
+        assert_eq!((&time[..], &low[..], &high[..]), ("6.5\u{a0}years", "3.2", "13"));
+        let (_, low, high) =
+            duration_with_range(Seconds(9.0 * 86_400.0), (2400.0, 200.0 * YEAR), &display);
+        assert_eq!((&low[..], &high[..]), ("40\u{a0}min", "200\u{a0}years"));
+    }
+}
