@@ -27,5 +27,7 @@ pub mod temperature_law;
 
 // 6 · deciding
 pub mod answer;
+pub mod curve;
 pub mod grounds;
 pub mod question;
+pub mod remark;

@@ -16,9 +16,11 @@
 //! temperature are compared whichever law is chosen. Centring keeps β₁ and β₂ nearly
 //! uncorrelated (Schwaab & Pinto, Chem. Eng. Sci. 2007, 62, 2750).
 
+mod diagnostics;
 mod fitted;
 mod scatter;
 
+pub use diagnostics::{CurvatureTest, Influence, curvature, influential};
 pub use fitted::{Component, FittedLaw, Kernel, Target};
 pub use scatter::{LawError, Scatter, ScatterChoice, fit};
 

@@ -9,6 +9,7 @@
 //! 1060). The normal distributions of a target at each τ are averaged with these masses.
 
 use nalgebra::DMatrix;
+use serde::{Deserialize, Serialize};
 use thiserror::Error;
 
 use super::{Component, FittedLaw, Kernel, MAX_PARAMETERS, TemperatureLaw};
@@ -19,7 +20,8 @@ use crate::numeric::roots::crossing;
 use crate::quantity::Kelvin;
 
 /// Which scatter is asked for.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
 pub enum ScatterChoice {
     /// Stated errors plus run-to-run scatter where every run states its error and there are at
     /// least three, as stated with two such runs, else from the residuals.
@@ -34,7 +36,8 @@ pub enum ScatterChoice {
 }
 
 /// Which scatter the intervals stand on.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
+#[serde(rename_all = "kebab-case")]
 pub enum Scatter {
     /// As many parameters as runs and no stated errors: there are no intervals.
     NoneKnown,

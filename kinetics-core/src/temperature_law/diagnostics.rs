@@ -1,0 +1,164 @@
+//! What a fitted law says of its own runs: curvature, and the weight of single runs.
+
+use nalgebra::DMatrix;
+
+use super::FittedLaw;
+use crate::measurements::Observation;
+use crate::numeric::distributions::{f_tail, student_t_quantile};
+use crate::numeric::least_squares;
+
+/// The F test of a further term in (1/T − 1/T0)² (Draper & Smith, Applied Regression
+/// Analysis, 3rd ed. 1998, §6.1; from memory).
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct CurvatureTest {
+    /// F with (1, `degrees_of_freedom`).
+    pub f: f64,
+    /// Degrees of freedom left with the further term.
+    pub degrees_of_freedom: usize,
+    /// Probability of such an F without curvature.
+    pub p: f64,
+}
+
+/// Tests the law for curvature at the weights of its fit; none with fewer than four runs or
+/// three temperatures, or when the fit leaves nothing to explain.
+pub fn curvature(fitted: &FittedLaw, observations: &[Observation]) -> Option<CurvatureTest> {
+    let parameters = fitted.law.parameters();
+    if parameters > 2 || observations.len() < 4 {
+        return None;
+    }
+    let degrees_of_freedom = observations.len() - 3;
+    let contrasts: Vec<_> =
+        observations.iter().map(|o| fitted.ln_rate_contrast(o.temperature)).collect();
+    let design = DMatrix::from_fn(observations.len(), 3, |row, column| {
+        if column < 2 {
+            contrasts[row].coefficients[column]
+        } else {
+            let x = 1.0 / observations[row].temperature.0 - 1.0 / fitted.reference.0;
+            x * x
+        }
+    });
+    let observed: Vec<f64> =
+        observations.iter().zip(&contrasts).map(|(o, c)| o.ln_rate - c.constant).collect();
+    let bent = least_squares::fit(&design, &observed, &fitted.weights).ok()?;
+    let straight: f64 = fitted.residuals.iter().zip(&fitted.weights).map(|(r, w)| w * r * r).sum();
+    let scale: f64 = observed.iter().zip(&fitted.weights).map(|(y, w)| w * y * y).sum();
+    if straight <= ROUNDING_SHARE * scale {
+        return None;
+    }
+    let within = bent.weighted_sum_of_squares.max(ROUNDING_SHARE * scale);
+    let f = (straight - bent.weighted_sum_of_squares).max(0.0) * degrees_of_freedom as f64 / within;
+    Some(CurvatureTest { f, degrees_of_freedom, p: f_tail(f, 1.0, degrees_of_freedom as f64) })
+}
+
+/// Sums of squares below this share of the data's own are rounding.
+const ROUNDING_SHARE: f64 = 1e-24;
+
+/// A run that moves the law by itself.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Influence {
+    /// Index of the run.
+    pub run: usize,
+    /// Cook's distance (R. D. Cook, Technometrics 1977, 19, 15).
+    pub cooks_distance: f64,
+    /// Externally studentised residual.
+    pub studentised_residual: f64,
+}
+
+/// Fewer runs than this let every end point look influential: with three runs Cook's distance
+/// exceeds 1 at both ends whatever the data.
+const FEWEST_RUNS: usize = 5;
+
+/// The runs whose Cook's distance exceeds 1 or whose studentised residual lies beyond the
+/// Bonferroni 5 % point, worst first.
+pub fn influential(fitted: &FittedLaw) -> Vec<Influence> {
+    let runs = fitted.residuals.len();
+    let parameters = fitted.parameters.len();
+    if runs < FEWEST_RUNS || runs < parameters + 2 {
+        return Vec::new();
+    }
+    let degrees = (runs - parameters) as f64;
+    let sum: f64 = fitted.residuals.iter().zip(&fitted.weights).map(|(r, w)| w * r * r).sum();
+    let variance = sum / degrees;
+    if !(variance > 0.0) {
+        return Vec::new();
+    }
+    let limit = student_t_quantile(1.0 - 0.025 / runs as f64, degrees - 1.0);
+    let mut found: Vec<Influence> = (0..runs)
+        .filter_map(|run| {
+            let left = 1.0 - fitted.leverages[run];
+            if left < 1e-9 {
+                return None;
+            }
+            let squared = fitted.weights[run] * fitted.residuals[run].powi(2) / (variance * left);
+            let cooks_distance = squared * fitted.leverages[run] / (left * parameters as f64);
+            let spare = (degrees - squared).max(1e-12);
+            let studentised_residual = (squared * (degrees - 1.0) / spare).sqrt();
+            (cooks_distance > 1.0 || studentised_residual > limit).then_some(Influence {
+                run,
+                cooks_distance,
+                studentised_residual,
+            })
+        })
+        .collect();
+    found.sort_by(|a, b| b.cooks_distance.total_cmp(&a.cooks_distance));
+    found
+}
+
+#[cfg(test)]
+#[allow(clippy::unwrap_used)]
+mod tests {
+    use super::*;
+    use crate::quantity::Kelvin;
+    use crate::temperature_law::{ScatterChoice, TemperatureLaw, fit};
+
+    fn runs(bend: f64, slip: f64) -> (FittedLaw, Vec<Observation>) {
+        let noise = [0.02, -0.03, 0.01, 0.03, -0.02, -0.01];
+        let observations: Vec<Observation> = noise
+            .iter()
+            .enumerate()
+            .map(|(i, e)| {
+                let t = 320.0 + 8.0 * i as f64;
+                let x = 1.0 / t - 1.0 / 340.0;
+                let slipped = if i == 5 { slip } else { 0.0 };
+                let ln_rate = -3.0 - 1.0e4 * x + bend * x * x * 1e6 + e + slipped;
+                Observation { temperature: Kelvin(t), ln_rate, ln_sd: None }
+            })
+            .collect();
+        let fitted =
+            fit(TemperatureLaw::Arrhenius, &observations, ScatterChoice::Automatic).unwrap();
+        (fitted, observations)
+    }
+
+    #[test]
+    fn a_bend_is_seen_and_a_line_is_not_bent() {
+        let (fitted, observations) = runs(0.0, 0.0);
+        assert!(curvature(&fitted, &observations).unwrap().p > 0.05);
+        let (fitted, observations) = runs(20.0, 0.0);
+        assert!(curvature(&fitted, &observations).unwrap().p < 0.01);
+        assert_eq!(curvature(&fitted, &observations[..3]), None);
+    }
+
+    /// Deleting the run must move the fit as Cook's distance says:
+    /// D = (β − β₋ᵢ)ᵀ XᵀX (β − β₋ᵢ)/(p s²).
+    #[test]
+    fn cooks_distance_is_the_shift_of_the_fit() {
+        let (fitted, observations) = runs(0.0, 0.8);
+        let worst = influential(&fitted)[0];
+        assert_eq!(worst.run, 5);
+        let without = fit(fitted.law, &observations[..5], ScatterChoice::Automatic).unwrap();
+        let shift: f64 = observations
+            .iter()
+            .map(|o| fitted.ln_rate(o.temperature) - without.ln_rate(o.temperature))
+            .map(|d| d * d)
+            .sum();
+        let variance = fitted.components[0].run_variance;
+        assert!((worst.cooks_distance / (shift / (2.0 * variance)) - 1.0).abs() < 1e-8);
+        // The externally studentised residual is the misfit against the line without the run.
+        let misfit = observations[5].ln_rate - without.ln_rate(observations[5].temperature);
+        let contrast = without.ln_rate_contrast(observations[5].temperature);
+        let own = without.standard_error(&contrast).unwrap();
+        let expected = misfit / (own * own + without.components[0].run_variance).sqrt();
+        assert!((worst.studentised_residual / expected.abs() - 1.0).abs() < 1e-8);
+        assert!(influential(&runs(0.0, 0.0).0).is_empty());
+    }
+}
