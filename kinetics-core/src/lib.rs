@@ -16,6 +16,10 @@ pub mod citation;
 pub mod constants;
 pub mod wording;
 
+// 2 · from text to a table
+pub mod text;
+pub mod table;
+
 // 3 · what was observed
 pub mod measurements;
 

@@ -68,6 +68,18 @@ impl UnitError {
     }
 }
 
+/// Whether a text is made of symbols of units alone, of whatever dimension.
+pub(crate) fn is_unit(text: &str) -> bool {
+    TemperatureUnit::parse(text).is_ok()
+        || expression::readings(text).first().is_some_and(|unit| unit.scale == 1.0 && !unit.factors.is_empty())
+}
+
+/// Reads a unit of inverse temperature: how many 1/K it is, as in `10⁻³ K⁻¹`.
+pub(crate) fn inverse_kelvin_scale(text: &str) -> Option<f64> {
+    let reading = expression::readings(text).into_iter().next()?;
+    (reading.factors == [("K", -1.0)]).then_some(reading.scale)
+}
+
 /// "a, b or c".
 fn either<'a>(words: impl IntoIterator<Item = &'a str>) -> String {
     let words: Vec<&str> = words.into_iter().collect();

@@ -1,0 +1,30 @@
+//! From a pasted text to lines, fields and numbers, each with its place.
+//!
+//! Nothing here knows chemistry or roles of columns: [`lines`] cuts the text
+//! into records and fields, [`separator`] finds what stands between the fields,
+//! [`decimal`] weighs whether the comma or the point marks decimals, and
+//! [`number`] reads one field. All of it is linear in the length of the text.
+
+pub mod decimal;
+pub mod lines;
+pub mod marker;
+pub mod number;
+mod scan;
+pub mod separator;
+
+pub use decimal::Decimal;
+pub use number::{Number, Reading, read_cell};
+pub use separator::Separator;
+
+/// Characters without a width that creep in with a paste.
+pub(crate) fn is_invisible(character: char) -> bool {
+    matches!(
+        character,
+        '\u{200b}'..='\u{200f}' | '\u{202a}'..='\u{202e}' | '\u{2060}' | '\u{2066}'..='\u{2069}' | '\u{feff}' | '\u{ad}'
+    )
+}
+
+/// White space of any kind, and what cannot be seen.
+pub(crate) fn is_blank(character: char) -> bool {
+    character.is_whitespace() || is_invisible(character)
+}
