@@ -1,1 +1,8 @@
-//! Kelvinclock web.
+//! Kelvinclock for browsers and for JavaScript: the page, its figures and the
+//! interface of other programs.
+
+pub mod api;
+#[cfg(feature = "page")]
+pub mod figure;
+#[cfg(feature = "page")]
+pub mod start;
