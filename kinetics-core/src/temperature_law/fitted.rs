@@ -98,6 +98,42 @@ pub struct FittedLaw {
 }
 
 impl FittedLaw {
+    /// A law that is given, not fitted: ln k at `reference` and the activation energy in J/mol,
+    /// each with its standard deviation. Without both of these there are no intervals.
+    pub fn known(
+        law: TemperatureLaw,
+        reference: Kelvin,
+        ln_rate: (f64, Option<f64>),
+        activation_energy: (f64, Option<f64>),
+    ) -> Self {
+        let parameters = vec![ln_rate.0, activation_energy.0];
+        let covariance = ln_rate.1.zip(activation_energy.1).map(|(ln_sd, energy_sd)| {
+            DMatrix::from_row_slice(2, 2, &[ln_sd * ln_sd, 0.0, 0.0, energy_sd * energy_sd])
+        });
+        let component = |covariance: &DMatrix<f64>| Component {
+            weight: 1.0,
+            run_to_run_sd: 0.0,
+            parameters: parameters.clone(),
+            covariance: covariance.clone(),
+            run_variance: 0.0,
+        };
+        Self {
+            law,
+            reference,
+            scatter: if covariance.is_some() { Scatter::AsStated } else { Scatter::NoneKnown },
+            kernel: Kernel::Normal,
+            components: covariance.iter().map(component).collect(),
+            parameters,
+            covariance,
+            degrees_of_freedom: None,
+            run_to_run_sd: None,
+            chi_squared: None,
+            residuals: Vec::new(),
+            weights: Vec::new(),
+            leverages: Vec::new(),
+        }
+    }
+
     /// Best estimate of a linear target.
     pub fn estimate(&self, target: &Contrast) -> f64 {
         target.at(&self.parameters)

@@ -1,5 +1,9 @@
 //! What was observed, typed: runs with a temperature and a rate constant.
 
+mod rates;
+
+pub use rates::{LeftOut, Rates, Run, rates};
+
 use crate::quantity::Kelvin;
 
 /// One run as a law sees it.

@@ -1,0 +1,173 @@
+//! From a study to its findings: every floor of the house in turn.
+
+use super::basis::{self, Ground};
+use super::document::Study;
+use super::findings::{Findings, LawFindings, Read, RunFindings};
+use crate::answer::{Answer, Basis};
+use crate::measurements::{LeftOut, Observation, Rates, rates};
+use crate::question;
+use super::record;
+use crate::remark::{Evidence, Remark, remarks};
+use crate::table::{ColumnHint, Form, Hints, Table, read_table};
+use crate::units::TemperatureUnit;
+
+/// A study's table, read once: reading is the long part of large data.
+#[derive(Debug, Clone)]
+pub struct Prepared {
+    /// What the pasted text was taken to be.
+    pub table: Table,
+}
+
+/// Findings with what they were made from, for pictures.
+#[derive(Debug, Clone)]
+pub struct Evaluation {
+    /// The document.
+    pub findings: Findings,
+    /// Law and surroundings; none where no law could be had.
+    pub basis: Option<Basis>,
+    /// Runs behind it.
+    pub rates: Rates,
+}
+
+/// How a study's text is to be read.
+pub fn hints(study: &Study) -> Hints {
+    let measured = &study.measured;
+    let columns = measured
+        .columns
+        .iter()
+        .map(|column| ColumnHint {
+            role: column.role,
+            unit: column.unit.clone(),
+            multiplier: column.multiplier,
+        })
+        .collect();
+    Hints { columns, decimal: measured.decimal, form: Some(measured.form) }
+}
+
+/// Reads a study's text all at once; a [`Reader`](crate::table::Reader) with [`hints`] does it
+/// in slices.
+pub fn prepare(study: &Study) -> Prepared {
+    Prepared { table: read_table(&study.measured.text, &hints(study)) }
+}
+
+/// The findings of a study. Never fails: what cannot be used is said in them.
+pub fn evaluate(study: &Study) -> Findings {
+    evaluate_prepared(study, &prepare(study)).findings
+}
+
+/// The findings of a study whose text is read already.
+pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
+    let table = &prepared.table;
+    let excluded: Vec<LeftOut> = study
+        .measured
+        .excluded
+        .iter()
+        .map(|e| LeftOut { row: e.row, reason: e.reason.clone() })
+        .collect();
+    let rates = match study.measured.form {
+        Form::Rates => rates(table, &excluded, study.measured.error_is),
+        _ => Rates::default(),
+    };
+
+    let Ground { basis, refusal, mut remarks, order } = basis::lay(study, &rates);
+    let answers: Vec<Answer> = study
+        .asked
+        .iter()
+        .map(|asked| question::answer(asked, basis.as_ref().ok_or(&refusal)))
+        .collect();
+    remarks.extend(own_remarks(study, &rates, basis.as_ref(), &answers));
+    remarks.sort_by_key(|remark| remark.severity);
+
+    let level = basis::level(study).unwrap_or(basis::USUAL_LEVEL);
+    let mut problems = study.problems.clone();
+    if study.measured.form == Form::Rates {
+        problems.extend(table.problems.iter().cloned());
+        problems.extend(rates.problems.iter().cloned());
+    }
+    let mut findings = Findings {
+        kelvinclock_findings: super::VERSION,
+        read: read(study, table, &rates, basis.as_ref(), order),
+        problems,
+        runs: runs(&rates, basis.as_ref(), order, level),
+        law: basis.as_ref().map(|basis| LawFindings::of(basis, &study.measured.assumed)),
+        one_stage: None,
+        rivals: Vec::new(),
+        remarks,
+        answers,
+        record: record::empty(&study.measured.text),
+    };
+    findings.record.citations = record::citations(&findings);
+    findings.record.text = record::text(study, &findings);
+    Evaluation { findings, basis, rates }
+}
+
+fn own_remarks(
+    study: &Study,
+    rates: &Rates,
+    basis: Option<&Basis>,
+    answers: &[Answer],
+) -> Vec<Remark> {
+    let Some(basis) = basis else { return Vec::new() };
+    let observations: Vec<Observation> = rates.runs.iter().map(|r| r.observation).collect();
+    let run_names: Vec<String> =
+        rates.runs.iter().map(|r| format!("The run at {} (row {})", r.name, r.row)).collect();
+    let stated = &study.measured.stated_activation_energy;
+    remarks(&Evidence {
+        observations: &observations,
+        run_names: &run_names,
+        read_as_kelvin: rates.temperature_unit == Some(TemperatureUnit::Kelvin),
+        stated_activation_energy: stated.as_ref().and_then(|q| q.joules_per_mole().ok()),
+        basis,
+        answers,
+    })
+}
+
+fn read(
+    study: &Study,
+    table: &Table,
+    rates: &Rates,
+    basis: Option<&Basis>,
+    order: Option<f64>,
+) -> Read {
+    let is_table = study.measured.form != Form::KnownLaw;
+    Read {
+        form: study.measured.form,
+        decimal: is_table.then(|| table.decimal),
+        columns: if is_table { table.columns.clone() } else { Vec::new() },
+        rows_read: rates.runs.len(),
+        rows_excluded: rates
+            .left_out
+            .iter()
+            .map(|row| super::Excluded { row: row.row, reason: row.reason.clone() })
+            .collect(),
+        order,
+        scatter: basis.map(|b| b.law.scatter),
+        choices: if is_table {
+            table.choices.iter().map(|choice| choice.sentence.clone()).collect()
+        } else {
+            Vec::new()
+        },
+    }
+}
+
+fn runs(
+    rates: &Rates,
+    basis: Option<&Basis>,
+    order: Option<f64>,
+    level: f64,
+) -> Vec<RunFindings> {
+    let unit = rates.unit.map(|unit| unit.base().code()).unwrap_or_default();
+    rates
+        .runs
+        .iter()
+        .enumerate()
+        .map(|(i, run)| RunFindings {
+            label: run.name.clone(),
+            row: run.row,
+            temperature_kelvin: run.observation.temperature.0,
+            rate_constant: super::findings::stated_rate(run, &unit, level),
+            order,
+            ln_residual: basis.and_then(|b| b.law.residuals.get(i)).copied(),
+        })
+        .collect()
+}

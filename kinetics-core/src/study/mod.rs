@@ -1,0 +1,16 @@
+//! A study: everything about one reaction, as a file and as findings.
+
+mod basis;
+mod document;
+mod evaluate;
+mod findings;
+mod record;
+
+pub use document::{
+    Assumed, ColumnChoice, DisplayChoice, Excluded, LawChoice, Measured, OrderChoice, StatedQuantity, Study,
+    StudyError, Thermometer, VERSION,
+};
+pub use evaluate::{Evaluation, Prepared, evaluate, evaluate_prepared, hints, prepare};
+pub use findings::{
+    Estimate, Findings, LawFindings, MixtureComponent, Read, Record, Rival, RunFindings,
+};
