@@ -214,6 +214,16 @@ impl Basis {
         self.order.ln_theta(extent, concentration).map_err(|error| self.extent_refusal(error))
     }
 
+    /// The fraction gone at θ = ∫k dt, given as its natural logarithm.
+    ///
+    /// # Errors
+    /// As [`Basis::ln_theta`].
+    pub fn extent(&self, ln_theta: f64) -> Result<f64, Refusal> {
+        self.needs_rate_unit()?;
+        let concentration = self.initial_concentration.map(|c| c.value);
+        self.order.extent(ln_theta, concentration).map_err(|error| self.extent_refusal(error))
+    }
+
     /// Refuses what needs the unit of k where there is none.
     ///
     /// # Errors
@@ -272,6 +282,22 @@ impl Basis {
                      tells how much the runs scatter"
                 .into(),
         }
+    }
+}
+
+/// The refusal of a question that speaks of one side where no scatter is known.
+pub fn no_bound() -> Refusal {
+    Refusal::new(
+        "Nothing tells how much the runs scatter, so nothing can be promised.",
+        "Measure at a third temperature, or state the error of each rate constant.",
+    )
+}
+
+/// Whom a bound covers, in words.
+pub fn whom(bound: Target) -> &'static str {
+    match bound {
+        Target::NextRun => "for a single batch",
+        Target::Mean => "for the mean of many batches",
     }
 }
 

@@ -6,6 +6,7 @@ use super::{MOST_ROWS, Question, quantity_value};
 use crate::answer::{Basis, Refusal};
 use crate::problem::shortened;
 use crate::quantity::{Kelvin, Quantity, Seconds};
+use crate::temperature_law::Target;
 
 /// What a blank takes.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -51,6 +52,8 @@ pub struct Blanks {
     values: Vec<(&'static str, Quantity)>,
     /// Whether a blank held a list, so that the answer is a table.
     pub from_list: bool,
+    /// Whose bound a one-sided question speaks of.
+    pub bound: Target,
 }
 
 impl Blanks {
@@ -126,12 +129,25 @@ fn unusable(error: &crate::units::UnitError, kind: BlankKind) -> Refusal {
     Refusal::new(format!("{first}{}.", letters.as_str()), format!("Write {}.", kind.expected()))
 }
 
+/// `bound`: `next-run`, also where it is absent, or `mean`.
+fn bound(asked: &Map<String, Value>) -> Result<Target, Refusal> {
+    match asked.get("bound").map(|b| b.as_str().unwrap_or_default()) {
+        None | Some("next-run") => Ok(Target::NextRun),
+        Some("mean") => Ok(Target::Mean),
+        Some(other) => Err(Refusal::new(
+            format!("“{}” is no bound known here.", shortened(other)),
+            "Write next-run for a single batch, or mean for the average of many.",
+        )),
+    }
+}
+
 /// Every combination of the lists in a question's blanks, the last blank running fastest.
 pub(super) fn read(
     question: &Question,
     asked: &Map<String, Value>,
 ) -> Result<Vec<Blanks>, Refusal> {
-    let mut combinations = vec![Blanks { values: Vec::new(), from_list: false }];
+    let bound = bound(asked)?;
+    let mut combinations = vec![Blanks { values: Vec::new(), from_list: false, bound }];
     for blank in question.blanks {
         let given = asked.get(blank.name).filter(|v| !v.is_null()).ok_or_else(|| {
             Refusal::new(

@@ -3,9 +3,13 @@
 //! A question is one file here and one line in [`QUESTIONS`]; page, study file and record take
 //! everything from there.
 
+mod allowance;
 mod blanks;
+mod equivalent_time;
+mod extent_after;
 mod rate_at;
 mod speed_up;
+mod temperature_for;
 mod time_to_extent;
 
 pub use blanks::{BlankKind, Blanks, parse_blank};
@@ -40,8 +44,17 @@ pub struct Blank {
 }
 
 /// Every question, in the order of the menu.
-pub const QUESTIONS: [Question; 3] =
-    [time_to_extent::QUESTION, speed_up::QUESTION, rate_at::QUESTION];
+pub const QUESTIONS: [Question; 9] = [
+    time_to_extent::QUESTION,
+    allowance::LONGEST_STAND,
+    allowance::COMPLETION_TIME,
+    temperature_for::TEMPERATURE_FOR,
+    temperature_for::WARMEST_STORAGE,
+    extent_after::QUESTION,
+    speed_up::QUESTION,
+    equivalent_time::QUESTION,
+    rate_at::QUESTION,
+];
 
 /// More combinations of lists than this are refused.
 pub const MOST_ROWS: usize = 1000;

@@ -60,6 +60,7 @@ pub(super) fn doubling_rule(evidence: &Evidence) -> Option<Remark> {
         Some((answer.value?, rule, libm::fabs(libm::log(answer.value? / rule))))
     };
     let (number, (found, rule, misses)) = numbered(evidence.answers)
+        .filter(|(_, answer)| answer.question == "speed-up")
         .filter_map(|(number, answer)| Some((number, off(answer)?)))
         .max_by(|a, b| a.1.2.total_cmp(&b.1.2))?;
     if misses <= libm::log(LARGEST_AGREEMENT) {

@@ -18,10 +18,12 @@
 
 mod diagnostics;
 mod fitted;
+mod inverse;
 mod scatter;
 
 pub use diagnostics::{CurvatureTest, Influence, curvature, influential};
 pub use fitted::{Component, FittedLaw, Kernel, Target};
+pub use inverse::TemperatureSet;
 pub use scatter::{LawError, Scatter, ScatterChoice, fit};
 
 use crate::constants::{BOLTZMANN_OVER_PLANCK, MOLAR_GAS_CONSTANT};

@@ -3,8 +3,8 @@
 mod number;
 mod time;
 
-pub use number::{Figures, fixed, significant};
-pub use time::{duration, duration_with_range};
+pub use number::{Figures, Rounding, fixed, significant};
+pub use time::{duration, duration_bound, duration_with_range};
 
 use crate::quantity::Kelvin;
 use crate::units::{EnergyUnit, TemperatureUnit, TimeUnit};
@@ -38,6 +38,32 @@ impl Display {
     pub fn temperature(&self, temperature: Kelvin, decimals: usize) -> String {
         let value = fixed(self.temperature.from_kelvin(temperature.0), decimals, self.decimal);
         format!("{}\u{a0}{}", trimmed(&value), self.temperature)
+    }
+
+    /// Decimals of a temperature known to `half_width_kelvin`: down to that width's leading
+    /// digit, two at most.
+    pub fn temperature_decimals(half_width_kelvin: f64) -> usize {
+        if !(half_width_kelvin > 0.0) {
+            return 1;
+        }
+        (-libm::floor(libm::log10(half_width_kelvin))).clamp(0.0, 2.0) as usize
+    }
+
+    /// A temperature with its unit, rounded to the side on which a bound still holds.
+    pub fn temperature_rounded(
+        &self,
+        temperature: Kelvin,
+        decimals: usize,
+        rounding: Rounding,
+    ) -> String {
+        let unit = libm::pow(10.0, decimals as f64);
+        let steps = self.temperature.from_kelvin(temperature.0) * unit;
+        let whole = match rounding {
+            Rounding::Nearest => libm::round(steps),
+            Rounding::Down => libm::floor(steps + 1e-9),
+            Rounding::Up => libm::ceil(steps - 1e-9),
+        };
+        format!("{}\u{a0}{}", fixed(whole / unit, decimals, self.decimal), self.temperature)
     }
 
     /// A probability or level in per cent: "95 %".

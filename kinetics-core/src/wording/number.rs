@@ -4,6 +4,17 @@
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub struct Figures(usize);
 
+/// Which way a number is rounded; a bound is rounded to the side on which it still holds.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Rounding {
+    /// To the nearest.
+    Nearest,
+    /// Downwards.
+    Down,
+    /// Upwards.
+    Up,
+}
+
 /// Figures where no interval says how many are meant.
 const WITHOUT_INTERVAL: usize = 2;
 /// More figures than this help nobody.
@@ -35,6 +46,27 @@ impl Figures {
             return self.0 as i32 - 1;
         }
         self.0 as i32 - 1 - libm::floor(libm::log10(value.abs())) as i32
+    }
+
+    /// `value` rounded to these figures, never beyond a limit that must hold.
+    pub fn rounded(self, value: f64, rounding: Rounding) -> f64 {
+        if value == 0.0 || !value.is_finite() {
+            return value;
+        }
+        let unit = libm::pow(10.0, f64::from(-self.decimals(value)));
+        let steps = value / unit;
+        // What is a whole number of steps but for rounding stays there.
+        let nearest = libm::round(steps);
+        let whole = if (steps - nearest).abs() < 1e-9 * nearest.abs() {
+            nearest
+        } else {
+            match rounding {
+                Rounding::Nearest => nearest,
+                Rounding::Down => libm::floor(steps),
+                Rounding::Up => libm::ceil(steps),
+            }
+        };
+        whole * unit
     }
 
     /// One number: "185", "0.0031", "1.4 × 10⁻⁵".
@@ -142,6 +174,16 @@ mod tests {
         assert_eq!(significant(1234.0, 2, '.'), "1200");
         assert_eq!(significant(0.0, 2, '.'), "0.0");
         assert_eq!(significant(-6.71, 2, '.'), "\u{2212}6.7");
+    }
+
+    #[test]
+    fn bounds_are_rounded_to_the_side_on_which_they_hold() {
+        let two = Figures::exactly(2);
+        assert_eq!(two.rounded(9.87, Rounding::Down), 9.8);
+        assert_eq!(two.rounded(9.81, Rounding::Up), 9.9);
+        assert_eq!(two.rounded(0.3 - 1e-17, Rounding::Down), 0.3);
+        assert_eq!(two.rounded(1234.0, Rounding::Up), 1300.0);
+        assert_eq!(two.rounded(1234.0, Rounding::Nearest), 1200.0);
     }
 
     #[test]

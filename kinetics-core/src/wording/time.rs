@@ -1,7 +1,7 @@
 //! Times in the unit that reads best.
 
 use super::Display;
-use super::number::{Figures, significant};
+use super::number::{Figures, Rounding, significant};
 use crate::quantity::Seconds;
 use crate::units::TimeUnit;
 
@@ -37,6 +37,18 @@ fn with_unit(number: &str, unit: TimeUnit) -> String {
 pub fn duration(time: Seconds, figures: Figures, display: &Display) -> String {
     let unit = best_unit(time.0, display);
     with_unit(&figures.number(unit.from_seconds(time.0), display.decimal), unit)
+}
+
+/// A bound on a time, rounded to the side on which it still holds.
+pub fn duration_bound(
+    time: Seconds,
+    figures: Figures,
+    rounding: Rounding,
+    display: &Display,
+) -> String {
+    let unit = best_unit(time.0, display);
+    let rounded = figures.rounded(unit.from_seconds(time.0), rounding);
+    with_unit(&figures.number(rounded, display.decimal), unit)
 }
 
 /// A time and its limits: ("6.5 years", "3.2", "13") in one unit where they are of one size,
