@@ -64,6 +64,8 @@ pub struct Wording {
     pub scatter: String,
     /// "25 K below your coldest run".
     pub standing: String,
+    /// "if another law holds: 32 to 67 h"; empty without rivals.
+    pub rival: String,
 }
 
 /// One answer, in the terms of the findings document.
@@ -131,6 +133,15 @@ impl Answer {
         }
     }
 
+    /// The number that the question is about: the bound where one side counts.
+    pub fn key_number(&self) -> Option<f64> {
+        match self.side? {
+            Side::Two => self.value,
+            Side::Lower => self.low,
+            Side::Upper => self.high,
+        }
+    }
+
     /// A refusal in place of numbers.
     pub fn refused(question: &str, refusal: Refusal) -> Self {
         Self {
@@ -163,6 +174,8 @@ pub struct InitialConcentration {
 pub struct Basis {
     /// The fitted or known law; ln k in `base_unit`.
     pub law: FittedLaw,
+    /// Laws that the data do not exclude.
+    pub rivals: Vec<FittedLaw>,
     /// Order of the rate law.
     pub order: Order,
     /// Unit of k internally; none where the data do not say it.
@@ -301,9 +314,23 @@ pub fn whom(bound: Target) -> &'static str {
     }
 }
 
-/// "About 6.5 years; the scatter allows 3.2 to 13 (95 %). 25 K below your coldest run."
+/// "About 6.5 years; the scatter allows 3.2 to 13 (95 %). 25 K below your coldest run. If another
+/// law holds: 5.9 to 8.1 years."
 pub fn sentence(wording: &Wording) -> String {
-    let mut standing = wording.standing.chars();
-    let first: String = standing.next().map(|c| c.to_uppercase().collect()).unwrap_or_default();
-    format!("{}; {}. {first}{}.", wording.headline, wording.scatter, standing.as_str())
+    let mut sentence = format!("{}; {}.", wording.headline, wording.scatter);
+    for part in [&wording.standing, &wording.rival] {
+        if !part.is_empty() {
+            sentence.push(' ');
+            sentence.push_str(&capitalised(part));
+            sentence.push('.');
+        }
+    }
+    sentence
+}
+
+/// With a capital first letter.
+pub fn capitalised(text: &str) -> String {
+    let mut letters = text.chars();
+    let first: String = letters.next().map(|c| c.to_uppercase().collect()).unwrap_or_default();
+    format!("{first}{}", letters.as_str())
 }

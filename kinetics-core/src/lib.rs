@@ -27,6 +27,7 @@ pub mod measurements;
 pub mod rate_law;
 
 // 5 · all runs
+pub mod rivals;
 pub mod temperature_law;
 
 // 6 · deciding

@@ -1,6 +1,6 @@
 //! How long it may stand, and how long it needs: times of which one side counts.
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{
     Answer, Basis, Refusal, Side, WhyNoInterval, Wording, no_bound, sentence, whom,
 };
@@ -19,6 +19,7 @@ pub(super) const LONGEST_STAND: Question = Question {
         let time = Allowance::of(blanks, basis, 1.0 - blanks.part("keep", basis)?)?;
         time.answer(LONGEST_STAND.code, Side::Lower, basis)
     },
+    range: ranges::time,
 };
 
 pub(super) const COMPLETION_TIME: Question = Question {
@@ -32,6 +33,7 @@ pub(super) const COMPLETION_TIME: Question = Question {
         let time = Allowance::of(blanks, basis, blanks.part("gone", basis)?)?;
         time.answer(COMPLETION_TIME.code, Side::Upper, basis)
     },
+    range: ranges::time,
 };
 
 /// A time to an extent, before one of its sides is chosen.
@@ -80,6 +82,7 @@ impl Allowance {
                 display.percent(basis.level)
             ),
             standing,
+            ..Wording::default()
         };
         let other_sides = |whose| self.limit(basis, side, whose).map(|t| t.0);
         let (mean, next_run) = (other_sides(Target::Mean), other_sides(Target::NextRun));

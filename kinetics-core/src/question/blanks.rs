@@ -3,7 +3,7 @@
 use serde_json::{Map, Value};
 
 use super::{MOST_ROWS, Question, quantity_value};
-use crate::answer::{Basis, Refusal};
+use crate::answer::{Basis, Refusal, capitalised};
 use crate::problem::shortened;
 use crate::quantity::{Kelvin, Quantity, Seconds};
 use crate::temperature_law::Target;
@@ -123,10 +123,8 @@ impl Blanks {
 }
 
 fn unusable(error: &crate::units::UnitError, kind: BlankKind) -> Refusal {
-    let said = error.to_string();
-    let mut letters = said.chars();
-    let first: String = letters.next().map(|c| c.to_uppercase().collect()).unwrap_or_default();
-    Refusal::new(format!("{first}{}.", letters.as_str()), format!("Write {}.", kind.expected()))
+    let reason = format!("{}.", capitalised(&error.to_string()));
+    Refusal::new(reason, format!("Write {}.", kind.expected()))
 }
 
 /// `bound`: `next-run`, also where it is absent, or `mean`.

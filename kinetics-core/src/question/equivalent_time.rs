@@ -1,6 +1,6 @@
 //! What time at one temperature does the same as a time at another: t₁ = t₂·k(T₂)/k(T₁).
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::quantity::Seconds;
 use crate::wording::{Figures, duration, duration_with_range};
@@ -14,6 +14,7 @@ pub(super) const QUESTION: Question = Question {
         Blank { name: "other_temperature", kind: BlankKind::Temperature, example: "25 °C" },
     ],
     answer,
+    range: ranges::time,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
@@ -40,6 +41,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         headline,
         scatter: basis.scatter_words(limits),
         standing: format!("{standing}. Q10 = 2 would say {by_rule}"),
+        ..Wording::default()
     };
     Ok(Answer {
         value: Some(best.0),

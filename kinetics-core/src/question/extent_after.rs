@@ -1,6 +1,6 @@
 //! How much is gone after a time: X from θ = k(T)·t.
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::wording::{Figures, significant};
 
@@ -12,6 +12,7 @@ pub(super) const QUESTION: Question = Question {
         Blank { name: "temperature", kind: BlankKind::Temperature, example: "40 °C" },
     ],
     answer,
+    range: ranges::percent,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
@@ -42,6 +43,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         headline: format!("{}\u{a0}% is gone", percent(gone, figures)),
         scatter: basis.scatter_words(limits),
         standing,
+        ..Wording::default()
     };
     Ok(Answer {
         value: Some(gone),

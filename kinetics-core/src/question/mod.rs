@@ -7,6 +7,7 @@ mod allowance;
 mod blanks;
 mod equivalent_time;
 mod extent_after;
+mod ranges;
 mod rate_at;
 mod speed_up;
 mod temperature_for;
@@ -16,7 +17,7 @@ pub use blanks::{BlankKind, Blanks, parse_blank};
 
 use serde_json::{Map, Value};
 
-use crate::answer::{Answer, Basis, Refusal};
+use crate::answer::{Answer, Basis, Refusal, sentence};
 use crate::quantity::Quantity;
 
 /// A kind of question.
@@ -30,6 +31,8 @@ pub struct Question {
     pub blanks: &'static [Blank],
     /// Works out the answer from filled blanks.
     pub answer: fn(&Blanks, &Basis) -> Result<Answer, Refusal>,
+    /// Two of its numbers as a range in words: "32 to 67 h".
+    pub range: fn(f64, f64, &Basis) -> String,
 }
 
 /// A gap in a question's sentence.
@@ -108,18 +111,7 @@ pub fn answer(asked: &Map<String, Value>, basis: Result<&Basis, &Refusal>) -> An
 
 fn answer_each(question: &Question, combinations: &[Blanks], basis: &Basis) -> Answer {
     let one = |blanks: &Blanks| {
-        (question.answer)(blanks, basis)
-            .map(|answer| {
-                if answer.value.is_some_and(f64::is_finite) {
-                    Ok(answer)
-                } else {
-                    Err(Refusal::new(
-                        "The numbers become too large or too small to compute with.",
-                        "Ask for a temperature nearer to the measured ones.",
-                    ))
-                }
-            })
-            .and_then(|checked| checked)
+        answer_one(question, blanks, basis)
             .unwrap_or_else(|refusal| Answer::refused(question.code, refusal))
     };
     match combinations {
@@ -133,6 +125,33 @@ fn answer_each(question: &Question, combinations: &[Blanks], basis: &Basis) -> A
             Answer { sentence, rows: Some(rows), ..Answer::empty(question.code) }
         }
     }
+}
+
+fn answer_one(question: &Question, blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
+    let mut answer = (question.answer)(blanks, basis)?;
+    if !answer.value.is_some_and(f64::is_finite) {
+        return Err(Refusal::new(
+            "The numbers become too large or too small to compute with.",
+            "Ask for a temperature nearer to the measured ones.",
+        ));
+    }
+    let under_rivals: Vec<f64> = basis
+        .rivals
+        .iter()
+        .filter_map(|law| {
+            let rival = Basis { law: law.clone(), rivals: Vec::new(), ..basis.clone() };
+            (question.answer)(blanks, &rival).ok()?.key_number()
+        })
+        .filter(|number| number.is_finite())
+        .collect();
+    answer.rival_low = under_rivals.iter().copied().reduce(f64::min);
+    answer.rival_high = under_rivals.iter().copied().reduce(f64::max);
+    if let Some((low, high)) = answer.rival_low.zip(answer.rival_high) {
+        answer.wording.rival =
+            format!("if another law holds: {}", (question.range)(low, high, basis));
+        answer.sentence = sentence(&answer.wording);
+    }
+    Ok(answer)
 }
 
 /// A question with the examples of its blanks filled in, as an entry of `asked`.

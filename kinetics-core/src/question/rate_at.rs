@@ -1,6 +1,6 @@
 //! How fast it is at a temperature: k, and what follows from it.
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::quantity::{Kelvin, Seconds};
@@ -11,6 +11,7 @@ pub(super) const QUESTION: Question = Question {
     sentence: "How fast is it at [temperature]?",
     blanks: &[Blank { name: "temperature", kind: BlankKind::Temperature, example: "30 °C" }],
     answer,
+    range: ranges::rate,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
@@ -43,6 +44,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         headline: format!("k = {}{unit}", figures.number(rate.value * scale, decimal)),
         scatter: basis.scatter_words(limits),
         standing,
+        ..Wording::default()
     };
     Ok(Answer {
         value: Some(rate.value),

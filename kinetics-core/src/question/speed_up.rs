@@ -1,6 +1,6 @@
 //! How much faster it is at one temperature than at another: k(T₂)/k(T₁).
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::wording::{Figures, significant};
 
@@ -12,6 +12,7 @@ pub(super) const QUESTION: Question = Question {
         Blank { name: "from", kind: BlankKind::Temperature, example: "25 °C" },
     ],
     answer,
+    range: ranges::ratio,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
@@ -31,6 +32,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
             "{standing}. The doubling rule would say {}",
             significant(doubling, 2, decimal)
         ),
+        ..Wording::default()
     };
     Ok(Answer {
         value: Some(ratio.value),

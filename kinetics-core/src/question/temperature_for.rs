@@ -1,7 +1,7 @@
 //! Which temperature reaches an extent within a time, and how warm it may be kept: the law
 //! inverted at ln k = ln θ_X − ln t.
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{
     Answer, Basis, Refusal, Side, WhyNoInterval, Wording, no_bound, sentence, whom,
 };
@@ -17,6 +17,7 @@ pub(super) const TEMPERATURE_FOR: Question = Question {
         Blank { name: "time", kind: BlankKind::Time, example: "8 h" },
     ],
     answer: temperature_for,
+    range: ranges::temperature,
 };
 
 pub(super) const WARMEST_STORAGE: Question = Question {
@@ -27,6 +28,7 @@ pub(super) const WARMEST_STORAGE: Question = Question {
         Blank { name: "time", kind: BlankKind::Time, example: "2 yr" },
     ],
     answer: warmest_storage,
+    range: ranges::temperature,
 };
 
 /// ln k at which the extent takes just the time, and the temperature of the best estimate.
@@ -95,7 +97,7 @@ fn temperature_for(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
     }
     let (grounds, standing) = basis.standing(&[best]);
     let headline = format!("About {}", shown(best, Rounding::Nearest));
-    let wording = Wording { headline, scatter, standing };
+    let wording = Wording { headline, scatter, standing, ..Wording::default() };
     let prediction = ends(set(Target::NextRun));
     Ok(Answer {
         value: Some(best.0),
@@ -143,6 +145,7 @@ fn warmest_storage(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
             display.temperature_rounded(best, decimals, Rounding::Nearest)
         ),
         standing,
+        ..Wording::default()
     };
     Ok(Answer {
         value: Some(best.0),

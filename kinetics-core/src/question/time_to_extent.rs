@@ -1,6 +1,6 @@
 //! How long until a part is gone: t = θ_X/k(T).
 
-use super::{Blank, BlankKind, Blanks, Question};
+use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::quantity::Seconds;
 use crate::wording::{Figures, duration, duration_with_range};
@@ -13,6 +13,7 @@ pub(super) const QUESTION: Question = Question {
         Blank { name: "gone", kind: BlankKind::Part, example: "5 %" },
     ],
     answer,
+    range: ranges::time,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
@@ -35,6 +36,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         headline: format!("About {headline}"),
         scatter: basis.scatter_words(limits),
         standing,
+        ..Wording::default()
     };
     let prediction = rate.next_run.map(times);
     Ok(Answer {

@@ -8,6 +8,7 @@ use crate::measurements::{Observation, Rates};
 use crate::quantity::Kelvin;
 use crate::rate_law::Order;
 use crate::remark::{Remark, Severity};
+use crate::rivals::{Rival, rivals};
 use crate::table::Form;
 use crate::temperature_law::{FittedLaw, LawError, ScatterChoice, TemperatureLaw, fit};
 use crate::units::{ConcentrationKind, RateUnit, TimeUnit};
@@ -23,6 +24,7 @@ pub(super) struct Ground {
     pub refusal: Refusal,
     pub remarks: Vec<Remark>,
     pub order: Option<f64>,
+    pub rivals: Vec<Rival>,
 }
 
 /// Lays the ground for answers.
@@ -31,13 +33,14 @@ pub(super) fn lay(study: &Study, rates: &Rates) -> Ground {
     let outcome = build(study, rates, &mut remarks);
     let order = stated_order(study).or(unit_of(study, rates).map(|u| u.order()));
     match outcome {
-        Ok(basis) => Ground {
+        Ok((basis, rivals)) => Ground {
+            rivals,
             refusal: Refusal::new("", ""),
             order: basis.base_unit.map(|_| basis.order.value()).or(order),
             basis: Some(basis),
             remarks,
         },
-        Err(refusal) => Ground { basis: None, refusal, remarks, order },
+        Err(refusal) => Ground { basis: None, refusal, remarks, order, rivals: Vec::new() },
     }
 }
 
@@ -53,16 +56,27 @@ pub(super) fn level(study: &Study) -> Result<f64, Refusal> {
     ))
 }
 
-fn build(study: &Study, rates: &Rates, remarks: &mut Vec<Remark>) -> Result<Basis, Refusal> {
+/// A law, where it holds, and the laws beside it.
+struct Learnt {
+    law: FittedLaw,
+    support: Support,
+    rivals: Vec<Rival>,
+}
+
+fn build(
+    study: &Study,
+    rates: &Rates,
+    remarks: &mut Vec<Remark>,
+) -> Result<(Basis, Vec<Rival>), Refusal> {
     let level = level(study)?;
     let law = temperature_law(study)?;
     let unit = unit_of(study, rates);
     let order = order(study, unit, remarks)?;
-    let (fitted, support) = match study.measured.form {
+    let Learnt { law: fitted, support, rivals } = match study.measured.form {
         Form::KnownLaw => {
-            let fitted = known_law(study, law)?;
-            let support = Support::of_known_law(fitted.reference);
-            (fitted, support)
+            let law = known_law(study, law)?;
+            let support = Support::of_known_law(law.reference);
+            Learnt { law, support, rivals: Vec::new() }
         }
         Form::Rates => fit_runs(study, rates, law, remarks)?,
         other => {
@@ -72,8 +86,10 @@ fn build(study: &Study, rates: &Rates, remarks: &mut Vec<Remark>) -> Result<Basi
             ));
         }
     };
-    Ok(Basis {
+    let not_excluded = rivals.iter().filter(|r| !r.is_excluded()).map(|r| r.law.clone()).collect();
+    let basis = Basis {
         law: fitted,
+        rivals: not_excluded,
         order,
         base_unit: unit.map(RateUnit::base),
         shown_unit: unit,
@@ -81,7 +97,8 @@ fn build(study: &Study, rates: &Rates, remarks: &mut Vec<Remark>) -> Result<Basi
         support,
         level,
         display: display(study),
-    })
+    };
+    Ok((basis, rivals))
 }
 
 fn fit_runs(
@@ -89,7 +106,7 @@ fn fit_runs(
     rates: &Rates,
     law: TemperatureLaw,
     remarks: &mut Vec<Remark>,
-) -> Result<(FittedLaw, Support), Refusal> {
+) -> Result<Learnt, Refusal> {
     let observations: Vec<Observation> = rates.runs.iter().map(|r| r.observation).collect();
     let mut choice = study.assumed.scatter.unwrap_or_default();
     let uses_errors = choice != ScatterChoice::FromResiduals;
@@ -125,7 +142,16 @@ fn fit_runs(
     let stated = !no_errors && choice != ScatterChoice::FromResiduals;
     let support = Support::of_runs(&temperatures, stated)
         .ok_or_else(|| law_refusal(&LawError::NothingMeasured))?;
-    Ok((fitted, support))
+    let rivals = rivals(&fitted, &observations, choice);
+    if rivals.iter().any(|r| r.delta_aicc.is_none()) {
+        remarks.push(Remark::new(
+            "rivals-unranked",
+            Severity::Note,
+            "Too few runs tell the temperature laws apart: none is ranked and none excluded.",
+            "Five runs or more allow a ranking.",
+        ));
+    }
+    Ok(Learnt { law: fitted, support, rivals })
 }
 
 fn law_refusal(error: &LawError) -> Refusal {

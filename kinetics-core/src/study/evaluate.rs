@@ -69,7 +69,7 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         _ => Rates::default(),
     };
 
-    let Ground { basis, refusal, mut remarks, order } = basis::lay(study, &rates);
+    let Ground { basis, refusal, mut remarks, order, rivals } = basis::lay(study, &rates);
     let answers: Vec<Answer> = study
         .asked
         .iter()
@@ -91,7 +91,7 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         runs: runs(&rates, basis.as_ref(), order, level),
         law: basis.as_ref().map(|basis| LawFindings::of(basis, &study.measured.assumed)),
         one_stage: None,
-        rivals: Vec::new(),
+        rivals: rivals.iter().map(|rival| super::Rival::of(rival, order)).collect(),
         remarks,
         answers,
         record: record::empty(&study.measured.text),

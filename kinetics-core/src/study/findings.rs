@@ -11,7 +11,7 @@ use crate::numeric::distributions::normal_quantile;
 use crate::problem::Problem;
 use crate::remark::Remark;
 use crate::table::{Column, Decimal, Form};
-use crate::temperature_law::{Component, Contrast, Scatter, Target, TemperatureLaw};
+use crate::temperature_law::{Component, Contrast, Scatter, Target};
 use crate::units::ConcentrationKind;
 
 /// Everything found in a study.
@@ -84,10 +84,21 @@ pub struct Rival {
     pub kind: String,
     /// Order of reaction.
     pub order: Option<f64>,
-    /// AICc above the best.
-    pub delta_aicc: f64,
-    /// Akaike weight.
-    pub weight: f64,
+    /// AICc above the best; none where too few runs allow no ranking.
+    pub delta_aicc: Option<f64>,
+    /// Akaike weight; likewise.
+    pub weight: Option<f64>,
+}
+
+impl Rival {
+    pub(super) fn of(rival: &crate::rivals::Rival, order: Option<f64>) -> Self {
+        Self {
+            kind: rival.law.law.code().into(),
+            order,
+            delta_aicc: rival.delta_aicc,
+            weight: rival.weight,
+        }
+    }
 }
 
 /// A number with its interval.
@@ -225,7 +236,7 @@ impl LawFindings {
             Vec::new()
         };
         Self {
-            kind: kind(law).into(),
+            kind: law.code().into(),
             assumed: assumed.to_vec(),
             reference_temperature_kelvin: reference.0,
             rate_at_reference: ln_rate.exponential(rate_unit.as_str()),
@@ -271,16 +282,6 @@ impl MixtureComponent {
 
 fn first_two(covariance: &DMatrix<f64>) -> Vec<Vec<f64>> {
     (0..2).map(|i| (0..2).map(|j| covariance[(i, j)]).collect()).collect()
-}
-
-fn kind(law: TemperatureLaw) -> &'static str {
-    match law {
-        TemperatureLaw::Arrhenius => "arrhenius",
-        TemperatureLaw::Eyring => "eyring",
-        TemperatureLaw::ArrheniusWithPower(_) => "arrhenius-with-power",
-        TemperatureLaw::LogLinear => "log-linear",
-        TemperatureLaw::Curved => "curved",
-    }
 }
 
 /// A run's rate constant with the interval of its stated error (normal on the ln scale).

@@ -19,11 +19,13 @@
 mod diagnostics;
 mod fitted;
 mod inverse;
+mod likelihood;
 mod scatter;
 
 pub use diagnostics::{CurvatureTest, Influence, curvature, influential};
 pub use fitted::{Component, FittedLaw, Kernel, Target};
 pub use inverse::TemperatureSet;
+pub use likelihood::aicc;
 pub use scatter::{LawError, Scatter, ScatterChoice, fit};
 
 use crate::constants::{BOLTZMANN_OVER_PLANCK, MOLAR_GAS_CONSTANT};
@@ -80,6 +82,17 @@ impl Contrast {
 }
 
 impl TemperatureLaw {
+    /// The code in study and findings.
+    pub fn code(self) -> &'static str {
+        match self {
+            Self::Arrhenius => "arrhenius",
+            Self::Eyring => "eyring",
+            Self::ArrheniusWithPower(_) => "arrhenius-with-power",
+            Self::LogLinear => "log-linear",
+            Self::Curved => "curved",
+        }
+    }
+
     /// How many parameters are fitted.
     pub fn parameters(self) -> usize {
         match self {

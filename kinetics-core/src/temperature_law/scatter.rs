@@ -105,7 +105,7 @@ pub fn fit(
 }
 
 /// One law, one set of runs: what every scatter choice shares.
-struct Problem {
+pub(super) struct Problem {
     law: TemperatureLaw,
     temperatures: Vec<Kelvin>,
     ln_rates: Vec<f64>,
@@ -113,7 +113,7 @@ struct Problem {
 }
 
 impl Problem {
-    fn new(law: TemperatureLaw, observations: &[Observation]) -> Result<Self, LawError> {
+    pub(super) fn new(law: TemperatureLaw, observations: &[Observation]) -> Result<Self, LawError> {
         if observations.is_empty() {
             return Err(LawError::NothingMeasured);
         }
@@ -132,19 +132,19 @@ impl Problem {
         })
     }
 
-    fn stated_sd(&self, observations: &[Observation]) -> Result<Vec<f64>, LawError> {
+    pub(super) fn stated_sd(&self, observations: &[Observation]) -> Result<Vec<f64>, LawError> {
         let stated: Vec<f64> = observations.iter().filter_map(|o| o.ln_sd).collect();
         let missing = observations.len() - stated.len();
         if missing == 0 { Ok(stated) } else { Err(LawError::ErrorsMissing { missing }) }
     }
 
     /// T0 with 1/T0 = Σ w x / Σ w.
-    fn reference(&self, weights: &[f64]) -> Kelvin {
+    pub(super) fn reference(&self, weights: &[f64]) -> Kelvin {
         let weighted: f64 = weights.iter().zip(&self.temperatures).map(|(w, t)| w / t.0).sum();
         Kelvin(weights.iter().sum::<f64>() / weighted)
     }
 
-    fn solve(&self, reference: Kelvin, weights: &[f64]) -> Result<LinearFit, LawError> {
+    pub(super) fn solve(&self, reference: Kelvin, weights: &[f64]) -> Result<LinearFit, LawError> {
         let contrasts: Vec<_> =
             self.temperatures.iter().map(|t| self.law.ln_rate(*t, reference)).collect();
         let design = DMatrix::from_fn(contrasts.len(), self.law.parameters(), |row, column| {
@@ -306,7 +306,7 @@ const MOST_NODES: usize = 540;
 /// Components lighter than this change no printed digit.
 const NEGLIGIBLE_MASS: f64 = 1e-9;
 
-fn weights(sd: &[f64], tau: f64) -> Vec<f64> {
+pub(super) fn weights(sd: &[f64], tau: f64) -> Vec<f64> {
     sd.iter().map(|s| 1.0 / (s * s + tau * tau)).collect()
 }
 
