@@ -48,8 +48,11 @@ pub fn rivals(
         return Vec::new();
     }
     let score = |law| aicc(law, observations, chosen.scatter);
-    let mut laws: Vec<(TemperatureLaw, Option<f64>)> =
-        CANDIDATES.iter().filter(|law| **law != chosen.law).map(|law| (*law, score(*law))).collect();
+    let mut laws: Vec<(TemperatureLaw, Option<f64>)> = CANDIDATES
+        .iter()
+        .filter(|law| **law != chosen.law)
+        .map(|law| (*law, score(*law)))
+        .collect();
     let own = score(chosen.law);
     let scores: Vec<f64> = laws.iter().filter_map(|(_, score)| *score).chain(own).collect();
     let best = scores.iter().copied().fold(f64::INFINITY, f64::min);

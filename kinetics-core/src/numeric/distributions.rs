@@ -46,27 +46,16 @@ mod tests {
     use super::*;
 
     fn close(found: f64, expected: f64, relative: f64) {
-        assert!(
-            (found / expected - 1.0).abs() < relative,
-            "{found} is not {expected}"
-        );
+        assert!((found / expected - 1.0).abs() < relative, "{found} is not {expected}");
     }
 
     /// Closed forms: t with 1 degree is Cauchy, with 2 has an algebraic quantile; chi-squared
     /// with 2 is exponential. The tolerance is what statrs' incomplete beta keeps.
     #[test]
     fn quantiles_agree_with_closed_forms() {
-        close(
-            student_t_quantile(0.975, 1.0),
-            (0.475 * std::f64::consts::PI).tan(),
-            1e-10,
-        );
+        close(student_t_quantile(0.975, 1.0), (0.475 * std::f64::consts::PI).tan(), 1e-10);
         let a = 4.0 * 0.975 * 0.025;
-        close(
-            student_t_quantile(0.975, 2.0),
-            2.0 * (0.975 - 0.5) * (2.0_f64 / a).sqrt(),
-            1e-10,
-        );
+        close(student_t_quantile(0.975, 2.0), 2.0 * (0.975 - 0.5) * (2.0_f64 / a).sqrt(), 1e-10);
         close(chi_squared_tail(3.0, 2.0), (-1.5_f64).exp(), 1e-12);
         close(normal_quantile(0.975), 1.959_963_984_540_054, 1e-12);
         // F with (1, n) is t squared.

@@ -99,13 +99,7 @@ pub fn fit(
     let residuals: Vec<f64> = observed.iter().zip(&fitted).map(|(y, f)| y - f).collect();
     let weighted_sum_of_squares = residuals.iter().zip(weights).map(|(r, w)| w * r * r).sum();
     let leverages = q.row_iter().map(|row| row.norm_squared()).collect();
-    Ok(LinearFit {
-        coefficients,
-        covariance,
-        residuals,
-        leverages,
-        weighted_sum_of_squares,
-    })
+    Ok(LinearFit { coefficients, covariance, residuals, leverages, weighted_sum_of_squares })
 }
 
 #[cfg(test)]
@@ -127,12 +121,7 @@ mod tests {
     fn leverages_sum_to_the_number_of_parameters() {
         let x = [1.0, 2.0, 4.0, 7.0, 11.0];
         let design = DMatrix::from_fn(5, 2, |i, j| if j == 0 { 1.0 } else { x[i] });
-        let line = fit(
-            &design,
-            &[1.0, 3.0, 2.0, 5.0, 8.0],
-            &[1.0, 4.0, 1.0, 9.0, 1.0],
-        )
-        .unwrap();
+        let line = fit(&design, &[1.0, 3.0, 2.0, 5.0, 8.0], &[1.0, 4.0, 1.0, 9.0, 1.0]).unwrap();
         assert!((line.leverages.iter().sum::<f64>() - 2.0).abs() < 1e-12);
     }
 
@@ -146,17 +135,8 @@ mod tests {
     #[test]
     fn unusable_numbers_are_refused() {
         let design = DMatrix::from_row_slice(2, 1, &[1.0, 1.0]);
-        assert_eq!(
-            fit(&design, &[1.0, f64::NAN], &[1.0; 2]),
-            Err(LeastSquaresError::NotFinite)
-        );
-        assert_eq!(
-            fit(&design, &[1.0, 2.0], &[1.0, 0.0]),
-            Err(LeastSquaresError::NotFinite)
-        );
-        assert_eq!(
-            fit(&design, &[1.0], &[1.0]),
-            Err(LeastSquaresError::TooFewRows)
-        );
+        assert_eq!(fit(&design, &[1.0, f64::NAN], &[1.0; 2]), Err(LeastSquaresError::NotFinite));
+        assert_eq!(fit(&design, &[1.0, 2.0], &[1.0, 0.0]), Err(LeastSquaresError::NotFinite));
+        assert_eq!(fit(&design, &[1.0], &[1.0]), Err(LeastSquaresError::TooFewRows));
     }
 }

@@ -269,8 +269,10 @@ fn order(
         return Ok(order);
     }
     let says = Order::new(unit.order()).map_or_else(|| "no order known here".into(), Order::name);
-    let sentence =
-        format!("The order is stated as {stated}, but the unit {} is that of {says}.", unit.symbol());
+    let sentence = format!(
+        "The order is stated as {stated}, but the unit {} is that of {says}.",
+        unit.symbol()
+    );
     let example = match unit.concentration {
         Some(concentration) => RateUnit::for_order(stated, concentration, unit.time),
         None => {
@@ -307,7 +309,9 @@ fn initial_concentration(
     if order.needs_initial_concentration() && in_rate.is_some_and(|expected| expected != kind) {
         let expected = in_rate.map(|k| k.base().symbol()).unwrap_or_default();
         return Err(Refusal::new(
-            format!("The initial concentration, {stated}, does not convert into {expected}, as k has it."),
+            format!(
+                "The initial concentration, {stated}, does not convert into {expected}, as k has it."
+            ),
             "State both in the same kind of concentration.",
         ));
     }

@@ -402,7 +402,9 @@ mod tests {
         assert!(scatter.sentence.contains("by feeling") && scatter.sentence.contains("automatic"));
         let saved = study.to_value();
         let given: Value = serde_json::from_str(text).unwrap();
-        for (section, key) in [("measured", "decimal"), ("measured", "extra"), ("assumed", "scatter")] {
+        for (section, key) in
+            [("measured", "decimal"), ("measured", "extra"), ("assumed", "scatter")]
+        {
             assert_eq!(saved[section][key], given[section][key], "{section}.{key}");
         }
         assert_eq!(saved["title"], 5);

@@ -3,10 +3,10 @@
 use super::basis::{self, Ground};
 use super::document::Study;
 use super::findings::{Findings, LawFindings, Read, RunFindings};
+use super::record;
 use crate::answer::{Answer, Basis};
 use crate::measurements::{LeftOut, Observation, Rates, rates};
 use crate::question;
-use super::record;
 use crate::remark::{Evidence, Remark, remarks};
 use crate::table::{ColumnHint, Form, Hints, Table, read_table};
 use crate::units::TemperatureUnit;
@@ -150,12 +150,7 @@ fn read(
     }
 }
 
-fn runs(
-    rates: &Rates,
-    basis: Option<&Basis>,
-    order: Option<f64>,
-    level: f64,
-) -> Vec<RunFindings> {
+fn runs(rates: &Rates, basis: Option<&Basis>, order: Option<f64>, level: f64) -> Vec<RunFindings> {
     let unit = rates.unit.map(|unit| unit.base().code()).unwrap_or_default();
     rates
         .runs

@@ -253,9 +253,8 @@ impl LawFindings {
                 basis,
                 "J/mol",
             ),
-            entropy_of_activation: converts_to_molar.then(|| {
-                Estimate::of(&law.entropy_of_activation(reference), basis, "J/(mol K)")
-            }),
+            entropy_of_activation: converts_to_molar
+                .then(|| Estimate::of(&law.entropy_of_activation(reference), basis, "J/(mol K)")),
             covariance: fitted.covariance.as_ref().map(first_two),
             degrees_of_freedom: fitted.degrees_of_freedom,
             scatter: fitted.scatter,
@@ -286,8 +285,7 @@ fn first_two(covariance: &DMatrix<f64>) -> Vec<Vec<f64>> {
 
 /// A run's rate constant with the interval of its stated error (normal on the ln scale).
 pub(super) fn stated_rate(run: &Run, unit: &str, level: f64) -> Estimate {
-    let half_width =
-        run.observation.ln_sd.map(|sd| sd * normal_quantile(0.5 * (1.0 + level)));
+    let half_width = run.observation.ln_sd.map(|sd| sd * normal_quantile(0.5 * (1.0 + level)));
     Estimate {
         value: run.rate_constant,
         standard_error: run.observation.ln_sd.map(|sd| sd * run.rate_constant),

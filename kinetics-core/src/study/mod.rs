@@ -7,8 +7,8 @@ mod findings;
 mod record;
 
 pub use document::{
-    Assumed, ColumnChoice, DisplayChoice, Excluded, LawChoice, Measured, OrderChoice, StatedQuantity, Study,
-    StudyError, Thermometer, VERSION,
+    Assumed, ColumnChoice, DisplayChoice, Excluded, LawChoice, Measured, OrderChoice,
+    StatedQuantity, Study, StudyError, Thermometer, VERSION,
 };
 pub use evaluate::{Evaluation, Prepared, evaluate, evaluate_prepared, hints, prepare};
 pub use findings::{

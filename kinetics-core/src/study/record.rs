@@ -95,7 +95,12 @@ impl Page {
         }
         for (i, column) in read.columns.iter().enumerate() {
             let unit = column.unit.as_deref().map(|u| format!(" in {u}")).unwrap_or_default();
-            self.line(format!("Column {}: {}{unit} (“{}”)", i + 1, column.role.code(), column.name));
+            self.line(format!(
+                "Column {}: {}{unit} (“{}”)",
+                i + 1,
+                column.role.code(),
+                column.name
+            ));
         }
         for choice in &read.choices {
             self.line(format!("Read: {choice}"));
@@ -311,9 +316,7 @@ fn law_words(kind: &str) -> &'static str {
 fn scatter_words(scatter: Scatter) -> &'static str {
     match scatter {
         Scatter::NoneKnown => "Scatter: none known; there are no intervals.",
-        Scatter::FromResiduals => {
-            "Scatter: from the residuals; least squares on ln k, Student t."
-        }
+        Scatter::FromResiduals => "Scatter: from the residuals; least squares on ln k, Student t.",
         Scatter::AsStated => "Scatter: errors as stated; weights 1/s², normal distribution.",
         Scatter::AsStatedPlusRunToRun => {
             "Scatter: errors as stated plus run-to-run scatter; intervals averaged over what the \

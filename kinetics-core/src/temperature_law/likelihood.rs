@@ -13,7 +13,9 @@ pub fn aicc(law: TemperatureLaw, observations: &[Observation], scatter: Scatter)
     let (deviance, variances) = match scatter {
         Scatter::NoneKnown => return None,
         Scatter::FromResiduals => (deviance_from_residuals(&problem, observations.len())?, 1.0),
-        Scatter::AsStated => (deviance(&problem, &problem.stated_sd(observations).ok()?, 0.0)?, 0.0),
+        Scatter::AsStated => {
+            (deviance(&problem, &problem.stated_sd(observations).ok()?, 0.0)?, 0.0)
+        }
         Scatter::AsStatedPlusRunToRun => {
             (least_deviance(&problem, &problem.stated_sd(observations).ok()?)?, 1.0)
         }
@@ -114,7 +116,9 @@ mod tests {
     #[test]
     fn too_few_runs_have_no_ranking() {
         assert_eq!(aicc(TemperatureLaw::Arrhenius, &runs(None)[..4], Scatter::FromResiduals), None);
-        assert!(aicc(TemperatureLaw::Arrhenius, &runs(None)[..5], Scatter::FromResiduals).is_some());
+        assert!(
+            aicc(TemperatureLaw::Arrhenius, &runs(None)[..5], Scatter::FromResiduals).is_some()
+        );
         assert_eq!(aicc(TemperatureLaw::Curved, &runs(None)[..5], Scatter::FromResiduals), None);
     }
 }

@@ -21,12 +21,13 @@ mod fitted;
 mod inverse;
 mod likelihood;
 mod scatter;
+mod thermometer;
 
 pub use diagnostics::{CurvatureTest, Influence, curvature, influential};
 pub use fitted::{Component, FittedLaw, Kernel, Target};
 pub use inverse::TemperatureSet;
 pub use likelihood::aicc;
-pub use scatter::{LawError, Scatter, ScatterChoice, fit};
+pub use scatter::{LawError, Scatter, ScatterChoice, Settings, fit};
 
 use crate::constants::{BOLTZMANN_OVER_PLANCK, MOLAR_GAS_CONSTANT};
 use crate::quantity::Kelvin;

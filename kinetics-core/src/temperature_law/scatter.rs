@@ -35,6 +35,22 @@ pub enum ScatterChoice {
     AsStatedPlusRunToRun,
 }
 
+/// How a law is fitted.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct Settings {
+    /// Where the intervals come from.
+    pub scatter: ScatterChoice,
+    /// Random standard deviation of each run's temperature in K; used where errors are taken as
+    /// stated, as residuals and run-to-run scatter contain it already.
+    pub thermometer_sd_kelvin: f64,
+}
+
+impl From<ScatterChoice> for Settings {
+    fn from(scatter: ScatterChoice) -> Self {
+        Self { scatter, thermometer_sd_kelvin: 0.0 }
+    }
+}
+
 /// Which scatter the intervals stand on.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize)]
 #[serde(rename_all = "kebab-case")]
@@ -84,19 +100,20 @@ pub enum LawError {
 pub fn fit(
     law: TemperatureLaw,
     observations: &[Observation],
-    choice: ScatterChoice,
+    settings: impl Into<Settings>,
 ) -> Result<FittedLaw, LawError> {
+    let Settings { scatter, thermometer_sd_kelvin } = settings.into();
     let problem = Problem::new(law, observations)?;
     let stated = problem.stated_sd(observations);
-    match (choice, stated) {
+    match (scatter, stated) {
         (ScatterChoice::FromResiduals, _) | (ScatterChoice::Automatic, Err(_)) => {
             problem.from_residuals()
         }
         (_, Err(missing)) => Err(missing),
-        (ScatterChoice::AsStated, Ok(sd)) => problem.as_stated(&sd),
+        (ScatterChoice::AsStated, Ok(sd)) => problem.as_stated(&sd, thermometer_sd_kelvin),
         (ScatterChoice::AsStatedPlusRunToRun | ScatterChoice::Automatic, Ok(sd)) => {
             if problem.degrees_of_freedom == 0 {
-                problem.as_stated(&sd)
+                problem.as_stated(&sd, thermometer_sd_kelvin)
             } else {
                 problem.as_stated_plus_run_to_run(&sd)
             }
@@ -106,9 +123,9 @@ pub fn fit(
 
 /// One law, one set of runs: what every scatter choice shares.
 pub(super) struct Problem {
-    law: TemperatureLaw,
-    temperatures: Vec<Kelvin>,
-    ln_rates: Vec<f64>,
+    pub(super) law: TemperatureLaw,
+    pub(super) temperatures: Vec<Kelvin>,
+    pub(super) ln_rates: Vec<f64>,
     degrees_of_freedom: usize,
 }
 
@@ -204,18 +221,28 @@ impl Problem {
         Ok(fitted)
     }
 
-    fn as_stated(&self, sd: &[f64]) -> Result<FittedLaw, LawError> {
+    fn as_stated(&self, sd: &[f64], thermometer_sd_kelvin: f64) -> Result<FittedLaw, LawError> {
+        if thermometer_sd_kelvin > 0.0 {
+            return self.as_stated_with_thermometer(sd, thermometer_sd_kelvin);
+        }
         let weights = weights(sd, 0.0);
         let reference = self.reference(&weights);
         let fit = self.solve(reference, &weights)?;
-        let component = component(1.0, 0.0, &fit);
-        let chi_squared = self.chi_squared(fit.weighted_sum_of_squares);
-        Ok(FittedLaw {
+        Ok(self.standing_on_stated(reference, weights, fit))
+    }
+
+    pub(super) fn standing_on_stated(
+        &self,
+        reference: Kelvin,
+        weights: Vec<f64>,
+        fit: LinearFit,
+    ) -> FittedLaw {
+        FittedLaw {
             scatter: Scatter::AsStated,
-            components: vec![component],
-            chi_squared,
+            components: vec![component(1.0, 0.0, &fit)],
+            chi_squared: self.chi_squared(fit.weighted_sum_of_squares),
             ..self.fitted(reference, weights, fit)
-        })
+        }
     }
 
     fn as_stated_plus_run_to_run(&self, sd: &[f64]) -> Result<FittedLaw, LawError> {
