@@ -1,7 +1,7 @@
 //! Probability distributions: thin names over `statrs`, with the few
 //! arguments that these methods need, and answers at the edges instead of errors.
 
-use statrs::distribution::{ChiSquared, ContinuousCDF, FisherSnedecor, Normal, StudentsT};
+use statrs::distribution::{ChiSquared, Continuous, ContinuousCDF, FisherSnedecor, Normal, StudentsT};
 
 /// Probability that a standard normal variate is at most `x`.
 pub fn normal_cdf(x: f64) -> f64 {
@@ -11,6 +11,16 @@ pub fn normal_cdf(x: f64) -> f64 {
 /// The value that a standard normal variate stays below with `probability`.
 pub fn normal_quantile(probability: f64) -> f64 {
     Normal::standard().inverse_cdf(probability)
+}
+
+/// Density of a standard normal variate.
+pub fn normal_density(x: f64) -> f64 {
+    Normal::standard().pdf(x)
+}
+
+/// Density of Student's t with `degrees_of_freedom` > 0.
+pub fn student_t_density(x: f64, degrees_of_freedom: f64) -> f64 {
+    StudentsT::new(0.0, 1.0, degrees_of_freedom).map_or(f64::NAN, |t| t.pdf(x))
 }
 
 /// Probability that Student's t with `degrees_of_freedom` > 0 is at most `x`.

@@ -1,4 +1,4 @@
-//! Roots of monotone functions by bisection: slow, exact to the last bits, never surprised.
+//! Roots of monotone functions: bisection, and Newton kept inside a bracket.
 
 /// The point between `low` and `high` where `function`, which never decreases, passes `target`.
 ///
@@ -21,6 +21,39 @@ pub fn crossing(function: impl Fn(f64) -> f64, target: f64, low: f64, high: f64)
     0.5 * (below + above)
 }
 
+/// Like [`crossing`] for a smooth function that also tells its slope: Newton steps, with a
+/// bisection wherever a step would leave the bracket or gain less than half of it.
+///
+/// `function` returns value and slope. Stops when a step no longer changes the sixteenth digit
+/// of the bracket's first width or of the root.
+pub fn smooth_crossing(
+    function: impl Fn(f64) -> (f64, f64),
+    target: f64,
+    low: f64,
+    high: f64,
+) -> f64 {
+    let (mut below, mut above) = (low, high);
+    let mut at = 0.5 * (low + high);
+    let finest = 1e-16 * (high - low);
+    for _ in 0..200 {
+        let (value, slope) = function(at);
+        if value < target {
+            below = at;
+        } else {
+            above = at;
+        }
+        let newton = at - (value - target) / slope;
+        let next =
+            if newton > below && newton < above { newton } else { 0.5 * (below + above) };
+        let step = (next - at).abs();
+        at = next;
+        if step <= finest + 4.0 * f64::EPSILON * at.abs() {
+            break;
+        }
+    }
+    at
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -29,6 +62,18 @@ mod tests {
     fn finds_the_cube_root_to_the_last_bits() {
         let root = crossing(|x| x * x * x, 2.0, 0.0, 4.0);
         assert!((root - 2.0_f64.cbrt()).abs() < 1e-15);
+    }
+
+    #[test]
+    fn newton_and_bisection_meet() {
+        // Steep on one side and flat on the other, where plain Newton jumps away.
+        let value = |x: f64| x.tanh();
+        let with_slope = |x: f64| (x.tanh(), 1.0 - x.tanh().powi(2));
+        for target in [-0.999_99, -0.3, 0.0, 0.5, 0.999] {
+            let smooth = smooth_crossing(with_slope, target, -40.0, 60.0);
+            assert!((smooth - crossing(value, target, -40.0, 60.0)).abs() < 1e-9, "{target}");
+        }
+        assert!((smooth_crossing(|x| (x * x * x, 3.0 * x * x), 2.0, 0.0, 4.0) - 2.0_f64.cbrt()).abs() < 1e-14);
     }
 
     #[test]

@@ -11,9 +11,10 @@ use nalgebra::DMatrix;
 
 use super::{Contrast, TemperatureLaw};
 use crate::numeric::distributions::{
-    normal_cdf, normal_quantile, student_t_cdf, student_t_quantile,
+    normal_cdf, normal_density, normal_quantile, student_t_cdf, student_t_density,
+    student_t_quantile,
 };
-use crate::numeric::roots::crossing;
+use crate::numeric::roots::smooth_crossing;
 use crate::quantity::{JoulesPerMole, Kelvin};
 use crate::temperature_law::Scatter;
 
@@ -31,6 +32,13 @@ impl Kernel {
         match self {
             Self::Normal => normal_cdf(x),
             Self::StudentT(degrees) => student_t_cdf(x, degrees),
+        }
+    }
+
+    fn density(self, x: f64) -> f64 {
+        match self {
+            Self::Normal => normal_density(x),
+            Self::StudentT(degrees) => student_t_density(x, degrees),
         }
     }
 
@@ -187,18 +195,19 @@ impl FittedLaw {
         }
         // The mixture's quantile lies between the smallest and largest of its components'.
         let distribution = |value: f64| {
-            let of = |&(weight, location, scale): &(f64, f64, f64)| {
+            let mut sum = (0.0, 0.0);
+            for &(weight, location, scale) in &spread {
                 if scale > 0.0 {
-                    weight * self.kernel.cdf((value - location) / scale)
+                    let standard = (value - location) / scale;
+                    sum.0 += weight * self.kernel.cdf(standard);
+                    sum.1 += weight * self.kernel.density(standard) / scale;
                 } else if value >= location {
-                    weight
-                } else {
-                    0.0
+                    sum.0 += weight;
                 }
-            };
-            spread.iter().map(of).sum()
+            }
+            sum
         };
-        Some(crossing(distribution, probability, low, high))
+        Some(smooth_crossing(distribution, probability, low, high))
     }
 
     /// Two-sided interval of a linear target at `level` (0.95 for 95 %).
