@@ -1,12 +1,21 @@
 //! From a text to a table: cells with their places, columns with roles and
 //! units, the problems met, and every decision made on the user's behalf.
 
+mod columns;
+mod convert;
+mod header;
+mod layout;
+mod reader;
 mod role;
+mod roles;
+mod tally;
+mod values;
 
 use std::ops::Range;
 
 use serde::{Deserialize, Serialize};
 
+pub use reader::{Reader, read_table};
 pub use role::{ErrorKind, Form, Role, SignalIs};
 
 use crate::problem::Problem;

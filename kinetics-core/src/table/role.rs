@@ -26,6 +26,21 @@ pub enum Form {
     KnownLaw,
 }
 
+impl Form {
+    /// The code of the form in a study.
+    #[must_use]
+    pub const fn code(self) -> &'static str {
+        match self {
+            Form::Rates => "rates",
+            Form::Progress => "progress",
+            Form::Times => "times",
+            Form::HeatRates => "heat-rates",
+            Form::Peaks => "peaks",
+            Form::KnownLaw => "known-law",
+        }
+    }
+}
+
 /// What a column holds.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[serde(rename_all = "kebab-case")]

@@ -11,6 +11,7 @@ pub mod marker;
 pub mod number;
 mod scan;
 pub mod separator;
+pub mod stamp;
 
 pub use decimal::Decimal;
 pub use number::{Number, Reading, read_cell};

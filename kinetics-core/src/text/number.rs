@@ -16,6 +16,8 @@ pub struct Number {
     pub value: f64,
     /// Its error as written in the cell, in the same unit: `± 0.1`, `(1)`.
     pub error: Option<f64>,
+    /// The error is in per cent: `0.5 ± 10 %`.
+    pub error_percent: bool,
     /// A unit behind the number, as written.
     pub unit: Option<String>,
     /// A mark such as `*` beside it.
@@ -46,7 +48,7 @@ pub fn read_cell(cell: &str, decimal: Decimal) -> Reading {
         return Reading::Empty;
     }
     if let Some(value) = plain(cell, decimal) {
-        return Reading::Number(Number { value, error: None, unit: None, marked: false });
+        return Reading::Number(Number { value, error: None, error_percent: false, unit: None, marked: false });
     }
     match marker(cell) {
         Some(Marker::BelowLimit) => return Reading::Below(None),
@@ -167,7 +169,8 @@ mod tests {
             ("(2.1 ± 0.1)×10^-3", 2.1e-3, 1e-4),
             ("(2.1 ± 0.1)e-3", 2.1e-3, 1e-4),
             ("2.1e-3 ± 1e-4", 2.1e-3, 1e-4),
-            ("0.5 ± 10%", 0.5, 0.05),
+            ("0.5 ± 10%", 0.5, 10.0),
+            ("95.2 % ± 0.3 %", 95.2, 0.3),
         ] {
             let found = number(cell, Decimal::Point);
             assert!(found.is_some(), "{cell}");
@@ -181,7 +184,7 @@ mod tests {
     fn units_and_marks_beside_the_number() {
         let read = |cell: &str| read_cell(cell, Decimal::Point);
         let with = |value: f64, unit: Option<&str>, marked: bool| {
-            Reading::Number(Number { value, error: None, unit: unit.map(str::to_string), marked })
+            Reading::Number(Number { value, error: None, error_percent: false, unit: unit.map(str::to_string), marked })
         };
         assert_eq!(read("50 °C"), with(50.0, Some("°C"), false));
         assert_eq!(read("95.2 %"), with(95.2, Some("%"), false));

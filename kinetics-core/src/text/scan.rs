@@ -11,8 +11,9 @@ pub(super) fn scan(cell: &str, decimal: Decimal) -> Option<Number> {
     let mut scanner = Scanner { characters: &characters, at: 0, decimal };
     let (value, error) = scanner.value_and_error()?;
     let unit = scanner.unit()?;
+    let error_percent = error.is_some() && unit.as_deref() == Some("%");
     let finite = value.is_finite() && error.is_none_or(f64::is_finite);
-    finite.then_some(Number { value, error, unit, marked: false })
+    finite.then_some(Number { value, error, error_percent, unit, marked: false })
 }
 
 /// Zero although a digit of the mantissa is not: too small for a number here.
@@ -111,8 +112,14 @@ impl Scanner<'_> {
             return Some((value.with_power(scale)?, Some(error)));
         }
         let number = value.with_power(scale)?;
+        let before = self.at;
         self.skip_blanks();
+        // 95.2 % ± 0.3 %: the unit is said twice.
+        if self.accept('%') {
+            self.skip_blanks();
+        }
         if !self.plus_minus() {
+            self.at = before;
             return Some((number, None));
         }
         let error = self.mantissa()?;
@@ -121,14 +128,7 @@ impl Scanner<'_> {
         if error_power.is_some() && power.is_none() {
             return None;
         }
-        let error = error.with_power(error_power.unwrap_or(0))?;
-        self.skip_blanks();
-        let relative = self.peek(0) == Some('%') && self.at + 1 == self.characters.len();
-        if relative {
-            self.at += 1;
-            return Some((number, Some(number.abs() * error / 100.0)));
-        }
-        Some((number, Some(error)))
+        Some((number, Some(error.with_power(error_power.unwrap_or(0))?)))
     }
 
     fn plus_minus(&mut self) -> bool {

@@ -1,0 +1,371 @@
+//! Where the table stands in the text: how many columns, which lines are its
+//! header, its units and its rows, and which are titles and notes around it.
+
+use super::header;
+use super::{Choice, Decimal, Hints, Separator};
+use crate::problem::{Position, Problem, shortened};
+use crate::text::lines::{MOST_FIELDS, Record, Records};
+use crate::text::number::looks_numeric;
+use crate::text::stamp;
+
+/// Most records that are looked at before the rest is read.
+const SAMPLE: usize = 300;
+
+/// The plan by which all lines are read.
+#[derive(Clone, Debug)]
+pub(super) struct Layout {
+    pub separator: Separator,
+    /// How many columns.
+    pub columns: usize,
+    /// The header of each column; empty where there is none.
+    pub headers: Vec<String>,
+    /// The cell of a row of units, for each column.
+    pub units: Vec<String>,
+    pub header_lines: Vec<usize>,
+    pub units_line: Option<usize>,
+    /// The first line that may be a row.
+    pub first_line: usize,
+    /// Which columns mostly hold numbers.
+    pub numeric: Vec<bool>,
+    pub notes: Vec<(usize, String)>,
+    pub choices: Vec<Choice>,
+    /// Why nothing at all is read.
+    pub refusal: Option<Problem>,
+}
+
+/// What one line is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Kind {
+    Blank,
+    Row,
+    Note,
+}
+
+impl Layout {
+    pub fn find(text: &str, hints: &Hints) -> Layout {
+        let separator = Separator::detect(text);
+        let mut layout = Layout {
+            separator,
+            columns: 0,
+            headers: Vec::new(),
+            units: Vec::new(),
+            header_lines: Vec::new(),
+            units_line: None,
+            first_line: usize::MAX,
+            numeric: Vec::new(),
+            notes: Vec::new(),
+            choices: Vec::new(),
+            refusal: unreadable(text),
+        };
+        if layout.refusal.is_some() {
+            return layout;
+        }
+        let sample = Sample::take(text, separator);
+        let Some(first) = sample.first_row() else {
+            layout.refusal = sample.nothing(text);
+            return layout;
+        };
+        layout.first_line = sample.records.get(first).map_or(1, |record| record.line);
+        layout.columns = sample.width(first);
+        if layout.columns > MOST_FIELDS {
+            return layout;
+        }
+        layout.find_header(&sample, first);
+        layout.numeric = (0..layout.columns).map(|column| sample.is_numeric(first, column)).collect();
+        layout.refusal = layout.comma_used_twice(&sample, first, hints).or_else(|| layout.lies_on_its_side(&sample, first));
+        layout
+    }
+
+    /// What a line is, by what stands in the columns of numbers.
+    pub fn kind(&self, text: &str, record: &Record) -> Kind {
+        if record.filled() == 0 {
+            return Kind::Blank;
+        }
+        if record.line < self.first_line {
+            return Kind::Note;
+        }
+        let mut attempts = 0;
+        for column in (0..self.columns).filter(|column| self.numeric.get(*column) == Some(&true)) {
+            let field = record.field(text, column);
+            attempts += usize::from(attempts_number(field));
+            if attempts >= 2 || looks_numeric(field) {
+                return Kind::Row;
+            }
+        }
+        Kind::Note
+    }
+
+    fn find_header(&mut self, sample: &Sample<'_>, first: usize) {
+        self.headers = vec![String::new(); self.columns];
+        self.units = vec![String::new(); self.columns];
+        let before = sample.records.get(..first).unwrap_or_default();
+        let mut rest = before;
+        if let Some((last, others)) = before.split_last()
+            && let Some(cells) = self.header_cells(sample.text, last)
+        {
+            rest = others;
+            let upper = others.last().and_then(|record| Some((record, self.header_cells(sample.text, record)?)));
+            let only_units = cells.iter().all(|cell| cell.is_empty() || header::is_unit_cell(cell));
+            match upper {
+                Some((record, upper)) if only_units => {
+                    self.units_line = Some(last.line);
+                    self.units = cells;
+                    self.header_lines = vec![record.line];
+                    self.headers = upper;
+                    rest = others.get(..others.len() - 1).unwrap_or_default();
+                }
+                Some((record, upper)) if upper.iter().filter(|cell| !cell.is_empty()).count() > 1 => {
+                    self.header_lines = vec![record.line, last.line];
+                    self.headers = upper
+                        .iter()
+                        .zip(&cells)
+                        .map(|(above, below)| format!("{above} {below}").trim().to_string())
+                        .collect();
+                    rest = others.get(..others.len() - 1).unwrap_or_default();
+                }
+                _ => {
+                    self.header_lines = vec![last.line];
+                    self.headers = cells;
+                }
+            }
+        }
+        for record in rest {
+            self.notes.push((record.line, shortened(sample.text.get(record.span.clone()).unwrap_or(""))));
+        }
+    }
+
+    /// The cells of a line above the rows, if it can be their header.
+    fn header_cells(&self, text: &str, record: &Record) -> Option<Vec<String>> {
+        if record.too_long {
+            return None;
+        }
+        let mut cells: Vec<String> = if self.separator.is_spaces() {
+            let line = text.get(record.span.clone()).unwrap_or("").trim();
+            header::cut_line(line.strip_prefix('#').unwrap_or(line), self.columns)?
+        } else {
+            (0..self.columns).map(|column| record.field(text, column).replace("\"\"", "\"")).collect()
+        };
+        if let Some(first) = cells.first_mut()
+            && let Some(rest) = first.strip_prefix('#')
+            && !rest.trim().is_empty()
+        {
+            *first = rest.trim().to_string();
+        }
+        let filled = cells.iter().filter(|cell| !cell.is_empty()).count();
+        let alone = self.columns > 1 && filled == 1;
+        // A single field above several columns is a title, unless it reads as a header.
+        let fits = filled > 1 || !alone || cells.iter().any(|cell| header::read(cell, "").unit.is_some());
+        // A title may be long; a header is not a sentence.
+        let short = cells.iter().all(|cell| cell.chars().count() <= 120);
+        (filled > 0 && fits && short).then_some(cells)
+    }
+
+    /// `50,0,0021`: commas between the columns and commas inside the numbers.
+    fn comma_used_twice(&self, sample: &Sample<'_>, first: usize, hints: &Hints) -> Option<Problem> {
+        if self.separator != Separator::Comma || hints.decimal == Some(Decimal::Point) {
+            return None;
+        }
+        let rows: Vec<&Record> = sample.rows(first).collect();
+        let quoted_or_point = |record: &&Record| {
+            (0..record.fields.len()).any(|column| record.field(sample.text, column).contains(['.', ',']))
+        };
+        let after_integer_part = |record: &&&Record| {
+            (1..record.fields.len()).any(|column| {
+                let (before, field) = (record.field(sample.text, column - 1), record.field(sample.text, column));
+                let digits = |text: &str| !text.is_empty() && text.bytes().all(|byte| byte.is_ascii_digit());
+                digits(before.trim_start_matches(['-', '−'])) && digits(field) && field.len() > 1 && field.starts_with('0')
+            })
+        };
+        let named = self.headers.iter().filter(|header| !header.is_empty()).count();
+        let suspicious = rows.iter().filter(after_integer_part).count();
+        let wider = rows.iter().filter(|record| named > 0 && record.filled() > named).count();
+        let without_points = !rows.iter().any(|record| quoted_or_point(&record));
+        let twice = without_points && (suspicious * 2 >= rows.len() || wider * 2 > rows.len());
+        let row = rows.iter().find(|record| after_integer_part(&record)).or_else(|| rows.first())?;
+        twice.then(|| {
+            let line = sample.text.get(row.span.clone()).unwrap_or("");
+            Problem::said(
+                &Position::row(row.line),
+                line,
+                "decimal points, or semicolons or tabs between the columns",
+                &format!(
+                    "found “{}”, where commas seem to mark decimals as well as to separate columns, so that nothing \
+                     was read; write decimal points, or put semicolons or tabs between the columns.",
+                    shortened(line)
+                ),
+            )
+        })
+    }
+
+    /// Headers down the first column instead of along the first line.
+    fn lies_on_its_side(&self, sample: &Sample<'_>, first: usize) -> Option<Problem> {
+        if !self.header_lines.is_empty() || self.columns < 3 || self.numeric.first() == Some(&true) {
+            return None;
+        }
+        let rows: Vec<&Record> = sample.rows(first).collect();
+        let roles = rows.iter().filter(|record| header::read(record.field(sample.text, 0), "").role.is_some()).count();
+        (rows.len() <= 6 && roles >= 2).then(|| {
+            let row = rows.first().map_or(1, |record| record.line);
+            let found = rows.first().map_or("", |record| record.field(sample.text, 0));
+            Problem::said(
+                &Position::row(row),
+                found,
+                "one row for each measurement",
+                "the table lies on its side, with its headers in the first column; transpose it, so that each \
+                 measurement has a row (in a spreadsheet: copy, paste special, transpose), and paste it again.",
+            )
+        })
+    }
+}
+
+/// Texts that are no text.
+fn unreadable(text: &str) -> Option<Problem> {
+    if !text.contains('\0') {
+        return None;
+    }
+    let at = text.find('\0').unwrap_or(0);
+    let row = text.get(..at).unwrap_or("").lines().count().max(1);
+    Some(Problem::said(
+        &Position::row(row),
+        "NUL",
+        "plain text",
+        "found NUL characters, which no plain text has, so that nothing was read; save the file as text (UTF-8), or \
+         copy the cells and paste them.",
+    ))
+}
+
+/// Begins as a number does, even if it is none.
+fn attempts_number(field: &str) -> bool {
+    let mut characters = field.chars().skip_while(|character| matches!(character, '-' | '+' | '−' | '–' | '<' | '≤' | '>' | '≥' | '±' | '.' | ',' | ' ' | '('));
+    characters.next().is_some_and(|first| first.is_ascii_digit())
+}
+
+/// The first records that are not blank.
+struct Sample<'text> {
+    text: &'text str,
+    separator: Separator,
+    records: Vec<Record>,
+    /// For each record the fields that look like numbers.
+    numeric: Vec<Vec<bool>>,
+    /// The usual number of filled fields.
+    usual: usize,
+}
+
+impl<'text> Sample<'text> {
+    fn take(text: &'text str, separator: Separator) -> Sample<'text> {
+        let mut walk = Records::new(text, separator);
+        let mut records = Vec::new();
+        while let Some(record) = walk.next(text) {
+            if (record.filled() > 0 || record.too_long) && !is_rule(text, &record) {
+                records.push(record);
+            }
+            if records.len() >= SAMPLE {
+                break;
+            }
+        }
+        let numeric: Vec<Vec<bool>> = records
+            .iter()
+            .map(|record: &Record| {
+                (0..record.fields.len())
+                    .map(|column| {
+                        let field = record.field(text, column);
+                        looks_numeric(field) || stamp::looks_like(field)
+                    })
+                    .collect()
+            })
+            .collect();
+        let mut counts = [0_usize; 64];
+        for record in records.iter().filter(|record: &&Record| record.filled() > 1) {
+            counts[record.filled().min(63)] += 1;
+        }
+        let usual = counts.iter().enumerate().max_by_key(|(_, count)| **count).map_or(0, |(width, _)| width);
+        Sample { text, separator, records, numeric, usual }
+    }
+
+    /// Enough of its fields are numbers.
+    fn looks_like_row(&self, index: usize) -> bool {
+        let (Some(record), Some(numeric)) = (self.records.get(index), self.numeric.get(index)) else { return false };
+        let numbers = numeric.iter().filter(|number| **number).count();
+        let filled = record.filled();
+        numbers > 0 && (numbers * 2 >= filled || (filled == self.usual && numbers > 1))
+    }
+
+    /// Index of the first record that belongs to the rows.
+    fn first_row(&self) -> Option<usize> {
+        (0..self.records.len()).find(|index| self.looks_like_row(*index) && !self.is_header_of_the_rest(*index))
+    }
+
+    /// A line with numbers in it that is a header all the same: `t/h 50 60 70`.
+    fn is_header_of_the_rest(&self, index: usize) -> bool {
+        let later = || (index + 1..self.records.len()).filter(|other| self.looks_like_row(*other));
+        let rest = later().count();
+        let (Some(record), Some(numeric)) = (self.records.get(index), self.numeric.get(index)) else { return false };
+        (0..record.fields.len()).any(|column| {
+            let field = record.field(self.text, column);
+            let filled_below = later().filter(|other| self.records.get(*other).is_some_and(|below| !below.field(self.text, column).is_empty()));
+            let filled_below = filled_below.count();
+            let numeric_below = later().filter(|other| self.numeric.get(*other).and_then(|row| row.get(column)) == Some(&true)).count();
+            let text_above_numbers = !field.is_empty()
+                && numeric.get(column) == Some(&false)
+                && !attempts_number(field)
+                && filled_below > 0
+                && numeric_below * 10 >= filled_below * 6;
+            let empty_corner = index == 0 && column == 0 && field.is_empty() && record.filled() > 1 && rest > 1 && filled_below == rest;
+            text_above_numbers || empty_corner
+        })
+    }
+
+    fn rows(&self, first: usize) -> impl Iterator<Item = &Record> {
+        (first..self.records.len()).filter(|index| self.looks_like_row(*index)).filter_map(|index| self.records.get(index))
+    }
+
+    fn width(&self, first: usize) -> usize {
+        let last_filled = |record: &Record| record.fields.iter().rposition(|span| !span.is_empty()).map_or(0, |last| last + 1);
+        if self.separator.is_spaces() {
+            let mut counts = vec![0_usize; MOST_FIELDS + 1];
+            for record in self.rows(first) {
+                counts[record.fields.len().min(MOST_FIELDS)] += 1;
+            }
+            return counts.iter().enumerate().max_by_key(|(_, count)| **count).map_or(0, |(width, _)| width);
+        }
+        let header = first.checked_sub(1).and_then(|above| self.records.get(above)).map_or(0, last_filled);
+        let rows = self.rows(first).map(last_filled).max().unwrap_or(0);
+        // A title with commas is no wide header.
+        if header > rows && first > 0 && self.separator == Separator::Comma && header > 2 * rows { rows } else { rows.max(header) }
+    }
+
+    fn is_numeric(&self, first: usize, column: usize) -> bool {
+        let (mut filled, mut numbers) = (0, 0);
+        for index in (first..self.records.len()).filter(|index| self.looks_like_row(*index)) {
+            let number = self.numeric.get(index).and_then(|row| row.get(column)) == Some(&true);
+            filled += usize::from(self.records.get(index).is_some_and(|record| !record.field(self.text, column).is_empty()));
+            numbers += usize::from(number);
+        }
+        filled > 0 && numbers * 2 >= filled
+    }
+
+    /// Why there is no row at all; none for an empty text.
+    fn nothing(&self, text: &str) -> Option<Problem> {
+        let first = self.records.first()?;
+        if first.too_long {
+            return None;
+        }
+        let line = text.get(first.span.clone()).unwrap_or("");
+        Some(Problem::said(
+            &Position::row(first.line),
+            line,
+            "a table with a row of numbers for each measurement",
+            &format!("found “{}”, but no row of numbers anywhere; paste a table with a row for each measurement.", shortened(line)),
+        ))
+    }
+}
+
+/// The ruled line of a text table: `|---|---|`, `=====`.
+pub(super) fn is_rule(text: &str, record: &Record) -> bool {
+    let line = text.get(record.span.clone()).unwrap_or("");
+    line.len() >= 3
+        && line.contains(['-', '=', '_', '─', '━'])
+        && !line.contains('\t')
+        && line.chars().all(|character| matches!(character, '-' | '=' | '_' | '─' | '━' | '|' | '+' | ':' | ' ' | '┼'))
+        && line.matches(['-', '=', '_', '─', '━']).count() >= 3
+}

@@ -1,0 +1,378 @@
+//! Reads a text into a table in slices, so that a long paste never keeps a page
+//! from answering: first all lines are cut into cells, then roles and units are
+//! decided, then the cells become numbers.
+
+use std::borrow::Cow;
+use std::collections::HashMap;
+
+use super::columns::{self, Columns};
+use super::convert::Converter;
+use super::layout::{Kind, Layout, is_rule};
+use super::tally::Lines;
+use super::values::{TimeShape, Values};
+use super::{Cell, Choice, Content, Decimal, Hints, Role, Row, Separator, Table};
+use crate::problem::{Position, Problem, shortened};
+use crate::text::decimal::{Evidence, Votes, evidence};
+use crate::text::lines::{LONGEST_LINE, MOST_FIELDS, Record, Records};
+
+/// Notes and problems of lines that are kept one by one.
+const MOST_NOTES: usize = 500;
+const MOST_LINE_PROBLEMS: usize = 50;
+
+/// Reads a text row by row.
+pub struct Reader<'text> {
+    text: Cow<'text, str>,
+    hints: Hints,
+    layout: Layout,
+    records: Records,
+    rows: Vec<Row>,
+    notes: Vec<(usize, String)>,
+    problems: Vec<Problem>,
+    votes: Vec<Votes>,
+    /// The first cell of each column that either decimal mark explains.
+    ambiguous: Vec<Option<String>>,
+    cut: bool,
+    decided: Option<Decided>,
+}
+
+struct Decided {
+    columns: Columns,
+    decimal: Decimal,
+    shapes: Vec<TimeShape>,
+    converter: Converter,
+    next: usize,
+}
+
+/// Reads a text at once.
+#[must_use]
+pub fn read_table(text: &str, hints: &Hints) -> Table {
+    Reader::new(text, hints.clone()).finish()
+}
+
+impl<'text> Reader<'text> {
+    /// Looks at the beginning of the text and plans the rest.
+    #[must_use]
+    pub fn new(text: impl Into<Cow<'text, str>>, hints: Hints) -> Reader<'text> {
+        let text = text.into();
+        let layout = Layout::find(&text, &hints);
+        let records = Records::new(&text, layout.separator);
+        let notes = layout.notes.clone();
+        let problems: Vec<Problem> = layout.refusal.iter().cloned().collect();
+        let votes = vec![Votes::default(); layout.columns.min(MOST_FIELDS)];
+        let ambiguous = vec![None; votes.len()];
+        Reader {
+            text,
+            hints,
+            records,
+            rows: Vec::new(),
+            notes,
+            problems,
+            votes,
+            ambiguous,
+            cut: false,
+            decided: None,
+            layout,
+        }
+    }
+
+    /// Goes on by at most so many lines or rows; false when all is read.
+    pub fn read_rows(&mut self, at_most: usize) -> bool {
+        if !self.cut {
+            for _ in 0..at_most.max(1) {
+                if !self.cut_record() {
+                    self.cut = true;
+                    break;
+                }
+            }
+            return true;
+        }
+        if self.decided.is_none() {
+            self.decide();
+        }
+        let Some(decided) = &mut self.decided else { return false };
+        let end = decided.next.saturating_add(at_most.max(1)).min(self.rows.len());
+        for row in self.rows.get_mut(decided.next..end).unwrap_or_default() {
+            decided.converter.convert(&self.text, row);
+        }
+        decided.next = end;
+        end < self.rows.len()
+    }
+
+    /// How much is done, from 0 to 1.
+    #[must_use]
+    pub fn progress(&self) -> f64 {
+        let share = |done: usize, all: usize| if all == 0 { 1.0 } else { done as f64 / all as f64 };
+        match &self.decided {
+            None => 0.5 * share(self.records.position(), self.text.len()),
+            Some(decided) => 0.5 + 0.5 * share(decided.next, self.rows.len()),
+        }
+    }
+
+    /// Reads what is left, and hands over the table.
+    #[must_use]
+    pub fn finish(mut self) -> Table {
+        while self.read_rows(10_000) {}
+        let Some(mut decided) = self.decided.take() else { return self.empty() };
+        if decided.shapes.contains(&TimeShape::Stamps) {
+            self.count_from_start(&decided);
+        }
+        let mut choices = std::mem::take(&mut self.layout.choices);
+        choices.extend(self.decimal_choices(&decided));
+        choices.append(&mut decided.columns.choices);
+        choices.extend(clock_choices(&decided));
+        for (at, column) in decided.columns.columns.iter().enumerate() {
+            if let Some(tally) = decided.converter.tallies.get(at) {
+                tally.choices(at, column, &mut choices);
+            }
+        }
+        choices.extend(self.note_choice());
+        let mut problems = self.problems;
+        problems.append(&mut decided.columns.problems);
+        problems.append(&mut decided.converter.problems);
+        for (at, column) in decided.columns.columns.iter().enumerate() {
+            problems.extend(decided.converter.tallies.get(at).and_then(|tally| tally.unlisted_problem(at, column)));
+        }
+        Table {
+            form: decided.columns.form,
+            columns: decided.columns.columns,
+            rows: self.rows,
+            problems,
+            decimal: decided.decimal,
+            separator: self.layout.separator,
+            header_lines: self.layout.header_lines,
+            units_line: self.layout.units_line,
+            notes: self.notes,
+            choices,
+        }
+    }
+
+    fn empty(self) -> Table {
+        Table {
+            form: self.hints.form,
+            columns: Vec::new(),
+            rows: Vec::new(),
+            problems: self.problems,
+            decimal: self.hints.decimal.unwrap_or_default(),
+            separator: self.layout.separator,
+            header_lines: Vec::new(),
+            units_line: None,
+            notes: self.notes,
+            choices: Vec::new(),
+        }
+    }
+
+    /// Cuts one record; false at the end.
+    fn cut_record(&mut self) -> bool {
+        if self.layout.refusal.is_some() {
+            return false;
+        }
+        let Some(mut record) = self.records.next(&self.text) else { return false };
+        if record.too_long {
+            self.refuse_line(&record);
+            return true;
+        }
+        if record.line < self.layout.first_line || is_rule(&self.text, &record) {
+            return true;
+        }
+        self.join_excess(&mut record);
+        match self.layout.kind(&self.text, &record) {
+            Kind::Blank => {}
+            Kind::Note => {
+                if self.notes.len() < MOST_NOTES {
+                    self.notes.push((record.line, shortened(self.text.get(record.span.clone()).unwrap_or(""))));
+                }
+            }
+            Kind::Row => self.add_row(&record),
+        }
+        true
+    }
+
+    /// Between spaces the last field may contain some.
+    fn join_excess(&self, record: &mut Record) {
+        let columns = self.layout.columns;
+        if self.layout.separator.is_spaces()
+            && record.fields.len() > columns
+            && let Some(end) = record.fields.last().map(|span| span.end)
+        {
+            record.fields.truncate(columns);
+            if let Some(last) = record.fields.last_mut() {
+                last.end = end;
+            }
+        }
+    }
+
+    fn refuse_line(&mut self, record: &Record) {
+        if self.problems.len() >= MOST_LINE_PROBLEMS {
+            return;
+        }
+        let line = self.text.get(record.span.clone()).unwrap_or("");
+        let start: String = line.chars().take(80).collect();
+        let (what, limit) = if record.span.len() > LONGEST_LINE {
+            (format!("{} characters", record.span.len()), format!("{LONGEST_LINE}"))
+        } else {
+            (format!("more than {MOST_FIELDS} columns"), format!("{MOST_FIELDS} columns"))
+        };
+        self.problems.push(Problem::said(
+            &Position::row(record.line),
+            &start,
+            &format!("at most {limit} in a line"),
+            &format!("the line has {what}, at most {limit} are read; it is left out."),
+        ));
+    }
+
+    fn add_row(&mut self, record: &Record) {
+        let columns = self.layout.columns;
+        let end = record.fields.last().map_or(record.span.end, |span| span.end);
+        let mut cells = Vec::with_capacity(columns);
+        for column in 0..columns {
+            let span = record.fields.get(column).cloned().unwrap_or(end..end);
+            let cell = self.text.get(span.clone()).unwrap_or("");
+            let weight = evidence(cell);
+            if let Some(votes) = self.votes.get_mut(column) {
+                votes.count(weight);
+            }
+            if matches!(weight, Evidence::Ambiguous(_))
+                && let Some(slot @ None) = self.ambiguous.get_mut(column)
+            {
+                *slot = Some(shortened(cell));
+            }
+            cells.push(Cell { span, content: Content::Empty });
+        }
+        let beyond = record.fields.iter().skip(columns).find(|span| !span.is_empty());
+        if let Some(span) = beyond
+            && self.problems.len() < MOST_LINE_PROBLEMS
+        {
+            let found = self.text.get(span.clone()).unwrap_or("");
+            let expected = format!("{columns} columns, as in the rows above");
+            self.problems.push(Problem::new(&Position::row(record.line), found, &expected, "what is beyond them is not read"));
+        }
+        self.rows.push(Row { line: record.line, cells });
+    }
+
+    fn decide(&mut self) {
+        let mut all = Votes::default();
+        self.votes.iter().for_each(|votes| all.add(votes));
+        let fallback = if self.layout.separator == Separator::Semicolon && all.doubtful(Decimal::Point) {
+            // Semicolons separate where the comma marks decimals.
+            Decimal::Comma
+        } else {
+            Decimal::Point
+        };
+        let decimal = self.hints.decimal.or(all.certain()).unwrap_or(fallback);
+        let decimals: Vec<Decimal> =
+            self.votes.iter().map(|votes| self.hints.decimal.or(votes.certain()).unwrap_or(decimal)).collect();
+        let values: Vec<Values> = decimals
+            .iter()
+            .enumerate()
+            .map(|(column, decimal)| Values::of(&self.text, &self.rows, column, *decimal))
+            .collect();
+        let columns = columns::decide(&self.layout, &self.hints, &values, &decimals);
+        let shapes: Vec<TimeShape> = columns
+            .columns
+            .iter()
+            .zip(&values)
+            .map(|(column, values)| if column.role == Role::Time { values.time_shape } else { TimeShape::Numbers })
+            .collect();
+        let converter = Converter::new(&columns.columns, &shapes, columns.form, self.hints.decimal.is_some());
+        self.decided = Some(Decided { columns, decimal, shapes, converter, next: 0 });
+    }
+
+    /// Time stamps count from the first of their run.
+    fn count_from_start(&mut self, decided: &Decided) {
+        let columns = &decided.columns.columns;
+        let Some(time) = columns.iter().position(|column| column.role == Role::Time) else { return };
+        let runs: Vec<usize> = (0..columns.len()).filter(|at| matches!(columns[*at].role, Role::Run | Role::Temperature)).collect();
+        let key = |row: &Row| -> String {
+            runs.iter()
+                .map(|at| match row.cells.get(*at).map(|cell| &cell.content) {
+                    Some(Content::Text(name)) => name.to_string(),
+                    Some(Content::Number { value, .. }) => value.to_string(),
+                    _ => String::new(),
+                })
+                .collect::<Vec<_>>()
+                .join("\t")
+        };
+        let mut starts: HashMap<String, f64> = HashMap::new();
+        for row in &self.rows {
+            if let Some((value, _)) = row.cells.get(time).and_then(Cell::number) {
+                let start = starts.entry(key(row)).or_insert(value);
+                *start = f64::min(*start, value);
+            }
+        }
+        for row in &mut self.rows {
+            let start = starts.get(&key(row)).copied().unwrap_or(0.0);
+            if let Some(Cell { content: Content::Number { value, .. }, .. }) = row.cells.get_mut(time) {
+                *value -= start;
+            }
+        }
+    }
+
+    /// What the decimal mark was taken to be, where anybody could doubt it.
+    fn decimal_choices(&self, decided: &Decided) -> Vec<Choice> {
+        let mut choices = Vec::new();
+        let stated = self.hints.decimal.is_some();
+        if !stated && self.votes.iter().any(|votes| votes.certain() == Some(Decimal::Comma)) {
+            choices.push(Choice { sentence: "The comma is read as the decimal mark.".to_string(), column: None });
+        }
+        for (at, column) in decided.columns.columns.iter().enumerate() {
+            let (Some(votes), Some(Some(cell))) = (self.votes.get(at), self.ambiguous.get(at)) else { continue };
+            if stated || !column.role.is_numeric() || !votes.doubtful(column.decimal) || votes.certain().is_some() {
+                continue;
+            }
+            let read = |decimal: Decimal| match crate::text::read_cell(cell, decimal) {
+                crate::text::Reading::Number(number) => columns::shown(number.value),
+                _ => "no number".to_string(),
+            };
+            let mark = |decimal: Decimal| if decimal == Decimal::Comma { "commas" } else { "points" };
+            let mut all = Votes::default();
+            self.votes.iter().for_each(|votes| all.add(votes));
+            let why = if all.certain().is_some() {
+                format!("because other numbers have decimal {}", mark(column.decimal))
+            } else if self.layout.separator == Separator::Semicolon {
+                "because semicolons separate the columns".to_string()
+            } else {
+                "because nothing says that the comma marks decimals".to_string()
+            };
+            let name = if column.header.is_empty() { String::new() } else { format!(" ({})", shortened(&column.header)) };
+            let sentence = format!(
+                "Column {}{name}: “{cell}” is read as {}, {why}; with decimal {} it would be {}.",
+                at + 1,
+                read(column.decimal),
+                mark(column.decimal.other()),
+                read(column.decimal.other()),
+            );
+            choices.push(Choice { sentence, column: Some(at + 1) });
+        }
+        choices
+    }
+
+    /// Notes between rows are named: somebody may have meant them as rows.
+    fn note_choice(&self) -> Option<Choice> {
+        let (first, last) = (self.rows.first()?.line, self.rows.last()?.line);
+        let mut lines = Lines::default();
+        for (line, text) in self.notes.iter().filter(|(line, _)| *line > first && *line < last) {
+            lines.count(*line, text);
+        }
+        let example = self.notes.iter().find(|(line, _)| *line > first && *line < last).map(|(_, text)| text.clone())?;
+        let (are, notes) = if lines.count > 1 { ("are", "notes") } else { ("is", "a note") };
+        let rows = lines.rows().replacen("row", "Row", 1);
+        Some(Choice { sentence: format!("{rows} {are} taken as {notes} and not read (“{example}”)."), column: None })
+    }
+}
+
+/// How times of a clock were read.
+fn clock_choices(decided: &Decided) -> Vec<Choice> {
+    let mut choices = Vec::new();
+    for (at, (column, shape)) in decided.columns.columns.iter().zip(&decided.shapes).enumerate() {
+        let name = if column.header.is_empty() { String::new() } else { format!(" ({})", shortened(&column.header)) };
+        let unit = column.unit.as_deref().unwrap_or("h");
+        let what = match shape {
+            TimeShape::Numbers => continue,
+            TimeShape::Stamps => format!("times count in {unit} from the first stamp of each run."),
+            TimeShape::Clock { seconds: true } => format!("times are read as hours:minutes:seconds, in {unit}."),
+            TimeShape::Clock { seconds: false } => format!("times are read as hours:minutes, not minutes:seconds, in {unit}."),
+        };
+        choices.push(Choice { sentence: format!("Column {}{name}: {what}", at + 1), column: Some(at + 1) });
+    }
+    choices
+}
