@@ -36,3 +36,6 @@ pub mod curve;
 pub mod grounds;
 pub mod question;
 pub mod remark;
+
+// 7 · memory
+pub mod study;

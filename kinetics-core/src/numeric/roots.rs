@@ -21,6 +21,50 @@ pub fn crossing(function: impl Fn(f64) -> f64, target: f64, low: f64, high: f64)
     0.5 * (below + above)
 }
 
+/// Like [`crossing`] with few calls of a smooth function: regula falsi, the weight of an end that
+/// stays put halved each time (the Illinois method; Dowell & Jarratt, BIT 1971, 11, 168), and a
+/// bisection where that stalls. Stops when the bracket or the misfit is down to `tolerance` of
+/// the bracket's own size.
+pub fn secant_crossing(
+    function: impl Fn(f64) -> f64,
+    target: f64,
+    low: f64,
+    high: f64,
+    tolerance: f64,
+) -> f64 {
+    let (mut below, mut above) = (low, high);
+    let (mut under, mut over) = (function(low) - target, function(high) - target);
+    let small = tolerance * (over - under).abs();
+    let mut kept = 0_i32;
+    let mut at = 0.5 * (low + high);
+    for round in 0..200 {
+        let secant = (below * over - above * under) / (over - under);
+        at = if secant > below && secant < above && round % 8 != 7 {
+            secant
+        } else {
+            0.5 * (below + above)
+        };
+        let misfit = function(at) - target;
+        if misfit.abs() <= small || above - below <= tolerance * (high - low) {
+            break;
+        }
+        if misfit < 0.0 {
+            (below, under) = (at, misfit);
+            if kept == -1 {
+                over *= 0.5;
+            }
+            kept = -1;
+        } else {
+            (above, over) = (at, misfit);
+            if kept == 1 {
+                under *= 0.5;
+            }
+            kept = 1;
+        }
+    }
+    at
+}
+
 /// Like [`crossing`] for a smooth function that also tells its slope: Newton steps, with a
 /// bisection wherever a step would leave the bracket or gain less than half of it.
 ///
@@ -74,6 +118,18 @@ mod tests {
             assert!((smooth - crossing(value, target, -40.0, 60.0)).abs() < 1e-9, "{target}");
         }
         assert!((smooth_crossing(|x| (x * x * x, 3.0 * x * x), 2.0, 0.0, 4.0) - 2.0_f64.cbrt()).abs() < 1e-14);
+    }
+
+    #[test]
+    fn secant_needs_few_calls() {
+        let calls = std::cell::Cell::new(0);
+        let function = |x: f64| {
+            calls.set(calls.get() + 1);
+            x.exp()
+        };
+        let root = secant_crossing(function, 10.0, 0.0, 4.0, 1e-13);
+        assert!((root - 10.0_f64.ln()).abs() < 1e-12);
+        assert!(calls.get() < 20, "{}", calls.get());
     }
 
     #[test]

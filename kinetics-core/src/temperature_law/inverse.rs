@@ -5,7 +5,7 @@
 //! surely differs from zero, else unbounded or two separate rays.
 
 use super::{FittedLaw, Target};
-use crate::numeric::roots::crossing;
+use crate::numeric::roots::secant_crossing;
 use crate::quantity::Kelvin;
 
 /// Temperatures are searched for between these; a result at the edge counts as none.
@@ -87,14 +87,12 @@ fn reach(function: impl Fn(Kelvin) -> f64, target: f64, start: Kelvin) -> Option
         let outer = if warmer { inner * (1.0 + step) } else { inner / (1.0 + step) };
         let passed = (function(Kelvin(outer)) < target) != (at_start < target);
         if passed {
-            let (low, high) = if warmer { (inner, outer) } else { (outer, inner) };
-            let sign = if rises { 1.0 } else { -1.0 };
-            return Some(Kelvin(crossing(
-                |t| sign * function(Kelvin(t)),
-                sign * target,
-                low,
-                high,
-            )));
+            // In 1/T the law is close to a line, which the secant meets in a few steps.
+            let (hot, cold) = if warmer { (outer, inner) } else { (inner, outer) };
+            let sign = if rises { -1.0 } else { 1.0 };
+            let falling = |x: f64| sign * function(Kelvin(1.0 / x));
+            let x = secant_crossing(falling, sign * target, 1.0 / hot, 1.0 / cold, 1e-13);
+            return Some(Kelvin(1.0 / x));
         }
         inner = outer;
         step *= 1.3;
