@@ -150,6 +150,10 @@ impl LawPicture {
         if left_out > 0 {
             sentences.push(format!("{left_out} left out of the fit."));
         }
+        let rivals: Vec<&str> = self.rivals.iter().map(|rival| rival.name.as_str()).collect();
+        if !rivals.is_empty() {
+            sentences.push(format!("Other laws drawn: {}.", rivals.join(", ")));
+        }
         for flag in &self.flags {
             let grounds = self.ln_rate_at(flag.temperature).map(|(_, grounds)| grounds);
             sentences.push(describe::question(flag.number, flag.temperature, grounds, unit));

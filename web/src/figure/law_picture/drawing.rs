@@ -85,10 +85,6 @@ impl LawPicture {
         axis::level(&mut layer, (lowest, Side::Bottom, bounds), &reciprocal, &ticks, |_| {
             Role::Quiet
         });
-        if lowest != plot {
-            let line = [Point::new(plot.left, plot.bottom), Point::new(plot.right, plot.bottom)];
-            layer.segments([line], Stroke::solid(Role::Rule, 1.0));
-        }
         surround::head(&mut layer, self.rate_label(), self.temperature_unit, scene, plot);
         layout.foot.draw(&mut layer, plot, scene.height);
         if self.points.is_empty() && self.curve.is_empty() {

@@ -43,21 +43,31 @@ impl Room {
         self.lines.push(path);
     }
 
-    /// Whether a text lies in the area, clear of all that has room.
-    fn is_free(&self, text: &Text) -> bool {
+    /// Whether a text lies in the area, clear of all that has room. From lines other than
+    /// its own it keeps further away, so that it cannot be read as theirs.
+    fn is_free(&self, text: &Text, own: &[Point]) -> bool {
         let room = text.room();
         let around = room.grown(AROUND);
+        let from_others = room.grown(OFF_LINE + 1.0);
         around.within(self.area)
             && !self.boxes.iter().any(|taken| taken.overlaps(around))
-            && !self
-                .lines
-                .iter()
-                .any(|path| path.windows(2).any(|step| room.crossed_by(step[0], step[1])))
+            && !self.lines.iter().any(|path| {
+                let room = if path == own { room } else { from_others };
+                path.windows(2).any(|step| room.crossed_by(step[0], step[1]))
+            })
     }
 
     /// The first of some texts that finds room, which it then holds.
     pub fn place(&mut self, candidates: impl IntoIterator<Item = Text>) -> Option<Text> {
-        let text = candidates.into_iter().find(|text| self.is_free(text))?;
+        self.place_beside(candidates, &[])
+    }
+
+    fn place_beside(
+        &mut self,
+        candidates: impl IntoIterator<Item = Text>,
+        own: &[Point],
+    ) -> Option<Text> {
+        let text = candidates.into_iter().find(|text| self.is_free(text, own))?;
         self.boxes.push(text.room());
         Some(text)
     }
@@ -98,7 +108,7 @@ impl Room {
                 );
             }
         }
-        self.place(candidates)
+        self.place_beside(candidates, path)
     }
 
     /// The longest unbroken part of a path that lies in the area.
@@ -175,6 +185,17 @@ mod tests {
                 assert!(!name.room().overlaps(other.room()));
             }
         }
+    }
+
+    #[test]
+    fn a_name_cannot_be_read_as_that_of_a_close_line() {
+        let mut room = Room::new(AREA);
+        let (own, other) = (slope(3.0), slope(0.0));
+        room.take_line(own.clone());
+        room.take_line(other);
+        let text = room.place_along("curved", Role::Quiet, &own, TOWARDS_ENDS);
+        // Its own line is the lower one.
+        assert!(text.is_some_and(|text| text.at.y > 0.75 * text.at.x + 3.0 - 25.0));
     }
 
     #[test]
