@@ -315,9 +315,11 @@ pub fn whom(bound: Target) -> &'static str {
 }
 
 /// "About 6.5 years; the scatter allows 3.2 to 13 (95 %). 25 K below your coldest run. If another
-/// law holds: 5.9 to 8.1 years."
-pub fn sentence(wording: &Wording) -> String {
-    let mut sentence = format!("{}; {}.", wording.headline, wording.scatter);
+/// law holds: 5.9 to 8.1 years." A bound reads on without a pause: "At most 9 h for a single
+/// batch, to be 95 % sure; …"
+pub fn sentence(wording: &Wording, side: Side) -> String {
+    let pause = if side == Side::Two { ";" } else { "" };
+    let mut sentence = format!("{}{pause} {}.", wording.headline, wording.scatter);
     for part in [&wording.standing, &wording.rival] {
         if !part.is_empty() {
             sentence.push(' ');

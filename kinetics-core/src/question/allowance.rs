@@ -6,7 +6,7 @@ use crate::answer::{
 };
 use crate::quantity::{Kelvin, Seconds};
 use crate::temperature_law::Target;
-use crate::wording::{Figures, Rounding, duration, duration_bound};
+use crate::wording::{Rounding, duration_bound};
 
 pub(super) const LONGEST_STAND: Question = Question {
     code: "longest-stand",
@@ -65,14 +65,17 @@ impl Allowance {
         let best = Seconds(libm::exp(self.ln_theta - basis.law.ln_rate(self.temperature)));
         let limit = self.limit(basis, side, self.bound).ok_or_else(no_bound)?;
         let display = &basis.display;
-        let figures = Figures::supported(best.0, Some((limit.0, 2.0 * best.0 - limit.0)));
-        let best_words = duration(best, figures, display);
-        let (rounding, headline, guess) = if side == Side::Lower {
-            (Rounding::Down, "At most", format!("the best guess, {best_words}, is no limit"))
+        let (rounding, headline) = if side == Side::Lower {
+            (Rounding::Down, "At most")
         } else {
-            (Rounding::Up, "At least", format!("best guess {best_words}"))
+            (Rounding::Up, "At least")
         };
-        let shown = duration_bound(limit, figures, rounding, display);
+        let (shown, best_words) = duration_bound(limit, best, rounding, display);
+        let guess = if side == Side::Lower {
+            format!("the best guess, {best_words}, is no limit")
+        } else {
+            format!("best guess {best_words}")
+        };
         let (grounds, standing) = basis.standing(&[self.temperature]);
         let wording = Wording {
             headline: format!("{headline} {shown}"),
@@ -99,7 +102,7 @@ impl Allowance {
             side: Some(side),
             grounds: Some(grounds),
             why: Some(WhyNoInterval::OneSided),
-            sentence: sentence(&wording),
+            sentence: sentence(&wording, side),
             wording,
             ..Answer::empty(code)
         }

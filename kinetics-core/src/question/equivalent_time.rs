@@ -52,7 +52,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         side: Some(Side::Two),
         grounds: Some(grounds),
         why: range.is_none().then_some(WhyNoInterval::NoScatterKnown),
-        sentence: sentence(&wording),
+        sentence: sentence(&wording, Side::Two),
         wording,
         ..Answer::empty(QUESTION.code)
     }

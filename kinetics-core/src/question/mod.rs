@@ -17,7 +17,7 @@ pub use blanks::{BlankKind, Blanks, parse_blank};
 
 use serde_json::{Map, Value};
 
-use crate::answer::{Answer, Basis, Refusal, sentence};
+use crate::answer::{Answer, Basis, Refusal, Side, sentence};
 use crate::quantity::Quantity;
 
 /// A kind of question.
@@ -149,7 +149,7 @@ fn answer_one(question: &Question, blanks: &Blanks, basis: &Basis) -> Result<Ans
     if let Some((low, high)) = answer.rival_low.zip(answer.rival_high) {
         answer.wording.rival =
             format!("if another law holds: {}", (question.range)(low, high, basis));
-        answer.sentence = sentence(&answer.wording);
+        answer.sentence = sentence(&answer.wording, answer.side.unwrap_or(Side::Two));
     }
     Ok(answer)
 }

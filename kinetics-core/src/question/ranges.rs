@@ -4,10 +4,16 @@ use crate::answer::Basis;
 use crate::quantity::{Kelvin, Seconds};
 use crate::wording::{Figures, Rounding, duration, significant};
 
-/// Both ends printed by `show`; one where they read the same.
+/// Both ends printed by `show`; one where they read the same, and a unit that both share once.
 fn joined(low: f64, high: f64, show: impl Fn(f64) -> String) -> String {
     let (low, high) = (show(low), show(high));
-    if low == high { format!("about {low}") } else { format!("{low} to {high}") }
+    if low == high {
+        return format!("about {low}");
+    }
+    match (low.rsplit_once('\u{a0}'), high.rsplit_once('\u{a0}')) {
+        (Some((number, unit)), Some((_, same))) if unit == same => format!("{number} to {high}"),
+        _ => format!("{low} to {high}"),
+    }
 }
 
 /// Times in s.
@@ -37,4 +43,18 @@ pub(super) fn rate(low: f64, high: f64, basis: &Basis) -> String {
 /// Temperatures in K, on the scale of the display.
 pub(super) fn temperature(low: f64, high: f64, basis: &Basis) -> String {
     joined(low, high, |t| basis.display.temperature_rounded(Kelvin(t), 0, Rounding::Nearest))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_shared_unit_is_said_once() {
+        let show = |v: f64| format!("{v}\u{a0}{}", if v < 60.0 { "h" } else { "days" });
+        assert_eq!(joined(28.0, 44.0, show), "28 to 44\u{a0}h");
+        assert_eq!(joined(28.0, 90.0, show), "28\u{a0}h to 90\u{a0}days");
+        assert_eq!(joined(28.0, 28.0, show), "about 28\u{a0}h");
+        assert_eq!(joined(1.0, 2.0, |v| v.to_string()), "1 to 2");
+    }
 }

@@ -108,7 +108,7 @@ fn temperature_for(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         side: Some(Side::Two),
         grounds: Some(grounds),
         why,
-        sentence: sentence(&wording),
+        sentence: sentence(&wording, Side::Two),
         wording,
         ..Answer::empty(TEMPERATURE_FOR.code)
     }
@@ -155,7 +155,7 @@ fn warmest_storage(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         side: Some(Side::Lower),
         grounds: Some(grounds),
         why: Some(WhyNoInterval::OneSided),
-        sentence: sentence(&wording),
+        sentence: sentence(&wording, Side::Lower),
         wording,
         ..Answer::empty(WARMEST_STORAGE.code)
     }

@@ -145,9 +145,14 @@ pub(super) fn influence(evidence: &Evidence) -> Option<Remark> {
     // Three figures show the shift; where it is smaller, one more than it needs.
     let figures = Figures::supported(with, Some((with - (with - without).abs(), with)));
     let name = evidence.run_names.get(worst.run).map_or("One run", String::as_str);
+    let target = fitted.law.activation_energy(fitted.reference, fitted.reference);
+    let noticeable = fitted.standard_error(&target).is_some_and(|error| {
+        let unit = basis.display.energy;
+        (with - without).abs() > unit.from_joules_per_mole(error)
+    });
     Some(Remark::new(
         "influence",
-        Severity::Caution,
+        if noticeable { Severity::Caution } else { Severity::Note },
         format!(
             "{name} moves the law by itself (Cook's distance {}): without it the activation energy \
              would be {} instead of {} {}.",

@@ -39,16 +39,19 @@ pub fn duration(time: Seconds, figures: Figures, display: &Display) -> String {
     with_unit(&figures.number(unit.from_seconds(time.0), display.decimal), unit)
 }
 
-/// A bound on a time, rounded to the side on which it still holds.
+/// A bound on a time, rounded to the side on which it still holds, and the best guess beside it:
+/// ("2.7 h", "3.1 h").
 pub fn duration_bound(
-    time: Seconds,
-    figures: Figures,
+    limit: Seconds,
+    best: Seconds,
     rounding: Rounding,
     display: &Display,
-) -> String {
-    let unit = best_unit(time.0, display);
-    let rounded = figures.rounded(unit.from_seconds(time.0), rounding);
-    with_unit(&figures.number(rounded, display.decimal), unit)
+) -> (String, String) {
+    let unit = best_unit(limit.0, display);
+    let (bound, guess) = (unit.from_seconds(limit.0), unit.from_seconds(best.0));
+    let figures = Figures::supported(bound, Some((bound, 2.0 * guess - bound)));
+    let bound = figures.number(figures.rounded(bound, rounding), display.decimal);
+    (with_unit(&bound, unit), duration(best, figures, display))
 }
 
 /// A time and its limits: ("6.5 years", "3.2", "13") in one unit where they are of one size,
@@ -59,9 +62,9 @@ pub fn duration_with_range(
     display: &Display,
 ) -> (String, String, String) {
     let unit = best_unit(time.0, display);
-    let figures = Figures::supported(time.0, Some(range));
     let value = unit.from_seconds(time.0);
     let (low, high) = (unit.from_seconds(range.0), unit.from_seconds(range.1));
+    let figures = Figures::supported(value, Some((low, high)));
     let number = with_unit(&figures.number(value, display.decimal), unit);
     if low > 0.0 && high / low < 50.0 && low >= 0.1 {
         let (low, high) = figures.limits(value, low, high, display.decimal);
@@ -92,6 +95,16 @@ mod tests {
         assert_eq!(say(6.54 * YEAR), "6.5\u{a0}years");
         let hours = Display { time: Some(TimeUnit::Hour), ..display };
         assert_eq!(duration(Seconds(86_400.0), Figures::exactly(2), &hours), "24\u{a0}h");
+    }
+
+    #[test]
+    fn bounds_stand_beside_their_best_guess() {
+        let hours = |h: f64| Seconds(3600.0 * h);
+        let display = Display::default();
+        let least = duration_bound(hours(2.718), hours(3.06), Rounding::Down, &display);
+        assert_eq!((&least.0[..], &least.1[..]), ("2.7\u{a0}h", "3.1\u{a0}h"));
+        let most = duration_bound(hours(36.12), hours(34.3), Rounding::Up, &display);
+        assert_eq!((&most.0[..], &most.1[..]), ("36.2\u{a0}h", "34.3\u{a0}h"));
     }
 
     #[test]
