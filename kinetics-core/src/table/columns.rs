@@ -1,11 +1,12 @@
 //! Gives every column its unit and its multiplier, and ties errors to what they
 //! are errors of.
 
+use super::errors;
 use super::header::{Reading, read};
 use super::layout::Layout;
 use super::roles::{self, Roles};
 use super::values::{TimeShape, Values};
-use super::{Choice, Column, ColumnHint, Decimal, ErrorKind, Form, Hints, Origin, Role};
+use super::{Choice, Column, ColumnHint, Decimal, Form, Hints, Origin, Role};
 use crate::problem::{Position, Problem};
 use crate::units::RateUnit;
 
@@ -18,7 +19,12 @@ pub(super) struct Columns {
 }
 
 /// Decides roles, units and multipliers of all columns.
-pub(super) fn decide(layout: &Layout, hints: &Hints, values: &[Values], decimals: &[Decimal]) -> Columns {
+pub(super) fn decide(
+    layout: &Layout,
+    hints: &Hints,
+    values: &[Values],
+    decimals: &[Decimal],
+) -> Columns {
     let empty = String::new();
     let readings: Vec<Reading> = (0..layout.columns)
         .map(|column| {
@@ -27,12 +33,23 @@ pub(super) fn decide(layout: &Layout, hints: &Hints, values: &[Values], decimals
         })
         .collect();
     let roles = roles::decide(&layout.headers, &readings, values, hints);
-    let mut deciding = Deciding { layout, hints, values, readings: &readings, problems: Vec::new(), choices: Vec::new() };
-    let mut columns: Vec<Column> = (0..layout.columns).map(|column| deciding.column(column, &roles, decimals)).collect();
+    let mut deciding = Deciding {
+        layout,
+        hints,
+        values,
+        readings: &readings,
+        problems: Vec::new(),
+        choices: Vec::new(),
+    };
+    let mut columns: Vec<Column> =
+        (0..layout.columns).map(|column| deciding.column(column, &roles, decimals)).collect();
     share_rate_unit(&mut columns);
     for at in 0..columns.len() {
-        if columns[at].role == Role::Sd {
-            deciding.tie_error(at, &mut columns, roles.form);
+        if columns[at].role == Role::Sd
+            && let Some(sentence) =
+                errors::tie(at, &mut columns, roles.form, &readings, values, hints)
+        {
+            deciding.say(at, &columns[at], &sentence);
         }
     }
     for (at, column) in columns.iter().enumerate() {
@@ -54,9 +71,14 @@ struct Deciding<'a> {
 
 impl Deciding<'_> {
     fn column(&mut self, at: usize, roles: &Roles<'_>, decimals: &[Decimal]) -> Column {
-        let (role, role_from) = roles.roles.get(at).copied().flatten().unwrap_or((Role::Ignore, Origin::Assumed));
+        let (role, role_from) =
+            roles.roles.get(at).copied().flatten().unwrap_or((Role::Ignore, Origin::Assumed));
         let header = self.layout.headers.get(at).map_or("", |header| header.trim()).to_string();
-        let name = if header.is_empty() { role.words().to_string() } else { header.split_whitespace().collect::<Vec<_>>().join(" ") };
+        let name = if header.is_empty() {
+            role.words().to_string()
+        } else {
+            header.split_whitespace().collect::<Vec<_>>().join(" ")
+        };
         let mut column = Column {
             role,
             unit: None,
@@ -78,7 +100,8 @@ impl Deciding<'_> {
         if let Some(reading) = self.readings.get(at) {
             column.error_is = reading.error_is.filter(|_| role == Role::Sd);
             column.signal_is = reading.signal_is.filter(|_| role == Role::Signal);
-            if reading.base_unsaid && role == Role::Log10RateConstant && role_from == Origin::Header {
+            if reading.base_unsaid && role == Role::Log10RateConstant && role_from == Origin::Header
+            {
                 self.say(at, &column, "“log” is taken to base 10.");
             }
         }
@@ -90,14 +113,27 @@ impl Deciding<'_> {
     }
 
     fn say(&mut self, at: usize, column: &Column, what: &str) {
-        let header = if column.header.is_empty() { String::new() } else { format!(" ({})", crate::problem::shortened(&column.header)) };
-        self.choices.push(Choice { sentence: format!("Column {}{header}: {what}", at + 1), column: Some(at + 1) });
+        let header = if column.header.is_empty() {
+            String::new()
+        } else {
+            format!(" ({})", crate::problem::shortened(&column.header))
+        };
+        self.choices.push(Choice {
+            sentence: format!("Column {}{header}: {what}", at + 1),
+            column: Some(at + 1),
+        });
+    }
+
+    fn symbol(&self, column: &Column) -> String {
+        column.unit.as_deref().map_or(String::new(), |code| column.role.unit_symbol(code))
     }
 
     /// Stated, else from the header, else from the cells, else by default.
     fn unit(&mut self, at: usize, column: &mut Column) {
         let role = column.role;
-        if let Some(stated) = self.hint(at).and_then(|hint| hint.unit.clone()).filter(|unit| !unit.trim().is_empty()) {
+        if let Some(stated) =
+            self.hint(at).and_then(|hint| hint.unit.clone()).filter(|unit| !unit.trim().is_empty())
+        {
             match role.unit_code(&stated) {
                 Ok(code) => {
                     (column.unit, column.unit_from) = (code, Origin::Stated);
@@ -105,7 +141,12 @@ impl Deciding<'_> {
                 }
                 Err(error) => {
                     let message = format!("the unit stated for it is not used: {error}.");
-                    self.problems.push(Problem::said(&Position::column(at + 1, &column.header), &stated, "a unit that suits the column", &message));
+                    self.problems.push(Problem::said(
+                        &Position::column(at + 1, &column.header),
+                        &stated,
+                        "a unit that suits the column",
+                        &message,
+                    ));
                 }
             }
         }
@@ -115,7 +156,16 @@ impl Deciding<'_> {
             return;
         }
         let Some(values) = self.values.get(at) else { return };
-        if let Some(code) = values.usual_unit().and_then(|unit| role.unit_code(unit).ok()).flatten() {
+        if let Some(code) =
+            values.units.iter().find_map(|(unit, _)| role.unit_code(unit).ok().flatten())
+        {
+            if values.usual_unit().is_none() {
+                let symbol = role.unit_symbol(&code);
+                let sentence = format!(
+                    "its cells name their units; all are counted in {symbol}, those without a unit too."
+                );
+                self.say(at, column, &sentence);
+            }
             (column.unit, column.unit_from) = (Some(code), Origin::Values);
             return;
         }
@@ -124,9 +174,17 @@ impl Deciding<'_> {
                 let (low, high) = values.range().unwrap_or((0.0, 0.0));
                 let kelvin = low >= 250.0;
                 column.unit = Some(if kelvin { "K" } else { "°C" }.to_string());
-                let why = if low == high { format!("by its value {low}") } else { format!("because its values lie between {low} and {high}") };
+                let why = if low == high {
+                    format!("by its value {low}")
+                } else {
+                    format!("because its values lie between {low} and {high}")
+                };
                 let (taken, other) = if kelvin { ("K", "°C") } else { ("°C", "K") };
-                self.say(at, column, &format!("no unit is given; it is taken as {taken}, not {other}, {why}."));
+                self.say(
+                    at,
+                    column,
+                    &format!("no unit is given; it is taken as {taken}, not {other}, {why}."),
+                );
             }
             Role::InverseTemperature => column.unit = Some("1/K".to_string()),
             Role::Time if values.time_shape != TimeShape::Numbers => {
@@ -137,7 +195,11 @@ impl Deciding<'_> {
     }
 
     fn multiplier(&mut self, at: usize, column: &mut Column) {
-        if let Some(multiplier) = self.hint(at).and_then(|hint| hint.multiplier).filter(|multiplier| multiplier.is_finite() && *multiplier > 0.0) {
+        if let Some(multiplier) = self
+            .hint(at)
+            .and_then(|hint| hint.multiplier)
+            .filter(|multiplier| multiplier.is_finite() && *multiplier > 0.0)
+        {
             column.multiplier = multiplier;
             return;
         }
@@ -147,101 +209,54 @@ impl Deciding<'_> {
             return;
         }
         column.multiplier = reading.multiplier;
-        if column.role == Role::InverseTemperature {
-            self.plausible_inverse(at, column);
+        if column.role == Role::InverseTemperature && self.plausible_inverse(at, column) {
+            return;
         }
         if column.multiplier == 1.0 || column.role == Role::Sd {
             return;
         }
-        let unit = column.unit.clone().map_or(String::new(), |unit| format!(" {unit}"));
+        let unit =
+            column.unit.as_ref().map_or(String::new(), |_| format!(" {}", self.symbol(column)));
         let first = self.values.get(at).and_then(Values::first);
         let taken = first.map_or(String::new(), |first| {
             format!(", so that {first} is read as {}{unit}", shown(first * column.multiplier))
         });
-        let mut sentence = format!("its numbers are multiplied by {}{taken}.", shown(column.multiplier));
+        let mut sentence =
+            format!("its numbers are multiplied by {}{taken}.", shown(column.multiplier));
         if reading.doubtful {
-            let other = first.map_or(String::new(), |first| format!(", {first} would be {}{unit}", shown(first / column.multiplier)));
-            sentence.push_str(&format!(" The header can also be meant the other way round: multiplied by {}{other}.", shown(1.0 / column.multiplier)));
+            let other = first.map_or(String::new(), |first| {
+                format!(", {first} would be {}{unit}", shown(first / column.multiplier))
+            });
+            sentence.push_str(&format!(
+                " The header can also be meant the other way round: multiplied by {}{other}.",
+                shown(1.0 / column.multiplier)
+            ));
         }
         self.say(at, column, &sentence);
     }
 
     /// 1/T lies between 0.0005 and 0.02 1/K; a header that says otherwise is taken by what it must mean.
-    fn plausible_inverse(&mut self, at: usize, column: &mut Column) {
-        let Some((low, high)) = self.values.get(at).and_then(Values::range) else { return };
+    fn plausible_inverse(&mut self, at: usize, column: &mut Column) -> bool {
+        let Some((low, high)) = self.values.get(at).and_then(Values::range) else { return false };
         let fits = |multiplier: f64| low * multiplier > 0.0005 && high * multiplier < 0.02;
-        if fits(column.multiplier) {
-            return;
-        }
-        if let Some(multiplier) = [1.0, 1e-3, 1e-4].into_iter().find(|multiplier| fits(*multiplier)) {
-            column.multiplier = multiplier;
-            let sentence = format!("only multiplied by {multiplier} are its numbers inverse temperatures in 1/K, and so they are read.");
-            self.say(at, column, &sentence);
-        }
-    }
-
-    /// An error belongs to the nearest value on its left, and counts in its unit
-    /// unless it says otherwise.
-    fn tie_error(&mut self, at: usize, columns: &mut [Column], form: Option<Form>) {
-        let wanted = |role: Role| match form {
-            Some(Form::Rates) => role.is_rate(),
-            Some(Form::Progress) => role == Role::Signal,
-            Some(Form::Times) => role == Role::Time,
-            Some(Form::HeatRates) => role == Role::HeatRate,
-            Some(Form::Peaks) => role == Role::Temperature,
-            _ => role.is_value(),
-        };
-        let left = (0..at).rev().find(|other| columns.get(*other).is_some_and(|column| wanted(column.role)));
-        let right = || (at + 1..columns.len()).find(|other| columns.get(*other).is_some_and(|column| wanted(column.role)));
-        let Some((of, value)) = left.or_else(right).and_then(|of| Some((of, columns.get(of)?.clone()))) else { return };
-        let Some(reading) = self.readings.get(at) else { return };
-        let stated = self.hint(at).and_then(|hint| hint.unit.clone());
-        let stated_multiplier = self.hint(at).and_then(|hint| hint.multiplier);
-        let Some(error) = columns.get_mut(at) else { return };
-        error.error_of = Some(of);
-        let value_in_percent = matches!(value.unit.as_deref(), Some("%" | "fraction"));
-        let by_cells = self.values.get(at).and_then(Values::usual_unit) == Some("%") && !value_in_percent;
-        let unit = stated.as_deref().or(reading.unit.as_deref());
-        let relative = match unit {
-            Some(unit) => unit.trim() == "%" && (!value_in_percent || stated.is_some() || reading.error_is == Some(ErrorKind::Sd) && names_relative(&error.header)),
-            None => reading.relative || by_cells,
-        };
-        if relative {
-            error.unit = Some("%".to_string());
-            error.multiplier = stated_multiplier.unwrap_or(1.0);
-            return;
-        }
-        // A per cent as unit of an error always means "of the value", so an absolute one has none.
-        error.unit = value.unit.clone().filter(|unit| unit != "%");
-        if stated.is_none() {
-            error.unit_from = if reading.unit.is_some() { Origin::Header } else { value.unit_from };
-        }
-        let own = match (unit, value.unit.as_deref()) {
-            (Some(own), Some(of)) if !matches!(value.role, Role::LnRateConstant | Role::Log10RateConstant) => {
-                super::convert::factor(value.role, own, of).map(|factor| factor * reading.multiplier)
-            }
-            _ => None,
-        };
-        let no_multiplier = matches!(value.role, Role::LnRateConstant | Role::Log10RateConstant | Role::InverseTemperature | Role::Temperature);
-        let factor_in_header = (reading.multiplier != 1.0).then_some(reading.multiplier);
-        error.multiplier = stated_multiplier
-            .or(own)
-            .or(factor_in_header)
-            .unwrap_or(if no_multiplier { 1.0 } else { value.multiplier });
-        if own.is_none() && unit.is_some_and(|unit| Some(unit) != value.unit.as_deref() && unit != "%") {
-            let sentence = format!("its unit does not suit that of column {}, of which it is the error; its numbers are taken in the unit of that column.", of + 1);
-            let column = columns[at].clone();
-            self.say(at, &column, &sentence);
-        } else if columns[at].multiplier != 1.0 && stated_multiplier.is_none() {
-            let column = columns[at].clone();
-            self.say(at, &column, &format!("its numbers are multiplied by {}, as those of column {}.", shown(column.multiplier), of + 1));
-        }
+        let possible = [1.0, 1e-3, 1e-4].into_iter().find(|multiplier| fits(*multiplier));
+        let Some(multiplier) = possible.filter(|_| !fits(column.multiplier)) else { return false };
+        column.multiplier = multiplier;
+        let sentence = format!(
+            "its numbers are multiplied by {multiplier}, since by the letter of the header they would be no inverse \
+             temperatures; {low} is read as {} K⁻¹.",
+            shown(low * multiplier)
+        );
+        self.say(at, column, &sentence);
+        true
     }
 
     /// Says which columns lack a unit, and what stood in its place.
     fn lacking_unit(&mut self, at: usize, column: &Column) {
         let example = match column.role {
-            Role::RateConstant | Role::LnRateConstant | Role::Log10RateConstant => "a unit such as 1/h, 1/s or L/(mol s)",
+            Role::RateConstant | Role::LnRateConstant | Role::Log10RateConstant => {
+                "a unit such as 1/h, 1/s or L/(mol s)"
+            }
             Role::Time => "a unit such as s, min, h or d",
             Role::HeatRate => "a unit such as W/kg",
             Role::HeatingRate => "a unit such as K/min",
@@ -249,25 +264,42 @@ impl Deciding<'_> {
             _ => return,
         };
         let found = self.readings.get(at).and_then(|reading| reading.no_unit.clone());
-        let instead = found.as_ref().map_or("no unit is given".to_string(), |found| format!("“{}” is no unit known here for a {}", crate::problem::shortened(found), column.role.words()));
-        if column.unit.is_some() && !(column.role == Role::Temperature && column.unit_from == Origin::Assumed && found.is_some()) {
+        let instead = found.as_ref().map_or("no unit is given".to_string(), |found| {
+            format!(
+                "“{}” is no unit known here for a {}",
+                crate::problem::shortened(found),
+                column.role.words()
+            )
+        });
+        if column.unit.is_some()
+            && !(column.role == Role::Temperature
+                && column.unit_from == Origin::Assumed
+                && found.is_some())
+        {
             return;
         }
-        let message = format!("{instead}, expected {example}; choose it in the head of the column.");
-        self.problems.push(Problem::said(&Position::column(at + 1, &column.header), found.as_deref().unwrap_or(""), example, &message));
+        let message =
+            format!("{instead}, expected {example}; choose it in the head of the column.");
+        self.problems.push(Problem::said(
+            &Position::column(at + 1, &column.header),
+            found.as_deref().unwrap_or(""),
+            example,
+            &message,
+        ));
     }
-}
-
-fn names_relative(header: &str) -> bool {
-    let lower = header.to_lowercase();
-    ["rsd", "cv", "rel"].iter().any(|word| lower.contains(word))
 }
 
 /// Replicates without a unit of their own have that of the first.
 fn share_rate_unit(columns: &mut [Column]) {
-    let first = columns.iter().find(|column| column.role == Role::RateConstant && column.unit.is_some()).cloned();
+    let first = columns
+        .iter()
+        .find(|column| column.role == Role::RateConstant && column.unit.is_some())
+        .cloned();
     let Some(first) = first else { return };
-    for column in columns.iter_mut().filter(|column| column.role == Role::RateConstant && column.unit.is_none()) {
+    for column in columns
+        .iter_mut()
+        .filter(|column| column.role == Role::RateConstant && column.unit.is_none())
+    {
         column.unit.clone_from(&first.unit);
         column.unit_from = Origin::Assumed;
         if column.multiplier == 1.0 && column.header.is_empty() {
@@ -280,7 +312,11 @@ fn share_rate_unit(columns: &mut [Column]) {
 pub(super) fn shown(value: f64) -> String {
     let rounded: f64 = format!("{value:.11e}").parse().unwrap_or(value);
     let size = rounded.abs();
-    if size != 0.0 && !(1e-4..1e7).contains(&size) { format!("{rounded:e}") } else { rounded.to_string() }
+    if size != 0.0 && !(1e-4..1e7).contains(&size) {
+        format!("{rounded:e}")
+    } else {
+        rounded.to_string()
+    }
 }
 
 /// The unit of a column of rate constants, in its typed form.

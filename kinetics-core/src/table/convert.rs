@@ -43,15 +43,25 @@ pub(super) struct Converter {
 }
 
 impl Converter {
-    pub fn new(columns: &[Column], shapes: &[TimeShape], form: Option<Form>, strict: bool) -> Converter {
-        let values = columns.iter().filter(|column| column.role.is_value() && column.error_of.is_none()).count();
-        let several = form == Some(Form::Progress) && columns.iter().filter(|column| column.role == Role::Signal).count() > 1
+    pub fn new(
+        columns: &[Column],
+        shapes: &[TimeShape],
+        form: Option<Form>,
+        strict: bool,
+    ) -> Converter {
+        let values = columns
+            .iter()
+            .filter(|column| column.role.is_value() && column.error_of.is_none())
+            .count();
+        let several = form == Some(Form::Progress)
+            && columns.iter().filter(|column| column.role == Role::Signal).count() > 1
             || columns.iter().filter(|column| column.role.is_rate()).count() > 1;
         let plans = columns
             .iter()
             .enumerate()
             .map(|(at, column)| {
-                let value = matches!(column.role, Role::Signal | Role::HeatRate) || column.role.is_rate();
+                let value =
+                    matches!(column.role, Role::Signal | Role::HeatRate) || column.role.is_rate();
                 Plan {
                     role: column.role,
                     decimal: column.decimal,
@@ -60,8 +70,10 @@ impl Converter {
                     name: column.header.clone(),
                     error_of: column.error_of,
                     time_shape: shapes.get(at).copied().unwrap_or_default(),
-                    fills_down: matches!(column.role, Role::Temperature | Role::Run | Role::Group) && values > 0,
-                    required: column.role.is_numeric() && column.role != Role::Sd && !(value && several),
+                    fills_down: matches!(column.role, Role::Temperature | Role::Run) && values > 0,
+                    required: column.role.is_numeric()
+                        && column.role != Role::Sd
+                        && !(value && several),
                     consequence: match column.role {
                         Role::Sd => "the row counts as one without an error",
                         _ if value && several => "the value is left out",
@@ -109,12 +121,15 @@ impl Converter {
 
     /// Empty cells: the value above, or a gap that is counted.
     fn settle(&mut self, content: Content, column: usize, row: &Row) -> Content {
-        let (Some(plan), Some(above), Some(tally)) = (self.plans.get(column), self.above.get_mut(column), self.tallies.get_mut(column)) else {
+        let (Some(plan), Some(above), Some(tally)) =
+            (self.plans.get(column), self.above.get_mut(column), self.tallies.get_mut(column))
+        else {
             return content;
         };
         if content != Content::Empty {
             if plan.fills_down {
-                *above = Some(content.clone()).filter(|content| !matches!(content, Content::Bad | Content::Marked { .. }));
+                *above = Some(content.clone())
+                    .filter(|content| !matches!(content, Content::Bad | Content::Marked { .. }));
             }
             return content;
         }
@@ -146,7 +161,10 @@ impl Converter {
             TimeShape::Numbers => {}
         }
         let mut reading = read_cell(cell, plan.decimal);
-        if reading == Reading::Text && !self.strict && evidence(cell) == Evidence::Certain(plan.decimal.other()) {
+        if reading == Reading::Text
+            && !self.strict
+            && evidence(cell) == Evidence::Certain(plan.decimal.other())
+        {
             reading = read_cell(cell, plan.decimal.other());
             if reading != Reading::Text
                 && let Some(tally) = self.tallies.get_mut(column)
@@ -181,7 +199,10 @@ impl Converter {
 
     /// Applies the multiplier, or the cell's own unit where it has one.
     fn scaled(&mut self, number: &Number, cell: &str, column: usize, row: &Row) -> Content {
-        let in_percent = self.plans.get(column).is_some_and(|plan| matches!(plan.unit.as_deref(), Some("%" | "fraction")));
+        let in_percent = self
+            .plans
+            .get(column)
+            .is_some_and(|plan| matches!(plan.unit.as_deref(), Some("%" | "fraction")));
         let (mut value, mut error) = (number.value, number.error);
         let own_unit = number.unit.as_deref().filter(|_| !number.error_percent || in_percent);
         if number.error_percent && !in_percent {
@@ -208,7 +229,8 @@ impl Converter {
             self.tally(column, |tally| tally.marked.count(row.line, cell));
             return Content::Marked { value, error };
         }
-        Content::Number { value, error }
+        // Adding zero turns −0 into 0.
+        Content::Number { value: value + 0.0, error }
     }
 
     /// Scale and shift from a cell's own unit into the column's.
@@ -228,11 +250,13 @@ impl Converter {
             (Role::Temperature, Some(unit)) => between_scales(own, unit),
             (Role::Sd, Some("%")) if own == "%" => Some((1.0, 0.0)),
             (Role::Sd, None) if own == "%" => Some((1.0, 0.0)),
-            (Role::Sd, Some(unit)) => [Role::RateConstant, Role::Signal, Role::Time, Role::HeatRate]
-                .into_iter()
-                .find_map(|role| factor(role, own, unit))
-                .or_else(|| between_scales(own, unit).map(|(scale, _)| scale))
-                .map(|scale| (scale, 0.0)),
+            (Role::Sd, Some(unit)) => {
+                [Role::RateConstant, Role::Signal, Role::Time, Role::HeatRate]
+                    .into_iter()
+                    .find_map(|role| factor(role, own, unit))
+                    .or_else(|| between_scales(own, unit).map(|(scale, _)| scale))
+                    .map(|scale| (scale, 0.0))
+            }
             (role, Some(unit)) => factor(role, own, unit).map(|scale| (scale, 0.0)),
             (_, None) => None,
         };
@@ -246,7 +270,11 @@ impl Converter {
             && let Some(plan) = self.plans.get(column)
         {
             let expected = match unit {
-                Some(_) => plan.unit.as_deref().map_or("a number without a unit".to_string(), |unit| format!("a number in {unit}")),
+                Some(_) => {
+                    plan.unit.as_deref().map_or("a number without a unit".to_string(), |unit| {
+                        format!("a number in {}", plan.role.unit_symbol(unit))
+                    })
+                }
                 None => expected(cell, plan),
             };
             let position = Position::cell(row.line, column + 1, &plan.name);
@@ -273,14 +301,22 @@ pub(super) fn factor(role: Role, from: &str, to: &str) -> Option<f64> {
             (from.base() == to.base()).then(|| from.to_base() / to.to_base())?
         }
         Role::Signal => {
-            let (from, to) = (ConcentrationUnit::parse(from).ok()?, ConcentrationUnit::parse(to).ok()?);
+            let (from, to) =
+                (ConcentrationUnit::parse(from).ok()?, ConcentrationUnit::parse(to).ok()?);
             (from.kind() == to.kind()).then(|| from.in_base() / to.in_base())?
         }
-        Role::HeatRate => HeatRateUnit::parse(from).ok()?.watts_per_kilogram() / HeatRateUnit::parse(to).ok()?.watts_per_kilogram(),
-        Role::HeatingRate => {
-            HeatingRateUnit::parse(from).ok()?.kelvins_per_second() / HeatingRateUnit::parse(to).ok()?.kelvins_per_second()
+        Role::HeatRate => {
+            HeatRateUnit::parse(from).ok()?.watts_per_kilogram()
+                / HeatRateUnit::parse(to).ok()?.watts_per_kilogram()
         }
-        Role::Temperature => TemperatureUnit::parse(from).ok()?.kelvins() / TemperatureUnit::parse(to).ok()?.kelvins(),
+        Role::HeatingRate => {
+            HeatingRateUnit::parse(from).ok()?.kelvins_per_second()
+                / HeatingRateUnit::parse(to).ok()?.kelvins_per_second()
+        }
+        Role::Temperature => {
+            TemperatureUnit::parse(from).ok()?.kelvins()
+                / TemperatureUnit::parse(to).ok()?.kelvins()
+        }
         _ => return None,
     })
 }
@@ -303,30 +339,48 @@ fn expected(cell: &str, plan: &Plan) -> String {
         return "a time stamp such as 2024-03-01 08:00".to_string();
     }
     let short = cell.chars().count() <= 60;
-    let zeros: String = if short { cell.replace(['O', 'o'], "0").replace(['l', 'I'], "1") } else { String::new() };
-    let hint = if cell.starts_with(['>', '≥']) {
-        "a value beyond a limit says too little"
-    } else if cell.starts_with('#') {
-        "this is an error of the spreadsheet"
-    } else if cell.starts_with('=') {
-        "this is a formula, not its result"
-    } else if short && zeros != cell && reads(&zeros) {
-        "a letter stands where a digit is meant"
-    } else if matches!(read_cell(cell, plan.decimal.other()), Reading::Number(_)) {
-        match plan.decimal {
-            Decimal::Point => "the comma is not read as a decimal mark here",
-            Decimal::Comma => "the point is not read as a decimal mark here",
-        }
-    } else if cell.contains('±') && cell.contains("10") {
-        "put value and error in brackets before the power of ten, as in (2.1 ± 0.1)e-3"
-    } else if cell.contains("×10") || cell.contains("x10") || cell.contains("× 10") || cell.contains("x 10") {
-        "write the power of ten as in 1.2e-3"
-    } else if cell.contains(':') && plan.role == Role::Time {
-        "or a duration as in 1:30"
-    } else if cell.chars().filter(char::is_ascii_digit).count() > 0 && cell.chars().filter(|c| matches!(c, '.' | ',')).count() > 1 {
-        "it has more than one decimal mark"
-    } else {
-        return number.to_string();
-    };
+    let zeros: String =
+        if short { cell.replace(['O', 'o'], "0").replace(['l', 'I'], "1") } else { String::new() };
+    let digits = |c: char| c.is_ascii_digit() || matches!(c, '.' | ',' | 'e' | 'E' | '-' | '+');
+    let hint =
+        if cell.to_lowercase().trim_matches(['-', '+', '∞']).trim_start_matches("inf").is_empty()
+        {
+            "infinity is none"
+        } else if cell.starts_with(['>', '≥']) {
+            "a value beyond a limit says too little"
+        } else if cell.starts_with('#') {
+            "this is an error of the spreadsheet"
+        } else if cell.starts_with('=') {
+            "this is a formula, not its result"
+        } else if short && zeros != cell && reads(&zeros) {
+            "a letter stands where a digit is meant"
+        } else if matches!(read_cell(cell, plan.decimal.other()), Reading::Number(_)) {
+            match plan.decimal {
+                Decimal::Point => "the comma is not read as a decimal mark here",
+                Decimal::Comma => "the point is not read as a decimal mark here",
+            }
+        } else if cell.contains(['e', 'E'])
+            && cell.chars().all(digits)
+            && cell.matches(['e', 'E']).count() == 1
+            && cell.ends_with(|c: char| c.is_ascii_digit())
+        {
+            "its size is beyond what can be computed with"
+        } else if cell.contains('±') && cell.contains("10") {
+            "put value and error in brackets before the power of ten, as in (2.1 ± 0.1)e-3"
+        } else if cell.contains("×10")
+            || cell.contains("x10")
+            || cell.contains("× 10")
+            || cell.contains("x 10")
+        {
+            "write the power of ten as in 1.2e-3"
+        } else if cell.contains(':') && plan.role == Role::Time {
+            "or a duration as in 1:30"
+        } else if cell.chars().filter(char::is_ascii_digit).count() > 0
+            && cell.chars().filter(|c| matches!(c, '.' | ',')).count() > 1
+        {
+            "it has more than one decimal mark"
+        } else {
+            return number.to_string();
+        };
     format!("{number} ({hint})")
 }

@@ -68,11 +68,15 @@ impl Layout {
         layout.first_line = sample.records.get(first).map_or(1, |record| record.line);
         layout.columns = sample.width(first);
         if layout.columns > MOST_FIELDS {
+            layout.refusal = Some(too_wide(&sample, first));
             return layout;
         }
         layout.find_header(&sample, first);
-        layout.numeric = (0..layout.columns).map(|column| sample.is_numeric(first, column)).collect();
-        layout.refusal = layout.comma_used_twice(&sample, first, hints).or_else(|| layout.lies_on_its_side(&sample, first));
+        layout.numeric =
+            (0..layout.columns).map(|column| sample.is_numeric(first, column)).collect();
+        layout.refusal = layout
+            .comma_used_twice(&sample, first, hints)
+            .or_else(|| layout.lies_on_its_side(&sample, first));
         layout
     }
 
@@ -95,6 +99,19 @@ impl Layout {
         Kind::Note
     }
 
+    /// Whether a line between rows is the header of another table.
+    pub fn is_other_header(&self, text: &str, record: &Record) -> bool {
+        let cells: Vec<String> =
+            (0..record.fields.len()).map(|column| record.field(text, column).to_string()).collect();
+        let same = cells
+            .iter()
+            .zip(&self.headers)
+            .all(|(cell, header)| cell.split_whitespace().eq(header.split_whitespace()));
+        let roles = cells.iter().filter(|cell| header::read(cell, "").role.is_some()).count();
+        let with_unit = cells.iter().any(|cell| header::read(cell, "").unit.is_some());
+        !same && roles > 1 && (with_unit || roles == self.columns)
+    }
+
     fn find_header(&mut self, sample: &Sample<'_>, first: usize) {
         self.headers = vec![String::new(); self.columns];
         self.units = vec![String::new(); self.columns];
@@ -104,7 +121,10 @@ impl Layout {
             && let Some(cells) = self.header_cells(sample.text, last)
         {
             rest = others;
-            let upper = others.last().and_then(|record| Some((record, self.header_cells(sample.text, record)?)));
+            let upper = others
+                .last()
+                .filter(|record| record.line + record.lines == last.line)
+                .and_then(|record| Some((record, self.header_cells(sample.text, record)?)));
             let only_units = cells.iter().all(|cell| cell.is_empty() || header::is_unit_cell(cell));
             match upper {
                 Some((record, upper)) if only_units => {
@@ -114,13 +134,9 @@ impl Layout {
                     self.headers = upper;
                     rest = others.get(..others.len() - 1).unwrap_or_default();
                 }
-                Some((record, upper)) if upper.iter().filter(|cell| !cell.is_empty()).count() > 1 => {
+                Some((record, upper)) if sense(&joined(&upper, &cells)) > sense(&cells) => {
                     self.header_lines = vec![record.line, last.line];
-                    self.headers = upper
-                        .iter()
-                        .zip(&cells)
-                        .map(|(above, below)| format!("{above} {below}").trim().to_string())
-                        .collect();
+                    self.headers = joined(&upper, &cells);
                     rest = others.get(..others.len() - 1).unwrap_or_default();
                 }
                 _ => {
@@ -130,7 +146,8 @@ impl Layout {
             }
         }
         for record in rest {
-            self.notes.push((record.line, shortened(sample.text.get(record.span.clone()).unwrap_or(""))));
+            self.notes
+                .push((record.line, shortened(sample.text.get(record.span.clone()).unwrap_or(""))));
         }
     }
 
@@ -143,7 +160,9 @@ impl Layout {
             let line = text.get(record.span.clone()).unwrap_or("").trim();
             header::cut_line(line.strip_prefix('#').unwrap_or(line), self.columns)?
         } else {
-            (0..self.columns).map(|column| record.field(text, column).replace("\"\"", "\"")).collect()
+            (0..self.columns)
+                .map(|column| record.field(text, column).replace("\"\"", "\""))
+                .collect()
         };
         if let Some(first) = cells.first_mut()
             && let Some(rest) = first.strip_prefix('#')
@@ -154,26 +173,38 @@ impl Layout {
         let filled = cells.iter().filter(|cell| !cell.is_empty()).count();
         let alone = self.columns > 1 && filled == 1;
         // A single field above several columns is a title, unless it reads as a header.
-        let fits = filled > 1 || !alone || cells.iter().any(|cell| header::read(cell, "").unit.is_some());
+        let fits =
+            filled > 1 || !alone || cells.iter().any(|cell| header::read(cell, "").unit.is_some());
         // A title may be long; a header is not a sentence.
         let short = cells.iter().all(|cell| cell.chars().count() <= 120);
         (filled > 0 && fits && short).then_some(cells)
     }
 
     /// `50,0,0021`: commas between the columns and commas inside the numbers.
-    fn comma_used_twice(&self, sample: &Sample<'_>, first: usize, hints: &Hints) -> Option<Problem> {
+    fn comma_used_twice(
+        &self,
+        sample: &Sample<'_>,
+        first: usize,
+        hints: &Hints,
+    ) -> Option<Problem> {
         if self.separator != Separator::Comma || hints.decimal == Some(Decimal::Point) {
             return None;
         }
         let rows: Vec<&Record> = sample.rows(first).collect();
         let quoted_or_point = |record: &&Record| {
-            (0..record.fields.len()).any(|column| record.field(sample.text, column).contains(['.', ',']))
+            (0..record.fields.len())
+                .any(|column| record.field(sample.text, column).contains(['.', ',']))
         };
         let after_integer_part = |record: &&&Record| {
             (1..record.fields.len()).any(|column| {
-                let (before, field) = (record.field(sample.text, column - 1), record.field(sample.text, column));
-                let digits = |text: &str| !text.is_empty() && text.bytes().all(|byte| byte.is_ascii_digit());
-                digits(before.trim_start_matches(['-', '−'])) && digits(field) && field.len() > 1 && field.starts_with('0')
+                let (before, field) =
+                    (record.field(sample.text, column - 1), record.field(sample.text, column));
+                let digits =
+                    |text: &str| !text.is_empty() && text.bytes().all(|byte| byte.is_ascii_digit());
+                digits(before.trim_start_matches(['-', '−']))
+                    && digits(field)
+                    && field.len() > 1
+                    && field.starts_with('0')
             })
         };
         let named = self.headers.iter().filter(|header| !header.is_empty()).count();
@@ -181,7 +212,8 @@ impl Layout {
         let wider = rows.iter().filter(|record| named > 0 && record.filled() > named).count();
         let without_points = !rows.iter().any(|record| quoted_or_point(&record));
         let twice = without_points && (suspicious * 2 >= rows.len() || wider * 2 > rows.len());
-        let row = rows.iter().find(|record| after_integer_part(&record)).or_else(|| rows.first())?;
+        let row =
+            rows.iter().find(|record| after_integer_part(&record)).or_else(|| rows.first())?;
         twice.then(|| {
             let line = sample.text.get(row.span.clone()).unwrap_or("");
             Problem::said(
@@ -199,11 +231,15 @@ impl Layout {
 
     /// Headers down the first column instead of along the first line.
     fn lies_on_its_side(&self, sample: &Sample<'_>, first: usize) -> Option<Problem> {
-        if !self.header_lines.is_empty() || self.columns < 3 || self.numeric.first() == Some(&true) {
+        if !self.header_lines.is_empty() || self.columns < 3 || self.numeric.first() == Some(&true)
+        {
             return None;
         }
         let rows: Vec<&Record> = sample.rows(first).collect();
-        let roles = rows.iter().filter(|record| header::read(record.field(sample.text, 0), "").role.is_some()).count();
+        let roles = rows
+            .iter()
+            .filter(|record| header::read(record.field(sample.text, 0), "").role.is_some())
+            .count();
         (rows.len() <= 6 && roles >= 2).then(|| {
             let row = rows.first().map_or(1, |record| record.line);
             let found = rows.first().map_or("", |record| record.field(sample.text, 0));
@@ -216,6 +252,28 @@ impl Layout {
             )
         })
     }
+}
+
+/// Two lines of headers as one.
+fn joined(upper: &[String], lower: &[String]) -> Vec<String> {
+    upper
+        .iter()
+        .zip(lower)
+        .map(|(above, below)| format!("{above} {below}").trim().to_string())
+        .collect()
+}
+
+/// How much headers say.
+fn sense(headers: &[String]) -> usize {
+    headers
+        .iter()
+        .map(|cell| header::read(cell, ""))
+        .map(|reading| {
+            usize::from(reading.role.is_some())
+                + usize::from(reading.unit.is_some())
+                + usize::from(reading.run_temperature.is_some())
+        })
+        .sum()
 }
 
 /// Texts that are no text.
@@ -234,9 +292,29 @@ fn unreadable(text: &str) -> Option<Problem> {
     ))
 }
 
+fn too_wide(sample: &Sample<'_>, first: usize) -> Problem {
+    let (line, start) = sample
+        .records
+        .get(first)
+        .map_or((1, ""), |record| (record.line, record.field(sample.text, 0)));
+    Problem::said(
+        &Position::row(line),
+        start,
+        &format!("at most {MOST_FIELDS} columns"),
+        &format!(
+            "the table has more than {MOST_FIELDS} columns, so that nothing was read; paste those that are needed."
+        ),
+    )
+}
+
 /// Begins as a number does, even if it is none.
 fn attempts_number(field: &str) -> bool {
-    let mut characters = field.chars().skip_while(|character| matches!(character, '-' | '+' | '−' | '–' | '<' | '≤' | '>' | '≥' | '±' | '.' | ',' | ' ' | '('));
+    let mut characters = field.chars().skip_while(|character| {
+        matches!(
+            character,
+            '-' | '+' | '−' | '–' | '<' | '≤' | '>' | '≥' | '±' | '.' | ',' | ' ' | '('
+        )
+    });
     characters.next().is_some_and(|first| first.is_ascii_digit())
 }
 
@@ -278,13 +356,20 @@ impl<'text> Sample<'text> {
         for record in records.iter().filter(|record: &&Record| record.filled() > 1) {
             counts[record.filled().min(63)] += 1;
         }
-        let usual = counts.iter().enumerate().max_by_key(|(_, count)| **count).map_or(0, |(width, _)| width);
+        let usual = counts
+            .iter()
+            .enumerate()
+            .max_by_key(|(_, count)| **count)
+            .map_or(0, |(width, _)| width);
         Sample { text, separator, records, numeric, usual }
     }
 
     /// Enough of its fields are numbers.
     fn looks_like_row(&self, index: usize) -> bool {
-        let (Some(record), Some(numeric)) = (self.records.get(index), self.numeric.get(index)) else { return false };
+        let (Some(record), Some(numeric)) = (self.records.get(index), self.numeric.get(index))
+        else {
+            return false;
+        };
         let numbers = numeric.iter().filter(|number| **number).count();
         let filled = record.filled();
         numbers > 0 && (numbers * 2 >= filled || (filled == self.usual && numbers > 1))
@@ -292,53 +377,87 @@ impl<'text> Sample<'text> {
 
     /// Index of the first record that belongs to the rows.
     fn first_row(&self) -> Option<usize> {
-        (0..self.records.len()).find(|index| self.looks_like_row(*index) && !self.is_header_of_the_rest(*index))
+        (0..self.records.len())
+            .find(|index| self.looks_like_row(*index) && !self.is_header_of_the_rest(*index))
     }
 
     /// A line with numbers in it that is a header all the same: `t/h 50 60 70`.
     fn is_header_of_the_rest(&self, index: usize) -> bool {
         let later = || (index + 1..self.records.len()).filter(|other| self.looks_like_row(*other));
         let rest = later().count();
-        let (Some(record), Some(numeric)) = (self.records.get(index), self.numeric.get(index)) else { return false };
+        let (Some(record), Some(numeric)) = (self.records.get(index), self.numeric.get(index))
+        else {
+            return false;
+        };
         (0..record.fields.len()).any(|column| {
             let field = record.field(self.text, column);
-            let filled_below = later().filter(|other| self.records.get(*other).is_some_and(|below| !below.field(self.text, column).is_empty()));
+            let filled_below = later().filter(|other| {
+                self.records
+                    .get(*other)
+                    .is_some_and(|below| !below.field(self.text, column).is_empty())
+            });
             let filled_below = filled_below.count();
-            let numeric_below = later().filter(|other| self.numeric.get(*other).and_then(|row| row.get(column)) == Some(&true)).count();
+            let numeric_below = later()
+                .filter(|other| {
+                    self.numeric.get(*other).and_then(|row| row.get(column)) == Some(&true)
+                })
+                .count();
             let text_above_numbers = !field.is_empty()
                 && numeric.get(column) == Some(&false)
                 && !attempts_number(field)
                 && filled_below > 0
                 && numeric_below * 10 >= filled_below * 6;
-            let empty_corner = index == 0 && column == 0 && field.is_empty() && record.filled() > 1 && rest > 1 && filled_below == rest;
+            let empty_corner = index == 0
+                && column == 0
+                && field.is_empty()
+                && record.filled() > 1
+                && rest > 1
+                && filled_below == rest;
             text_above_numbers || empty_corner
         })
     }
 
     fn rows(&self, first: usize) -> impl Iterator<Item = &Record> {
-        (first..self.records.len()).filter(|index| self.looks_like_row(*index)).filter_map(|index| self.records.get(index))
+        (first..self.records.len())
+            .filter(|index| self.looks_like_row(*index))
+            .filter_map(|index| self.records.get(index))
     }
 
     fn width(&self, first: usize) -> usize {
-        let last_filled = |record: &Record| record.fields.iter().rposition(|span| !span.is_empty()).map_or(0, |last| last + 1);
+        let last_filled = |record: &Record| {
+            record.fields.iter().rposition(|span| !span.is_empty()).map_or(0, |last| last + 1)
+        };
         if self.separator.is_spaces() {
             let mut counts = vec![0_usize; MOST_FIELDS + 1];
             for record in self.rows(first) {
                 counts[record.fields.len().min(MOST_FIELDS)] += 1;
             }
-            return counts.iter().enumerate().max_by_key(|(_, count)| **count).map_or(0, |(width, _)| width);
+            return counts
+                .iter()
+                .enumerate()
+                .max_by_key(|(_, count)| **count)
+                .map_or(0, |(width, _)| width);
         }
-        let header = first.checked_sub(1).and_then(|above| self.records.get(above)).map_or(0, last_filled);
+        let header =
+            first.checked_sub(1).and_then(|above| self.records.get(above)).map_or(0, last_filled);
         let rows = self.rows(first).map(last_filled).max().unwrap_or(0);
         // A title with commas is no wide header.
-        if header > rows && first > 0 && self.separator == Separator::Comma && header > 2 * rows { rows } else { rows.max(header) }
+        if header > rows && first > 0 && self.separator == Separator::Comma && header > 2 * rows {
+            rows
+        } else {
+            rows.max(header)
+        }
     }
 
     fn is_numeric(&self, first: usize, column: usize) -> bool {
         let (mut filled, mut numbers) = (0, 0);
         for index in (first..self.records.len()).filter(|index| self.looks_like_row(*index)) {
             let number = self.numeric.get(index).and_then(|row| row.get(column)) == Some(&true);
-            filled += usize::from(self.records.get(index).is_some_and(|record| !record.field(self.text, column).is_empty()));
+            filled += usize::from(
+                self.records
+                    .get(index)
+                    .is_some_and(|record| !record.field(self.text, column).is_empty()),
+            );
             numbers += usize::from(number);
         }
         filled > 0 && numbers * 2 >= filled
@@ -355,7 +474,10 @@ impl<'text> Sample<'text> {
             &Position::row(first.line),
             line,
             "a table with a row of numbers for each measurement",
-            &format!("found “{}”, but no row of numbers anywhere; paste a table with a row for each measurement.", shortened(line)),
+            &format!(
+                "found “{}”, but no row of numbers anywhere; paste a table with a row for each measurement.",
+                shortened(line)
+            ),
         ))
     }
 }
@@ -366,6 +488,8 @@ pub(super) fn is_rule(text: &str, record: &Record) -> bool {
     line.len() >= 3
         && line.contains(['-', '=', '_', '─', '━'])
         && !line.contains('\t')
-        && line.chars().all(|character| matches!(character, '-' | '=' | '_' | '─' | '━' | '|' | '+' | ':' | ' ' | '┼'))
+        && line.chars().all(|character| {
+            matches!(character, '-' | '=' | '_' | '─' | '━' | '|' | '+' | ':' | ' ' | '┼')
+        })
         && line.matches(['-', '=', '_', '─', '━']).count() >= 3
 }

@@ -3,13 +3,17 @@
 
 mod columns;
 mod convert;
+mod edit;
+mod errors;
 mod header;
 mod layout;
 mod reader;
 mod role;
 mod roles;
+mod said;
 mod tally;
 mod values;
+mod view;
 
 use std::ops::Range;
 
@@ -17,6 +21,7 @@ use serde::{Deserialize, Serialize};
 
 pub use reader::{Reader, read_table};
 pub use role::{ErrorKind, Form, Role, SignalIs};
+pub use view::{CellView, NoteView, RowView, TableView};
 
 use crate::problem::Problem;
 use crate::quantity::Quantity;

@@ -8,6 +8,7 @@ use std::collections::HashMap;
 use super::columns::{self, Columns};
 use super::convert::Converter;
 use super::layout::{Kind, Layout, is_rule};
+use super::said;
 use super::tally::Lines;
 use super::values::{TimeShape, Values};
 use super::{Cell, Choice, Content, Decimal, Hints, Role, Row, Separator, Table};
@@ -31,6 +32,8 @@ pub struct Reader<'text> {
     votes: Vec<Votes>,
     /// The first cell of each column that either decimal mark explains.
     ambiguous: Vec<Option<String>>,
+    /// A second table with other headers begins.
+    other_table: bool,
     cut: bool,
     decided: Option<Decided>,
 }
@@ -69,6 +72,7 @@ impl<'text> Reader<'text> {
             problems,
             votes,
             ambiguous,
+            other_table: false,
             cut: false,
             decided: None,
             layout,
@@ -86,7 +90,7 @@ impl<'text> Reader<'text> {
             }
             return true;
         }
-        if self.decided.is_none() {
+        if self.decided.is_none() && self.layout.refusal.is_none() {
             self.decide();
         }
         let Some(decided) = &mut self.decided else { return false };
@@ -117,9 +121,16 @@ impl<'text> Reader<'text> {
             self.count_from_start(&decided);
         }
         let mut choices = std::mem::take(&mut self.layout.choices);
-        choices.extend(self.decimal_choices(&decided));
+        if self.hints.decimal.is_none() {
+            choices.extend(said::decimal_marks(
+                &decided.columns.columns,
+                &self.votes,
+                &self.ambiguous,
+                self.layout.separator,
+            ));
+        }
         choices.append(&mut decided.columns.choices);
-        choices.extend(clock_choices(&decided));
+        choices.extend(said::clocks(&decided.columns.columns, &decided.shapes));
         for (at, column) in decided.columns.columns.iter().enumerate() {
             if let Some(tally) = decided.converter.tallies.get(at) {
                 tally.choices(at, column, &mut choices);
@@ -130,7 +141,13 @@ impl<'text> Reader<'text> {
         problems.append(&mut decided.columns.problems);
         problems.append(&mut decided.converter.problems);
         for (at, column) in decided.columns.columns.iter().enumerate() {
-            problems.extend(decided.converter.tallies.get(at).and_then(|tally| tally.unlisted_problem(at, column)));
+            problems.extend(
+                decided
+                    .converter
+                    .tallies
+                    .get(at)
+                    .and_then(|tally| tally.unlisted_problem(at, column)),
+            );
         }
         Table {
             form: decided.columns.form,
@@ -163,7 +180,7 @@ impl<'text> Reader<'text> {
 
     /// Cuts one record; false at the end.
     fn cut_record(&mut self) -> bool {
-        if self.layout.refusal.is_some() {
+        if self.layout.refusal.is_some() || self.other_table {
             return false;
         }
         let Some(mut record) = self.records.next(&self.text) else { return false };
@@ -179,7 +196,15 @@ impl<'text> Reader<'text> {
             Kind::Blank => {}
             Kind::Note => {
                 if self.notes.len() < MOST_NOTES {
-                    self.notes.push((record.line, shortened(self.text.get(record.span.clone()).unwrap_or(""))));
+                    self.notes.push((
+                        record.line,
+                        shortened(self.text.get(record.span.clone()).unwrap_or("")),
+                    ));
+                    self.other_table =
+                        !self.rows.is_empty() && self.layout.is_other_header(&self.text, &record);
+                    if self.other_table {
+                        self.refuse_other_table(&record);
+                    }
                 }
             }
             Kind::Row => self.add_row(&record),
@@ -199,6 +224,16 @@ impl<'text> Reader<'text> {
                 last.end = end;
             }
         }
+    }
+
+    fn refuse_other_table(&mut self, record: &Record) {
+        let line = self.text.get(record.span.clone()).unwrap_or("");
+        self.problems.push(Problem::said(
+            &Position::row(record.line),
+            line,
+            "one table with one header",
+            &format!("a second table with other headers begins here (“{}”); it is not read. Paste one table at a time, or give both the same columns.", shortened(line)),
+        ));
     }
 
     fn refuse_line(&mut self, record: &Record) {
@@ -244,7 +279,12 @@ impl<'text> Reader<'text> {
         {
             let found = self.text.get(span.clone()).unwrap_or("");
             let expected = format!("{columns} columns, as in the rows above");
-            self.problems.push(Problem::new(&Position::row(record.line), found, &expected, "what is beyond them is not read"));
+            self.problems.push(Problem::new(
+                &Position::row(record.line),
+                found,
+                &expected,
+                "what is beyond them is not read",
+            ));
         }
         self.rows.push(Row { line: record.line, cells });
     }
@@ -252,15 +292,19 @@ impl<'text> Reader<'text> {
     fn decide(&mut self) {
         let mut all = Votes::default();
         self.votes.iter().for_each(|votes| all.add(votes));
-        let fallback = if self.layout.separator == Separator::Semicolon && all.doubtful(Decimal::Point) {
-            // Semicolons separate where the comma marks decimals.
-            Decimal::Comma
-        } else {
-            Decimal::Point
-        };
+        let fallback =
+            if self.layout.separator == Separator::Semicolon && all.doubtful(Decimal::Point) {
+                // Semicolons separate where the comma marks decimals.
+                Decimal::Comma
+            } else {
+                Decimal::Point
+            };
         let decimal = self.hints.decimal.or(all.certain()).unwrap_or(fallback);
-        let decimals: Vec<Decimal> =
-            self.votes.iter().map(|votes| self.hints.decimal.or(votes.certain()).unwrap_or(decimal)).collect();
+        let decimals: Vec<Decimal> = self
+            .votes
+            .iter()
+            .map(|votes| self.hints.decimal.or(votes.certain()).unwrap_or(decimal))
+            .collect();
         let values: Vec<Values> = decimals
             .iter()
             .enumerate()
@@ -271,17 +315,26 @@ impl<'text> Reader<'text> {
             .columns
             .iter()
             .zip(&values)
-            .map(|(column, values)| if column.role == Role::Time { values.time_shape } else { TimeShape::Numbers })
+            .map(
+                |(column, values)| {
+                    if column.role == Role::Time { values.time_shape } else { TimeShape::Numbers }
+                },
+            )
             .collect();
-        let converter = Converter::new(&columns.columns, &shapes, columns.form, self.hints.decimal.is_some());
+        let converter =
+            Converter::new(&columns.columns, &shapes, columns.form, self.hints.decimal.is_some());
         self.decided = Some(Decided { columns, decimal, shapes, converter, next: 0 });
     }
 
     /// Time stamps count from the first of their run.
     fn count_from_start(&mut self, decided: &Decided) {
         let columns = &decided.columns.columns;
-        let Some(time) = columns.iter().position(|column| column.role == Role::Time) else { return };
-        let runs: Vec<usize> = (0..columns.len()).filter(|at| matches!(columns[*at].role, Role::Run | Role::Temperature)).collect();
+        let Some(time) = columns.iter().position(|column| column.role == Role::Time) else {
+            return;
+        };
+        let runs: Vec<usize> = (0..columns.len())
+            .filter(|at| matches!(columns[*at].role, Role::Run | Role::Temperature))
+            .collect();
         let key = |row: &Row| -> String {
             runs.iter()
                 .map(|at| match row.cells.get(*at).map(|cell| &cell.content) {
@@ -301,49 +354,12 @@ impl<'text> Reader<'text> {
         }
         for row in &mut self.rows {
             let start = starts.get(&key(row)).copied().unwrap_or(0.0);
-            if let Some(Cell { content: Content::Number { value, .. }, .. }) = row.cells.get_mut(time) {
+            if let Some(Cell { content: Content::Number { value, .. }, .. }) =
+                row.cells.get_mut(time)
+            {
                 *value -= start;
             }
         }
-    }
-
-    /// What the decimal mark was taken to be, where anybody could doubt it.
-    fn decimal_choices(&self, decided: &Decided) -> Vec<Choice> {
-        let mut choices = Vec::new();
-        let stated = self.hints.decimal.is_some();
-        if !stated && self.votes.iter().any(|votes| votes.certain() == Some(Decimal::Comma)) {
-            choices.push(Choice { sentence: "The comma is read as the decimal mark.".to_string(), column: None });
-        }
-        for (at, column) in decided.columns.columns.iter().enumerate() {
-            let (Some(votes), Some(Some(cell))) = (self.votes.get(at), self.ambiguous.get(at)) else { continue };
-            if stated || !column.role.is_numeric() || !votes.doubtful(column.decimal) || votes.certain().is_some() {
-                continue;
-            }
-            let read = |decimal: Decimal| match crate::text::read_cell(cell, decimal) {
-                crate::text::Reading::Number(number) => columns::shown(number.value),
-                _ => "no number".to_string(),
-            };
-            let mark = |decimal: Decimal| if decimal == Decimal::Comma { "commas" } else { "points" };
-            let mut all = Votes::default();
-            self.votes.iter().for_each(|votes| all.add(votes));
-            let why = if all.certain().is_some() {
-                format!("because other numbers have decimal {}", mark(column.decimal))
-            } else if self.layout.separator == Separator::Semicolon {
-                "because semicolons separate the columns".to_string()
-            } else {
-                "because nothing says that the comma marks decimals".to_string()
-            };
-            let name = if column.header.is_empty() { String::new() } else { format!(" ({})", shortened(&column.header)) };
-            let sentence = format!(
-                "Column {}{name}: “{cell}” is read as {}, {why}; with decimal {} it would be {}.",
-                at + 1,
-                read(column.decimal),
-                mark(column.decimal.other()),
-                read(column.decimal.other()),
-            );
-            choices.push(Choice { sentence, column: Some(at + 1) });
-        }
-        choices
     }
 
     /// Notes between rows are named: somebody may have meant them as rows.
@@ -353,26 +369,164 @@ impl<'text> Reader<'text> {
         for (line, text) in self.notes.iter().filter(|(line, _)| *line > first && *line < last) {
             lines.count(*line, text);
         }
-        let example = self.notes.iter().find(|(line, _)| *line > first && *line < last).map(|(_, text)| text.clone())?;
+        let example = self
+            .notes
+            .iter()
+            .find(|(line, _)| *line > first && *line < last)
+            .map(|(_, text)| text.clone())?;
         let (are, notes) = if lines.count > 1 { ("are", "notes") } else { ("is", "a note") };
         let rows = lines.rows().replacen("row", "Row", 1);
-        Some(Choice { sentence: format!("{rows} {are} taken as {notes} and not read (“{example}”)."), column: None })
+        Some(Choice {
+            sentence: format!("{rows} {are} taken as {notes} and not read (“{example}”)."),
+            column: None,
+        })
     }
 }
 
-/// How times of a clock were read.
-fn clock_choices(decided: &Decided) -> Vec<Choice> {
-    let mut choices = Vec::new();
-    for (at, (column, shape)) in decided.columns.columns.iter().zip(&decided.shapes).enumerate() {
-        let name = if column.header.is_empty() { String::new() } else { format!(" ({})", shortened(&column.header)) };
-        let unit = column.unit.as_deref().unwrap_or("h");
-        let what = match shape {
-            TimeShape::Numbers => continue,
-            TimeShape::Stamps => format!("times count in {unit} from the first stamp of each run."),
-            TimeShape::Clock { seconds: true } => format!("times are read as hours:minutes:seconds, in {unit}."),
-            TimeShape::Clock { seconds: false } => format!("times are read as hours:minutes, not minutes:seconds, in {unit}."),
-        };
-        choices.push(Choice { sentence: format!("Column {}{name}: {what}", at + 1), column: Some(at + 1) });
+#[cfg(test)]
+mod tests {
+    #![allow(clippy::unwrap_used)]
+    use super::super::{ColumnHint, Form, Origin};
+    use super::*;
+    use proptest::prelude::*;
+
+    fn values(table: &Table, column: usize) -> Vec<Option<f64>> {
+        table.rows.iter().map(|row| row.cells[column].number().map(|(value, _)| value)).collect()
     }
-    choices
+
+    #[test]
+    fn slices_give_what_one_go_gives() {
+        let mut text = "T/°C\tk, 1/h\n".to_string();
+        for row in 0..500 {
+            text.push_str(&format!("{}\t{}\n", 20 + row % 60, f64::from(row) * 1e-4 + 1e-3));
+        }
+        text.push_str("90\tbad\n");
+        let whole = read_table(&text, &Hints::default());
+        let mut reader = Reader::new(text.as_str(), Hints::default());
+        let mut last = 0.0;
+        while reader.read_rows(7) {
+            assert!(reader.progress() >= last && reader.progress() <= 1.0);
+            last = reader.progress();
+        }
+        assert_eq!(reader.progress(), 1.0);
+        assert_eq!(reader.finish(), whole);
+        assert_eq!((whole.rows.len(), whole.problems.len()), (501, 1));
+    }
+
+    #[test]
+    fn hints_win() {
+        let text = "a\tb\n1,234\t50\n2,345\t60\n";
+        let columns = vec![
+            ColumnHint {
+                role: Some(Role::RateConstant),
+                unit: Some("L mol⁻¹ s⁻¹".to_string()),
+                multiplier: Some(1e-3),
+            },
+            ColumnHint {
+                role: Some(Role::Temperature),
+                unit: Some("°F".to_string()),
+                multiplier: None,
+            },
+        ];
+        let mut hints = Hints { columns, decimal: Some(Decimal::Comma), form: Some(Form::Rates) };
+        let table = read_table(text, &hints);
+        assert_eq!(table.columns[0].unit.as_deref(), Some("L/(mol s)"));
+        assert_eq!(
+            (table.columns[0].role_from, table.columns[0].unit_from),
+            (Origin::Stated, Origin::Stated)
+        );
+        assert_eq!(values(&table, 0), [Some(1.234 * 1e-3), Some(2.345 * 1e-3)]);
+        assert_eq!(table.columns[1].unit.as_deref(), Some("°F"));
+        assert!(table.problems.is_empty() && table.choices.is_empty());
+        hints.decimal = Some(Decimal::Point);
+        assert_eq!(values(&read_table(text, &hints), 0), [Some(1.234), Some(2.345)]);
+    }
+
+    #[test]
+    fn what_was_decided_can_be_stated_again_without_change() {
+        let text = "T/°C\t10^4 k / s⁻¹\ts(k)\tnote\n50\t2.1\t0.1\tx\n60\t5.9\t0.3\ty\n";
+        let first = read_table(text, &Hints::default());
+        let stated = |column: &super::super::Column| ColumnHint {
+            role: Some(column.role),
+            unit: column.unit.clone(),
+            multiplier: None,
+        };
+        let hints = Hints {
+            columns: first.columns.iter().map(stated).collect(),
+            decimal: Some(first.decimal),
+            form: first.form,
+        };
+        let again = read_table(text, &hints);
+        assert_eq!(again.rows, first.rows);
+        assert!(again.problems.is_empty());
+    }
+
+    #[test]
+    fn a_wrong_stated_unit_is_a_problem_and_the_header_counts() {
+        let columns = vec![
+            ColumnHint::default(),
+            ColumnHint { unit: Some("furlong".to_string()), ..ColumnHint::default() },
+        ];
+        let table = read_table(
+            "T/°C\tk, 1/h\n50\t0.0021\n60\t0.0059\n",
+            &Hints { columns, ..Hints::default() },
+        );
+        assert_eq!(table.columns[1].unit.as_deref(), Some("1/h"));
+        assert!(table.problems[0].sentence.contains("“furlong” is not a unit of rate constant"));
+    }
+
+    /// Quadratic behaviour would make these take minutes.
+    #[test]
+    fn monsters_are_read_in_linear_time() {
+        for text in [
+            "1\t".repeat(1_000_000),
+            "\"a,".repeat(700_000),
+            "\"".repeat(2_000_000),
+            "x\n".repeat(500_000),
+            "1 ".repeat(1_000_000),
+            "(".repeat(1_000_000),
+            "1,\n".repeat(300_000),
+        ] {
+            let _ = read_table(&text, &Hints::default());
+        }
+    }
+
+    proptest! {
+        #[test]
+        fn no_text_makes_it_panic(text in "\\PC{0,200}", lines in proptest::collection::vec("[0-9.,;\t °CTkhs/⁻¹×±()\"'<>|#-]{0,30}", 0..12)) {
+            for text in [text, lines.join("\n"), lines.join("\r\n")] {
+                let table = read_table(&text, &Hints::default());
+                for row in &table.rows {
+                    prop_assert_eq!(row.cells.len(), table.columns.len());
+                    for cell in &row.cells {
+                        prop_assert!(text.get(cell.span.clone()).is_some());
+                    }
+                }
+                let _ = serde_json::to_string(&table.view(&text));
+            }
+        }
+
+        #[test]
+        fn a_printed_table_reads_back(
+            rows in proptest::collection::vec((-40_i32..200, 1_u32..99_999, -8_i32..3), 2..20),
+            style in 0_usize..5,
+        ) {
+            let (separator, comma) = [("\t", false), (";", true), (",", false), ("   ", false), ("\t", true)][style];
+            let header = ["T/°C", "k / h⁻¹"].join(separator);
+            let line = |(temperature, digits, power): &(i32, u32, i32)| {
+                let line = format!("{temperature}.5{separator}{}e{power}", f64::from(*digits) / 1000.0);
+                if comma { line.replace('.', ",") } else { line }
+            };
+            let text = format!("{header}\n{}\n", rows.iter().map(line).collect::<Vec<_>>().join("\n"));
+            let table = read_table(&text, &Hints::default());
+            prop_assert!(table.problems.is_empty(), "{:?}", table.problems);
+            prop_assert_eq!(table.rows.len(), rows.len());
+            for (row, (temperature, digits, power)) in table.rows.iter().zip(&rows) {
+                let t: f64 = format!("{temperature}.5").parse().unwrap();
+                let k: f64 = format!("{}e{power}", f64::from(*digits) / 1000.0).parse().unwrap();
+                prop_assert_eq!(row.cells[0].number(), Some((t, None)));
+                prop_assert_eq!(row.cells[1].number(), Some((k, None)));
+            }
+        }
+    }
 }

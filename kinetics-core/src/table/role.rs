@@ -186,6 +186,22 @@ impl Role {
         }))
     }
 
+    /// The code of a unit as it is shown; the code itself where it is none.
+    #[must_use]
+    pub fn unit_symbol(self, code: &str) -> String {
+        let symbol = match self {
+            Role::RateConstant | Role::LnRateConstant | Role::Log10RateConstant | Role::Sd => {
+                RateUnit::parse(code).ok().map(RateUnit::symbol)
+            }
+            Role::InverseTemperature => Some("K⁻¹".to_string()),
+            Role::Signal => {
+                ConcentrationUnit::parse(code).ok().map(|unit| unit.symbol().to_string())
+            }
+            _ => None,
+        };
+        symbol.unwrap_or_else(|| code.to_string())
+    }
+
     /// Units for its menu, as codes.
     #[must_use]
     pub fn units(self) -> Vec<String> {

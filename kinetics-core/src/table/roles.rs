@@ -19,19 +19,30 @@ pub(super) struct Roles<'a> {
 }
 
 /// Decides the role of every column, and the form of the data.
-pub(super) fn decide<'a>(headers: &'a [String], readings: &'a [Reading], values: &'a [Values], hints: &'a Hints) -> Roles<'a> {
+pub(super) fn decide<'a>(
+    headers: &'a [String],
+    readings: &'a [Reading],
+    values: &'a [Values],
+    hints: &'a Hints,
+) -> Roles<'a> {
     let roles = (0..readings.len())
         .map(|column| {
-            let stated = hints.columns.get(column).and_then(|hint| hint.role).map(|role| (role, Origin::Stated));
+            let stated = hints
+                .columns
+                .get(column)
+                .and_then(|hint| hint.role)
+                .map(|role| (role, Origin::Stated));
             stated.or_else(|| readings.get(column)?.role.map(|role| (role, Origin::Header)))
         })
         .collect();
     let run_temperatures = vec![None; readings.len()];
     let form = hints.form.filter(|form| *form != Form::KnownLaw);
-    let mut deciding = Roles { headers, readings, values, roles, run_temperatures, form, choices: Vec::new() };
+    let mut deciding =
+        Roles { headers, readings, values, roles, run_temperatures, form, choices: Vec::new() };
     deciding.correct_letters();
     deciding.wide();
-    deciding.form = deciding.form.or_else(|| deciding.form_of_known()).or_else(|| deciding.form_of_values());
+    deciding.form =
+        deciding.form.or_else(|| deciding.form_of_known()).or_else(|| deciding.form_of_values());
     deciding.fill();
     deciding.form = deciding.form.or_else(|| deciding.form_of_known());
     deciding.drop_duplicates();
@@ -79,7 +90,9 @@ impl Roles<'_> {
 
     /// Columns of numbers without a role, from the left.
     fn unknown(&self) -> Vec<usize> {
-        (0..self.roles.len()).filter(|column| self.role(*column).is_none() && self.numeric(*column)).collect()
+        (0..self.roles.len())
+            .filter(|column| self.role(*column).is_none() && self.numeric(*column))
+            .collect()
     }
 
     /// Single letters that mean one thing beside others: `s` behind `k` is an
@@ -89,10 +102,13 @@ impl Roles<'_> {
             if !matches!(self.roles.get(column), Some(Some((_, Origin::Header)))) {
                 continue;
             }
-            let before = column.checked_sub(1).and_then(|before| self.role(before));
-            let other_temperature = (0..self.roles.len()).any(|other| other != column && self.role(other) == Some(Role::Temperature));
+            let before = (0..column).rev().find_map(|before| self.role(before));
+            let other_temperature = (0..self.roles.len())
+                .any(|other| other != column && self.role(other) == Some(Role::Temperature));
             match self.header(column) {
-                "s" if before.is_some_and(Role::is_rate) => self.set(column, Role::Sd, Origin::Header),
+                "s" if before.is_some_and(Role::is_rate) => {
+                    self.set(column, Role::Sd, Origin::Header)
+                }
                 "C" if other_temperature => self.set(column, Role::Signal, Origin::Header),
                 _ => {}
             }
@@ -102,8 +118,13 @@ impl Roles<'_> {
     /// Time down and one column for each run across, its temperature in the header.
     fn wide(&mut self) {
         let runs: Vec<usize> = (0..self.readings.len())
-            .filter(|column| self.readings.get(*column).is_some_and(|reading| reading.run_temperature.is_some()))
-            .filter(|column| matches!(self.role(*column), None | Some(Role::Signal | Role::Sd)) && self.numeric(*column))
+            .filter(|column| {
+                self.readings.get(*column).is_some_and(|reading| reading.run_temperature.is_some())
+            })
+            .filter(|column| {
+                matches!(self.role(*column), None | Some(Role::Signal | Role::Sd))
+                    && self.numeric(*column)
+            })
             .collect();
         if runs.is_empty() {
             self.wide_with_bare_numbers();
@@ -114,7 +135,8 @@ impl Roles<'_> {
             if self.role(*column).is_none() {
                 self.set(*column, Role::Signal, Origin::Header);
             }
-            let temperature = self.readings.get(*column).and_then(|reading| reading.run_temperature.clone());
+            let temperature =
+                self.readings.get(*column).and_then(|reading| reading.run_temperature.clone());
             if let Some(slot) = self.run_temperatures.get_mut(*column) {
                 *slot = temperature;
             }
@@ -123,7 +145,13 @@ impl Roles<'_> {
             && let Some(column) = self.unknown().first().copied()
         {
             self.set(column, Role::Time, Origin::Assumed);
-            self.say(column, format!("{} is taken as the time, because the other columns name temperatures.", self.title(column)));
+            self.say(
+                column,
+                format!(
+                    "{} is taken as the time, because the other columns name temperatures.",
+                    self.title(column)
+                ),
+            );
         }
     }
 
@@ -133,12 +161,29 @@ impl Roles<'_> {
         let time = self.position(|role| role == Role::Time);
         let bare: Vec<(usize, f64)> = unknown
             .iter()
-            .filter_map(|column| Some((*column, self.header(*column).replace(',', ".").parse::<f64>().ok().filter(|value| value.is_finite())?)))
+            .filter_map(|column| {
+                Some((
+                    *column,
+                    self.header(*column)
+                        .replace(',', ".")
+                        .parse::<f64>()
+                        .ok()
+                        .filter(|value| value.is_finite())?,
+                ))
+            })
             .collect();
-        let others: Vec<usize> = unknown.iter().copied().filter(|column| !bare.iter().any(|(other, _)| other == column)).collect();
+        let others: Vec<usize> = unknown
+            .iter()
+            .copied()
+            .filter(|column| !bare.iter().any(|(other, _)| other == column))
+            .collect();
         let plausible = bare.iter().all(|(_, value)| (-100.0..1000.0).contains(value));
         let clear = time.is_some() && others.is_empty() || time.is_none() && others == [0];
-        if bare.len() < 2 || !plausible || !clear || self.has(|role| matches!(role, Role::Temperature | Role::InverseTemperature)) {
+        if bare.len() < 2
+            || !plausible
+            || !clear
+            || self.has(|role| matches!(role, Role::Temperature | Role::InverseTemperature))
+        {
             return;
         }
         let unit = if bare.iter().all(|(_, value)| *value >= 250.0) { "K" } else { "°C" };
@@ -151,7 +196,8 @@ impl Roles<'_> {
         if let Some(column) = others.first() {
             self.set(*column, Role::Time, Origin::Assumed);
         }
-        let numbers: Vec<String> = bare.iter().take(4).map(|(_, value)| value.to_string()).collect();
+        let numbers: Vec<String> =
+            bare.iter().take(4).map(|(_, value)| value.to_string()).collect();
         let first = bare.first().map_or(0, |(column, _)| *column);
         self.say(
             first,
@@ -167,12 +213,20 @@ impl Roles<'_> {
     fn wide_with_numbered_runs(&mut self) {
         let runs: Vec<usize> = (0..self.roles.len())
             .filter(|column| self.roles.get(*column) == Some(&Some((Role::Run, Origin::Header))))
-            .filter(|column| self.numeric(*column) && self.header(*column).contains(|c: char| c.is_ascii_digit()))
+            .filter(|column| {
+                self.numeric(*column) && self.header(*column).contains(|c: char| c.is_ascii_digit())
+            })
             .collect();
-        if runs.len() > 1 && self.has(|role| role == Role::Time) && !self.has(|role| role == Role::Signal) {
+        if runs.len() > 1
+            && self.has(|role| role == Role::Time)
+            && !self.has(|role| role == Role::Signal)
+        {
             for column in runs {
                 self.set(column, Role::Signal, Origin::Assumed);
-                let sentence = format!("{} is taken as the signal of one run; its header names no temperature.", self.title(column));
+                let sentence = format!(
+                    "{} is taken as the signal of one run; its header names no temperature.",
+                    self.title(column)
+                );
                 self.say(column, sentence);
             }
         }
@@ -192,7 +246,10 @@ impl Roles<'_> {
             Some(Form::Progress)
         } else if has(Role::Time) && (has(Role::Temperature) || has(Role::InverseTemperature)) {
             Some(Form::Times)
-        } else if (has(Role::Temperature) || has(Role::InverseTemperature)) && spare > 0 && !has(Role::Signal) {
+        } else if (has(Role::Temperature) || has(Role::InverseTemperature))
+            && spare > 0
+            && !has(Role::Signal)
+        {
             Some(Form::Rates)
         } else {
             None
@@ -205,7 +262,8 @@ impl Roles<'_> {
         let values = |at: usize| unknown.get(at).and_then(|column| self.values.get(*column));
         let (first, second) = (values(0)?, values(1));
         let block = first.like_temperatures() && first.repeats() && unknown.len() >= 3;
-        let clock = (0..unknown.len()).any(|at| values(at).is_some_and(|values| values.time_shape != TimeShape::Numbers));
+        let clock = (0..unknown.len())
+            .any(|at| values(at).is_some_and(|values| values.time_shape != TimeShape::Numbers));
         if block || clock {
             return Some(Form::Progress);
         }
@@ -235,11 +293,23 @@ impl Roles<'_> {
                 continue;
             }
             let unknown = self.unknown();
-            let clock = unknown.iter().copied().find(|column| self.values.get(*column).is_some_and(|values| values.time_shape != TimeShape::Numbers));
-            let column = if wanted == Role::Time { clock.or_else(|| unknown.first().copied()) } else { unknown.first().copied() };
+            let clock = unknown.iter().copied().find(|column| {
+                self.values
+                    .get(*column)
+                    .is_some_and(|values| values.time_shape != TimeShape::Numbers)
+            });
+            let column = if wanted == Role::Time {
+                clock.or_else(|| unknown.first().copied())
+            } else {
+                unknown.first().copied()
+            };
             let Some(column) = column else { continue };
             let negative = self.values.get(column).is_some_and(|values| !values.all_positive());
-            let role = if wanted == Role::RateConstant && negative { Role::LnRateConstant } else { wanted };
+            let role = if wanted == Role::RateConstant && negative {
+                Role::LnRateConstant
+            } else {
+                wanted
+            };
             self.take(column, role);
         }
         self.fill_errors_and_replicates();
@@ -248,13 +318,19 @@ impl Roles<'_> {
     fn fill_temperature(&mut self, form: Form) {
         let unknown = self.unknown();
         let values = |column: &usize| self.values.get(*column);
-        let by = |test: &dyn Fn(&Values) -> bool| unknown.iter().copied().find(|column| values(column).is_some_and(test));
+        let by = |test: &dyn Fn(&Values) -> bool| {
+            unknown.iter().copied().find(|column| values(column).is_some_and(test))
+        };
         let found = by(&|values| values.like_temperatures() && !values.spans_decades())
             .or_else(|| by(&Values::like_temperatures))
             .map(|column| (column, Role::Temperature))
-            .or_else(|| by(&Values::like_inverse_temperatures).map(|column| (column, Role::InverseTemperature)));
+            .or_else(|| {
+                by(&Values::like_inverse_temperatures)
+                    .map(|column| (column, Role::InverseTemperature))
+            });
         let enough = unknown.len() > usize::from(!self.has(Role::is_value));
-        let repeated = found.is_some_and(|(column, _)| values(&column).is_some_and(Values::repeats));
+        let repeated =
+            found.is_some_and(|(column, _)| values(&column).is_some_and(Values::repeats));
         // A time and a signal are two columns that may look like temperatures.
         let free = form != Form::Progress || repeated;
         if let Some((column, role)) = found
@@ -269,11 +345,19 @@ impl Roles<'_> {
     fn take(&mut self, column: usize, role: Role) {
         self.set(column, role, Origin::Values);
         let range = self.values.get(column).and_then(Values::range);
-        let range = range.map_or(String::new(), |(low, high)| if low == high { format!(" ({low})") } else { format!(" ({low} to {high})") });
+        let range = range.map_or(String::new(), |(low, high)| {
+            if low == high { format!(" ({low})") } else { format!(" ({low} to {high})") }
+        });
         let words = role.words();
         let sentence = match self.header(column) {
-            "" => format!("Column {} has no header; by its values{range} it is taken as the {words}.", column + 1),
-            _ => format!("{}: the header names nothing known here; by its values{range} it is taken as the {words}.", self.title(column)),
+            "" => format!(
+                "Column {} has no header; by its values{range} it is taken as the {words}.",
+                column + 1
+            ),
+            _ => format!(
+                "{}: the header names nothing known here; by its values{range} it is taken as the {words}.",
+                self.title(column)
+            ),
         };
         self.say(column, sentence);
     }
@@ -290,11 +374,17 @@ impl Roles<'_> {
             if !self.header(column).is_empty() {
                 continue;
             }
-            let Some(value) = (0..column).rev().find(|other| self.role(*other) == Some(wanted)) else { continue };
-            let (Some(own), Some(values)) = (self.values.get(column), self.values.get(value)) else { continue };
+            let Some(value) = (0..column).rev().find(|other| self.role(*other) == Some(wanted))
+            else {
+                continue;
+            };
+            let (Some(own), Some(values)) = (self.values.get(column), self.values.get(value))
+            else {
+                continue;
+            };
             if wanted == Role::RateConstant && own.like_replicates_of(values) {
                 self.take(column, Role::RateConstant);
-            } else if own.like_errors_of(values) && self.role(column - 1) == Some(wanted) {
+            } else if own.like_errors_of(values, 1.0) && self.role(column - 1) == Some(wanted) {
                 self.take(column, Role::Sd);
             }
         }
@@ -302,24 +392,37 @@ impl Roles<'_> {
 
     /// One temperature, one time; logarithms of k step back behind k.
     fn drop_duplicates(&mut self) {
-        let is_temperature = |role: Role| matches!(role, Role::Temperature | Role::InverseTemperature);
-        let keep_temperature = self.position(|role| role == Role::Temperature).or_else(|| self.position(is_temperature));
+        let is_temperature =
+            |role: Role| matches!(role, Role::Temperature | Role::InverseTemperature);
+        let keep_temperature = self
+            .position(|role| role == Role::Temperature)
+            .or_else(|| self.position(is_temperature));
         let keep_time = self.position(|role| role == Role::Time);
-        let best_rate = [Role::RateConstant, Role::LnRateConstant, Role::Log10RateConstant].into_iter().find(|rate| self.has(|role| role == *rate));
+        let best_rate = [Role::RateConstant, Role::LnRateConstant, Role::Log10RateConstant]
+            .into_iter()
+            .find(|rate| self.has(|role| role == *rate));
         for column in 0..self.roles.len() {
             let Some(Some((role, origin))) = self.roles.get(column).copied() else { continue };
             if origin == Origin::Stated {
                 continue;
             }
             let (kept, what) = match role {
-                role if is_temperature(role) && keep_temperature != Some(column) => (keep_temperature, "a temperature"),
+                role if is_temperature(role) && keep_temperature != Some(column) => {
+                    (keep_temperature, "a temperature")
+                }
                 Role::Time if keep_time != Some(column) => (keep_time, "a time"),
-                role if role.is_rate() && Some(role) != best_rate => (self.position(|role| Some(role) == best_rate), "a rate constant"),
+                role if role.is_rate() && Some(role) != best_rate => {
+                    (self.position(|role| Some(role) == best_rate), "a rate constant")
+                }
                 _ => continue,
             };
-            let kept = kept.map_or(String::new(), |kept| self.title(kept).replacen("Column", "column", 1));
+            let kept =
+                kept.map_or(String::new(), |kept| self.title(kept).replacen("Column", "column", 1));
             self.set(column, Role::Ignore, origin);
-            self.say(column, format!("{} also holds {what} and is not used; {kept} is.", self.title(column)));
+            self.say(
+                column,
+                format!("{} also holds {what} and is not used; {kept} is.", self.title(column)),
+            );
         }
     }
 
@@ -333,13 +436,26 @@ impl Roles<'_> {
             if self.role(column).is_some() {
                 continue;
             }
-            let filled = self.values.get(column).is_some_and(|values| values.filled > 0);
-            let label = filled && !self.numeric(column) && !self.has(|role| matches!(role, Role::Label | Role::Run));
+            // A column of ± between a value and its error needs no words.
+            let filled = self.values.get(column).is_some_and(|values| values.filled > values.signs);
+            let label = filled
+                && !self.numeric(column)
+                && !self.has(|role| matches!(role, Role::Label | Role::Run));
             self.set(column, if label { Role::Label } else { Role::Ignore }, Origin::Assumed);
             if label {
-                self.say(column, format!("{} holds text and is taken as the label of the row.", self.title(column)));
+                self.say(
+                    column,
+                    format!(
+                        "{} holds text and is taken as the label of the row.",
+                        self.title(column)
+                    ),
+                );
             } else if filled || !self.header(column).is_empty() {
-                let why = if self.header(column).is_empty() { "nothing says what it holds" } else { "its header names nothing known here" };
+                let why = if self.header(column).is_empty() {
+                    "nothing says what it holds"
+                } else {
+                    "its header names nothing known here"
+                };
                 self.say(column, format!("{} is not used: {why}.", self.title(column)));
             }
         }

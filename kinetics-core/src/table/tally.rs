@@ -58,31 +58,53 @@ pub(super) struct Tally {
 impl Tally {
     /// One sentence for each kind of thing set aside.
     pub fn choices(&self, at: usize, column: &Column, into: &mut Vec<Choice>) {
-        let header = if column.header.is_empty() { String::new() } else { format!(" ({})", shortened(&column.header)) };
+        let header = if column.header.is_empty() {
+            String::new()
+        } else {
+            format!(" ({})", shortened(&column.header))
+        };
         let mut say = |lines: &Lines, sentence: &dyn Fn(&str, &str) -> String| {
             if lines.count > 0 {
-                let sentence = format!("Column {}{header}: {}", at + 1, sentence(&lines.rows(), &lines.example));
+                let sentence = format!(
+                    "Column {}{header}: {}",
+                    at + 1,
+                    sentence(&lines.rows(), &lines.example)
+                );
                 into.push(Choice { sentence, column: Some(at + 1) });
             }
         };
-        say(&self.below, &|rows, example| format!("below a limit (“{example}”) in {rows}; not used in the fit."));
-        say(&self.not_determined, &|rows, example| format!("no value (“{example}”) in {rows}; left out."));
-        say(&self.marked, &|rows, example| format!("marked (“{example}”) in {rows}; kept in the table and left out of the fit."));
+        say(&self.below, &|rows, example| {
+            format!("below a limit (“{example}”) in {rows}; not used in the fit.")
+        });
+        say(&self.not_determined, &|rows, example| {
+            format!("no value (“{example}”) in {rows}; left out.")
+        });
+        say(&self.marked, &|rows, example| {
+            format!("marked (“{example}”) in {rows}; kept in the table and left out of the fit.")
+        });
         let several = self.empty.count > 1;
         let gaps = if several { "empty cells" } else { "an empty cell" };
         say(&self.empty, &|rows, _| format!("{gaps} in {rows}; left out."));
-        let cells = if self.filled_down.count > 1 { "empty cells take" } else { "the empty cell takes" };
+        let cells =
+            if self.filled_down.count > 1 { "empty cells take" } else { "the empty cell takes" };
         let what = if column.role == Role::Temperature { "the temperature" } else { "what stands" };
-        say(&self.filled_down, &|rows, _| format!("{cells} {what} above ({rows}), as merged cells do."));
+        say(&self.filled_down, &|rows, _| {
+            format!("{cells} {what} above ({rows}), as merged cells do.")
+        });
         say(&self.other_mark, &|rows, example| {
-            format!("“{example}” in {rows} can only have the other decimal mark and is read with it.")
+            format!(
+                "“{example}” in {rows} can only have the other decimal mark and is read with it."
+            )
         });
     }
 
     /// One problem for all bad cells that have none of their own.
     pub fn unlisted_problem(&self, at: usize, column: &Column) -> Option<Problem> {
         (self.unlisted > 0).then(|| {
-            let message = format!("{} more cells could not be read as numbers and are left out.", self.unlisted);
+            let message = format!(
+                "{} more cells could not be read as numbers and are left out.",
+                self.unlisted
+            );
             Problem::said(&Position::column(at + 1, &column.header), "", "numbers", &message)
         })
     }

@@ -35,6 +35,8 @@ pub(super) struct Values {
     /// Units beside the numbers, the most frequent first.
     pub units: Vec<(String, usize)>,
     pub time_shape: TimeShape,
+    /// Cells with nothing but `±`.
+    pub signs: usize,
 }
 
 impl Values {
@@ -42,7 +44,8 @@ impl Values {
         let mut values = Values::default();
         let (mut stamps, mut clocks, mut with_seconds) = (0, 0, 0);
         for row in rows.iter().take(SAMPLE) {
-            let cell = row.cells.get(column).and_then(|cell| text.get(cell.span.clone())).unwrap_or("");
+            let cell =
+                row.cells.get(column).and_then(|cell| text.get(cell.span.clone())).unwrap_or("");
             let mut number = None;
             match read_cell(cell, decimal) {
                 Reading::Empty => {}
@@ -63,6 +66,7 @@ impl Values {
                 }
                 Reading::Text => {
                     values.filled += 1;
+                    values.signs += usize::from(matches!(cell, "±" | "+/-" | "+-"));
                     if stamp::stamp_seconds(cell).is_some() {
                         stamps += 1;
                     } else if let Some((_, seconds)) = stamp::clock_seconds(cell) {
@@ -89,7 +93,8 @@ impl Values {
     /// Mostly numbers, or words in place of them.
     pub fn is_numeric(&self) -> bool {
         let numbers = self.present().count();
-        self.time_shape != TimeShape::Numbers || (numbers > 0 && (numbers + self.markers) * 2 >= self.filled)
+        self.time_shape != TimeShape::Numbers
+            || (numbers > 0 && (numbers + self.markers) * 2 >= self.filled)
     }
 
     pub fn range(&self) -> Option<(f64, f64)> {
@@ -105,7 +110,9 @@ impl Values {
 
     /// Could be temperatures in °C, K or °F.
     pub fn like_temperatures(&self) -> bool {
-        self.range().is_some_and(|(low, high)| low >= -100.0 && high <= 1500.0 && high >= 4.0 && high - low <= 800.0)
+        self.range().is_some_and(|(low, high)| {
+            low >= -100.0 && high <= 1500.0 && high >= 4.0 && high - low <= 800.0
+        })
     }
 
     /// Could be 1/T in 1/K.
@@ -131,17 +138,24 @@ impl Values {
         count >= 4 && sorted.len() * 2 <= count
     }
 
-    /// Above zero and below the values beside it, as errors are.
-    pub fn like_errors_of(&self, values: &Values) -> bool {
-        let pairs = || self.numbers.iter().zip(&values.numbers).filter_map(|(error, value)| Some(((*error)?, (*value)?)));
+    /// Above zero and below the values beside it, as errors are, once multiplied by `scale`.
+    pub fn like_errors_of(&self, values: &Values, scale: f64) -> bool {
+        let pairs = || {
+            self.numbers
+                .iter()
+                .zip(&values.numbers)
+                .filter_map(|(error, value)| Some(((*error)? * scale, (*value)?)))
+        };
         let count = pairs().count();
-        let fitting = pairs().filter(|(error, value)| *error > 0.0 && *error < value.abs() * 0.8).count();
+        let fitting =
+            pairs().filter(|(error, value)| *error > 0.0 && *error < value.abs() * 0.8).count();
         count > 0 && fitting * 10 >= count * 9
     }
 
     /// Much the same numbers row by row, as repeated measurements are.
     pub fn like_replicates_of(&self, values: &Values) -> bool {
-        let pairs = || self.numbers.iter().zip(&values.numbers).filter_map(|(a, b)| Some(((*a)?, (*b)?)));
+        let pairs =
+            || self.numbers.iter().zip(&values.numbers).filter_map(|(a, b)| Some(((*a)?, (*b)?)));
         let count = pairs().count();
         let close = pairs().filter(|(a, b)| a / b > 0.33 && a / b < 3.0).count();
         count > 0 && close * 10 >= count * 9
@@ -149,7 +163,10 @@ impl Values {
 
     /// The unit beside most of the cells.
     pub fn usual_unit(&self) -> Option<&str> {
-        self.units.first().filter(|(_, count)| count * 2 > self.filled).map(|(unit, _)| unit.as_str())
+        self.units
+            .first()
+            .filter(|(_, count)| count * 2 > self.filled)
+            .map(|(unit, _)| unit.as_str())
     }
 }
 
@@ -185,8 +202,8 @@ mod tests {
     #[test]
     fn errors_and_replicates_stand_beside_their_values() {
         let rates = values(&["0.0021", "0.0059"]);
-        assert!(values(&["0.0001", "0.0003"]).like_errors_of(&rates));
-        assert!(!values(&["0.0001", "0.3"]).like_errors_of(&rates));
+        assert!(values(&["0.0001", "0.0003"]).like_errors_of(&rates, 1.0));
+        assert!(!values(&["0.0001", "0.3"]).like_errors_of(&rates, 1.0));
         assert!(values(&["0.0022", "0.0061"]).like_replicates_of(&rates));
     }
 
@@ -195,6 +212,9 @@ mod tests {
         assert_eq!(values(&["50 °C", "60 °C", "70"]).usual_unit(), Some("°C"));
         assert_eq!(values(&["2024-03-01 08:00", "2024-03-01 09:00"]).time_shape, TimeShape::Stamps);
         assert_eq!(values(&["0:30", "1:30"]).time_shape, TimeShape::Clock { seconds: false });
-        assert!(values(&["50", "50", "60", "60"]).repeats() && !values(&["50", "60", "70", "80"]).repeats());
+        assert!(
+            values(&["50", "50", "60", "60"]).repeats()
+                && !values(&["50", "60", "70", "80"]).repeats()
+        );
     }
 }

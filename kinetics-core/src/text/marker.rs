@@ -56,8 +56,6 @@ const NOT_DETERMINED: &[&str] = &[
     "..",
     "…",
     "?",
-    "/",
-    "x",
     "nr",
     "#n/a",
     "#nv",

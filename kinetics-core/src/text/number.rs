@@ -48,7 +48,13 @@ pub fn read_cell(cell: &str, decimal: Decimal) -> Reading {
         return Reading::Empty;
     }
     if let Some(value) = plain(cell, decimal) {
-        return Reading::Number(Number { value, error: None, error_percent: false, unit: None, marked: false });
+        return Reading::Number(Number {
+            value,
+            error: None,
+            error_percent: false,
+            unit: None,
+            marked: false,
+        });
     }
     match marker(cell) {
         Some(Marker::BelowLimit) => return Reading::Below(None),
@@ -184,7 +190,13 @@ mod tests {
     fn units_and_marks_beside_the_number() {
         let read = |cell: &str| read_cell(cell, Decimal::Point);
         let with = |value: f64, unit: Option<&str>, marked: bool| {
-            Reading::Number(Number { value, error: None, error_percent: false, unit: unit.map(str::to_string), marked })
+            Reading::Number(Number {
+                value,
+                error: None,
+                error_percent: false,
+                unit: unit.map(str::to_string),
+                marked,
+            })
         };
         assert_eq!(read("50 °C"), with(50.0, Some("°C"), false));
         assert_eq!(read("95.2 %"), with(95.2, Some("%"), false));

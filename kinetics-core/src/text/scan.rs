@@ -307,7 +307,10 @@ impl Scanner<'_> {
             return Some(None);
         }
         // A letter glued to a digit is a slip of the keyboard unless it is a unit.
-        crate::units::is_unit(rest).then(|| Some(rest.to_string()))
+        let glued_slash = self.characters.get(self.at) == Some(&'/')
+            && self.at > 0
+            && self.characters.get(self.at - 1).is_some_and(char::is_ascii_digit);
+        (!glued_slash && crate::units::is_unit(rest)).then(|| Some(rest.to_string()))
     }
 }
 

@@ -74,6 +74,9 @@ impl Separator {
     #[must_use]
     pub fn detect(text: &str) -> Separator {
         let sample = text.get(..sample_end(text)).unwrap_or(text);
+        if mostly_tabs(sample) {
+            return Separator::Tab;
+        }
         let mut best = (Separator::Tab, 0.0);
         for separator in Separator::ALL {
             let score = separator.score(sample);
@@ -91,7 +94,7 @@ impl Separator {
         let mut lines: Vec<(usize, f64)> = Vec::new();
         while let Some(record) = records.next(sample) {
             let filled = record.filled();
-            if filled < 2 || record.too_long || lines.len() >= SAMPLE_LINES {
+            if filled < 2 || lines.len() >= SAMPLE_LINES {
                 continue;
             }
             let numeric = (0..record.fields.len())
@@ -194,6 +197,15 @@ fn belongs_together(line: &str, start: Option<usize>, end: usize, next: usize) -
             && before.as_bytes().get(4) == Some(&b'-')
             && before.as_bytes().get(7) == Some(&b'-')
             && after.contains(':'))
+}
+
+/// Tabs stand in no cell: where most lines have one, they separate.
+fn mostly_tabs(sample: &str) -> bool {
+    let lines = || {
+        sample.split(['\n', '\r']).map(str::trim).filter(|line| !line.is_empty()).take(SAMPLE_LINES)
+    };
+    let with_tab = lines().filter(|line| line.contains('\t')).count();
+    with_tab > 0 && with_tab * 2 > lines().count()
 }
 
 fn sample_end(text: &str) -> usize {

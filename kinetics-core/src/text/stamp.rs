@@ -10,7 +10,9 @@ use jiff::tz::TimeZone;
 #[must_use]
 pub fn stamp_seconds(text: &str) -> Option<f64> {
     let bytes = text.as_bytes();
-    let shape = (10..=35).contains(&bytes.len()) && bytes.get(4) == Some(&b'-') && bytes.get(7) == Some(&b'-');
+    let shape = (10..=35).contains(&bytes.len())
+        && bytes.get(4) == Some(&b'-')
+        && bytes.get(7) == Some(&b'-');
     if !shape || !bytes.iter().take(4).all(u8::is_ascii_digit) {
         return None;
     }
@@ -73,7 +75,15 @@ mod tests {
             let found = stamp_seconds(text).zip(start).map(|(stamp, start)| stamp - start);
             assert_eq!(found, Some(later), "{text}");
         }
-        for text in ["", "2024", "01.03.2024 08:00", "2024-13-01", "2024-02-30", "2024-03-01 25:00", "2024-03-01 8 o'clock"] {
+        for text in [
+            "",
+            "2024",
+            "01.03.2024 08:00",
+            "2024-13-01",
+            "2024-02-30",
+            "2024-03-01 25:00",
+            "2024-03-01 8 o'clock",
+        ] {
             assert_eq!(stamp_seconds(text), None, "{text}");
         }
     }

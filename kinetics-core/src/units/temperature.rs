@@ -58,16 +58,17 @@ impl TemperatureUnit {
             lower => lower.strip_prefix('°').map_or(lower.clone(), str::to_string),
         };
         match bare.as_str() {
+            // A lone small c is a concentration, a small k a rate constant.
+            "c" | "f" | "k" if folded == bare => Err(TemperatureUnit::unknown(text)),
             "c" | "oc" | "℃" | "celsius" | "centigrade" => Ok(TemperatureUnit::Celsius),
-            // A small k is a prefix or a rate constant, not the kelvin.
-            "k" if folded.ends_with('K') => Ok(TemperatureUnit::Kelvin),
-            "kelvin" | "kelvins" => Ok(TemperatureUnit::Kelvin),
+            "k" | "kelvin" | "kelvins" => Ok(TemperatureUnit::Kelvin),
             "f" | "of" | "℉" | "fahrenheit" => Ok(TemperatureUnit::Fahrenheit),
-            _ => {
-                let accepted = TemperatureUnit::ALL.iter().map(|unit| unit.symbol());
-                Err(UnitError::unknown(TemperatureUnit::SUBJECT, text, accepted))
-            }
+            _ => Err(TemperatureUnit::unknown(text)),
         }
+    }
+
+    fn unknown(text: &str) -> UnitError {
+        UnitError::unknown(TemperatureUnit::SUBJECT, text, TemperatureUnit::ALL.iter().map(|unit| unit.symbol()))
     }
 
     /// A reading on this scale, in K; may be at or below zero.
@@ -141,7 +142,7 @@ mod tests {
                 "{text}"
             );
         }
-        for text in ["", "k", "°", "R", "°R", "cc"] {
+        for text in ["", "k", "c", "f", "°", "R", "°R", "cc"] {
             assert!(TemperatureUnit::parse(text).is_err(), "{text}");
         }
     }

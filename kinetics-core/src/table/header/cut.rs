@@ -6,21 +6,41 @@ use super::read;
 /// Most words of a header line that is cut by sense.
 const MOST_WORDS: usize = 30;
 
-/// Name and unit, the most telling way first: brackets, a slash, a comma,
-/// "in", a space.
-pub(super) fn ways(header: &str) -> Vec<(String, String)> {
+/// A name and what may be its unit.
+#[derive(Clone, Debug, PartialEq)]
+pub(super) struct Way {
+    pub name: String,
+    pub unit: String,
+    /// Only a space stands between them.
+    pub by_space: bool,
+}
+
+impl Way {
+    fn new(name: &str, unit: &str) -> Way {
+        Way { name: name.to_string(), unit: unit.to_string(), by_space: false }
+    }
+}
+
+/// Ways of cutting a header, the most telling first: brackets, a slash, a
+/// comma, "in", a space.
+pub(super) fn ways(header: &str) -> Vec<Way> {
     let mut ways = Vec::new();
     if let Some((open, close)) = last_bracket(header) {
-        let (before, inside, after) = (&header[..open], &header[open + 1..close], &header[close + 1..]);
+        let (before, inside, after) =
+            (&header[..open], &header[open + 1..close], &header[close + 1..]);
         let before = before.trim_end().trim_end_matches(['/', ',', ';']).trim_end();
         let inside = inside.trim();
         let power = leading_power(inside.trim_start_matches(['×', '·', '*', ' ', 'x']));
         if power.is_some_and(|(size, rest)| rest.is_empty() && size != 1.0) {
             // "k / s⁻¹ (×10⁴)": the bracket holds a factor alone.
             let factor = inside.trim_start_matches(['×', '·', '*', ' ', 'x']);
-            ways.extend(self::ways(before).into_iter().map(|(name, unit)| (format!("{name} × {factor}"), unit)));
+            ways.extend(
+                self::ways(before)
+                    .into_iter()
+                    .map(|way| Way { name: format!("{} × {factor}", way.name), ..way }),
+            );
         } else {
-            ways.push((format!("{before} {after}").trim().to_string(), inside.to_string()));
+            ways.push(Way::new(format!("{before} {after}").trim(), inside));
         }
     }
     let mut depth = 0_usize;
@@ -30,26 +50,26 @@ pub(super) fn ways(header: &str) -> Vec<(String, String)> {
             '(' | '[' | '{' => depth += 1,
             ')' | ']' | '}' => depth = depth.saturating_sub(1),
             '/' | '⁄' | '∕' if depth == 0 && at > 0 => {
-                ways.push((header[..at].to_string(), header[at + character.len_utf8()..].to_string()));
+                ways.push(Way::new(&header[..at], &header[at + character.len_utf8()..]));
             }
             ',' | ';' | ':' if depth == 0 => commas.push(at),
             _ => {}
         }
     }
     for at in commas.into_iter().rev() {
-        ways.push((header[..at].to_string(), header[at + 1..].to_string()));
+        ways.push(Way::new(&header[..at], &header[at + 1..]));
     }
     if let Some((name, unit)) = header.rsplit_once(" in ") {
-        ways.push((name.to_string(), unit.to_string()));
+        ways.push(Way::new(name, unit));
     }
     for (at, _) in header.match_indices(' ') {
-        ways.push((header[..at].to_string(), header[at + 1..].to_string()));
+        ways.push(Way { by_space: true, ..Way::new(&header[..at], &header[at + 1..]) });
     }
     // "T°C", "TempC" is too daring, but a degree sign is clear.
     if let Some(at) = header.find('°').filter(|at| *at > 0) {
-        ways.push((header[..at].to_string(), header[at..].to_string()));
+        ways.push(Way::new(&header[..at], &header[at..]));
     }
-    ways.retain(|(_, unit)| !unit.trim().is_empty());
+    ways.retain(|way| !way.unit.trim().is_empty());
     ways
 }
 

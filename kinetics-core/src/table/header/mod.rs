@@ -59,7 +59,11 @@ impl Reading {
     }
 
     fn of(named: &Named) -> Reading {
+        let refused = named.of_temperature.then_some(
+            "errors of single temperatures are not read; state the uncertainty of the thermometer instead",
+        );
         Reading {
+            refused,
             role: Some(named.role),
             signal_is: named.signal_is,
             error_is: named.error_is,
@@ -76,9 +80,11 @@ pub(super) fn read(header: &str, units_cell: &str) -> Reading {
     if header.is_empty() && units_cell.is_empty() || header.chars().count() > 200 {
         return Reading::nothing();
     }
-    let is_error = named(&header).is_some_and(|named| matches!(named.role, Role::Sd | Role::Ignore));
+    let is_error =
+        named(&header).is_some_and(|named| matches!(named.role, Role::Sd | Role::Ignore));
     if !is_error {
-        let with_unit = if units_cell.is_empty() { header.clone() } else { format!("{header}/{units_cell}") };
+        let with_unit =
+            if units_cell.is_empty() { header.clone() } else { format!("{header}/{units_cell}") };
         if let Some(inverse) = special::inverse(&with_unit).or_else(|| special::inverse(&header)) {
             return Reading {
                 role: Some(Role::InverseTemperature),
@@ -97,7 +103,9 @@ pub(super) fn read(header: &str, units_cell: &str) -> Reading {
             None | Some(Role::Run | Role::Label) => {
                 return Reading { role: None, run_temperature: Some(temperature), ..reading };
             }
-            Some(Role::Signal | Role::Sd) => return Reading { run_temperature: Some(temperature), ..reading },
+            Some(Role::Signal | Role::Sd) => {
+                return Reading { run_temperature: Some(temperature), ..reading };
+            }
             Some(_) => {}
         }
     }
@@ -126,7 +134,8 @@ fn cleaned(text: &str) -> String {
             kept.push(character);
         }
     }
-    let kept = kept.replace("Â°", "°").replace("\u{fffd}C", "°C").replace("Âµ", "µ").replace("**", "^");
+    let kept =
+        kept.replace("Â°", "°").replace("\u{fffd}C", "°C").replace("Âµ", "µ").replace("**", "^");
     kept.trim().trim_matches('"').trim_end_matches(':').trim().to_string()
 }
 
@@ -134,18 +143,22 @@ fn logarithm(header: &str, units_cell: &str) -> Option<Reading> {
     let logarithm = special::logarithm(header)?;
     let role = if logarithm.decimal { Role::Log10RateConstant } else { Role::LnRateConstant };
     if factor(&logarithm.of).is_some() {
-        let refused = Some("a factor inside the logarithm is not read; give k itself, or its plain logarithm");
+        let refused = Some(
+            "a factor inside the logarithm is not read; give k itself, or its plain logarithm",
+        );
         return Some(Reading { role: Some(Role::Ignore), refused, ..Reading::nothing() });
     }
     let inner = plain(&logarithm.of, "");
-    if !inner.role.is_none_or(|role| role == Role::RateConstant) || letter(&logarithm.of).is_some() {
+    if !inner.role.is_none_or(|role| role == Role::RateConstant) || letter(&logarithm.of).is_some()
+    {
         let refused = Some("the logarithm of a signal is not read; give the signal itself");
         return Some(Reading { role: Some(Role::Ignore), refused, ..Reading::nothing() });
     }
     let unit = special::unit_in_argument(&logarithm.of)
         .or_else(|| special::rate_unit(&logarithm.behind))
         .or_else(|| special::rate_unit(units_cell));
-    let no_unit = (unit.is_none() && !logarithm.behind.is_empty()).then(|| logarithm.behind.clone());
+    let no_unit =
+        (unit.is_none() && !logarithm.behind.is_empty()).then(|| logarithm.behind.clone());
     Some(Reading {
         role: Some(role),
         unit: unit.map(crate::units::RateUnit::code),
@@ -166,11 +179,15 @@ fn plain(header: &str, units_cell: &str) -> Reading {
     if words_of_all.is_none()
         && let Some(measure) = measure(header)
     {
-        return with_unit(Reading { role: Some(measure.family.role()), ..Reading::nothing() }, &measure, None);
+        return with_unit(
+            Reading { role: Some(measure.family.role()), ..Reading::nothing() },
+            &measure,
+            None,
+        );
     }
     let ways = cut::ways(header);
-    for (name, unit) in &ways {
-        if let Some(reading) = fit(name, unit) {
+    for way in &ways {
+        if let Some(reading) = fit(&way.name, &way.unit) {
             return reading;
         }
     }
@@ -178,12 +195,13 @@ fn plain(header: &str, units_cell: &str) -> Reading {
     let taken = factor(header);
     let name = taken.as_ref().map_or(header, |factor| factor.name.as_str());
     let spoken = words_of_all.or_else(|| named(name)).or_else(|| letter(name));
-    let clear = ways.iter().filter(|(name, _)| named(name).is_some() || letter(name.trim()).is_some());
-    let no_unit = clear.map(|(_, unit)| unit.trim()).find(|unit| !unit.is_empty());
-    let spoken = spoken.or_else(|| {
-        let names = ways.iter().map(|(name, _)| name.trim());
-        names.filter(|name| !name.is_empty()).find_map(|name| named(name).or_else(|| letter(name)))
-    });
+    let clear = || ways.iter().filter(|way| !way.by_space);
+    let speaking =
+        clear().filter(|way| named(&way.name).is_some() || letter(way.name.trim()).is_some());
+    let no_unit =
+        speaking.map(|way| way.unit.trim()).find(|unit| !unit.is_empty() && !is_factor(unit));
+    let spoken = spoken
+        .or_else(|| clear().find_map(|way| named(&way.name).or_else(|| letter(way.name.trim()))));
     let mut reading = spoken.as_ref().map_or_else(Reading::nothing, Reading::of);
     if !units_cell.is_empty() && units_cell != "-" {
         reading.no_unit = Some(units_cell.to_string());
@@ -199,6 +217,12 @@ fn plain(header: &str, units_cell: &str) -> Reading {
         apply(&mut reading, factor);
     }
     reading
+}
+
+/// Nothing but a power of ten.
+fn is_factor(text: &str) -> bool {
+    let number = text.trim_start_matches(['×', '·', '*', ' ', 'x']);
+    multiplier::leading_power(number).is_some_and(|(_, rest)| rest.trim().is_empty())
 }
 
 /// A name and a unit that suit each other.
@@ -220,7 +244,10 @@ fn with_unit(mut reading: Reading, measure: &Measure, taken: Option<&Factor>) ->
     reading.unit = Some(measure.code.clone());
     reading.multiplier = measure.scale;
     reading.doubtful = measure.scale != 1.0 && (measure.scale > 1.0 || measure.times);
-    if reading.role == Some(Role::Sd) && measure.family == Family::Concentration && measure.code == "%" {
+    if reading.role == Some(Role::Sd)
+        && measure.family == Family::Concentration
+        && measure.code == "%"
+    {
         reading.relative = true;
     }
     if let Some(factor) = taken {
@@ -330,13 +357,24 @@ mod tests {
             ("k (s⁻¹ × 10⁻⁴)", 1e-4, true),
         ] {
             let reading = read(header, "");
-            assert_eq!((reading.role, reading.unit.as_deref()), (Some(Role::RateConstant), Some("1/s")), "{header}");
-            assert!((reading.multiplier / multiplier - 1.0).abs() < 1e-12, "{header}: {}", reading.multiplier);
+            assert_eq!(
+                (reading.role, reading.unit.as_deref()),
+                (Some(Role::RateConstant), Some("1/s")),
+                "{header}"
+            );
+            assert!(
+                (reading.multiplier / multiplier - 1.0).abs() < 1e-12,
+                "{header}: {}",
+                reading.multiplier
+            );
             assert_eq!(reading.doubtful, doubtful, "{header}");
         }
         let bare = read("k ×10⁴", "");
         assert!(bare.doubtful && (bare.multiplier / 1e-4 - 1.0).abs() < 1e-12);
-        assert_eq!(brief("1000/T (1/K)"), (Some(Role::InverseTemperature), Some("1/K".to_string()), 1e-3));
+        assert_eq!(
+            brief("1000/T (1/K)"),
+            (Some(Role::InverseTemperature), Some("1/K".to_string()), 1e-3)
+        );
     }
 
     #[test]
@@ -362,7 +400,9 @@ mod tests {
         assert_eq!(read("k", "[1/h]").unit.as_deref(), Some("1/h"));
         assert_eq!(read("rate", "10⁻³ h⁻¹").multiplier, 1e-3);
         assert_eq!(read("1/T", "10⁻³ K⁻¹").multiplier, 1e-3);
-        assert!(is_unit_cell("°C") && is_unit_cell("(1/h)") && is_unit_cell("-") && !is_unit_cell("k"));
+        assert!(
+            is_unit_cell("°C") && is_unit_cell("(1/h)") && is_unit_cell("-") && !is_unit_cell("k")
+        );
     }
 
     #[test]

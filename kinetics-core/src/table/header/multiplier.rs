@@ -25,23 +25,33 @@ fn before(name: &str) -> Option<Factor> {
     let (size, rest) = leading_power(name)?;
     let rest = rest.trim_start_matches(|c: char| c == ' ' || is_times(c));
     // "95 % CI" and "1 h" are no factors.
-    let fits = rest.starts_with(|c: char| c.is_alphabetic() || c == '[' || c == '(') && size >= 10.0 || size < 1.0;
+    let fits = rest.starts_with(|c: char| c.is_alphabetic() || c == '[' || c == '(')
+        && size >= 10.0
+        || size < 1.0;
     (fits && !rest.is_empty()).then(|| Factor { name: rest.to_string(), size, behind: false })
 }
 
 fn behind(name: &str) -> Option<Factor> {
     let at = name.char_indices().skip(1).find_map(|(at, c)| {
         let rest = name.get(at..)?;
-        let starts = is_times(c) || c == ' ' || ((c == 'x' || c == 'X') && rest.get(1..)?.trim_start().starts_with("10"));
+        let starts = is_times(c)
+            || c == ' '
+            || ((c == 'x' || c == 'X') && rest.get(1..)?.trim_start().starts_with("10"));
         let number = rest.trim_start_matches(|c: char| c == ' ' || is_times(c));
         let number = number.strip_prefix(['x', 'X']).map_or(number, str::trim_start);
         let (size, left) = leading_power(number)?;
-        (starts && left.trim().is_empty() && (size >= 10.0 || size < 1.0)).then_some((at, size, c == ' ' && rest.trim_start() == number))
+        (starts && left.trim().is_empty() && (size >= 10.0 || size < 1.0)).then_some((
+            at,
+            size,
+            c == ' ' && rest.trim_start() == number,
+        ))
     });
     let (at, size, only_space) = at?;
     let kept = name.get(..at)?.trim_end();
     // "batch 10" is no factor; "k 10^4" is one.
-    let written_as_power = name.get(at..)?.contains(['^', '⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹']) || name.get(at..)?.contains("10-");
+    let written_as_power =
+        name.get(at..)?.contains(['^', '⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹'])
+            || name.get(at..)?.contains("10-");
     (!only_space || written_as_power).then(|| Factor { name: kept.to_string(), size, behind: true })
 }
 
@@ -64,7 +74,9 @@ pub(super) fn leading_power(text: &str) -> Option<(f64, &str)> {
     {
         return Some((format!("1e{power}").parse().ok()?, rest));
     }
-    let round = number.len() <= 9 && number.starts_with('1') && number.bytes().skip(1).all(|byte| byte == b'0');
+    let round = number.len() <= 9
+        && number.starts_with('1')
+        && number.bytes().skip(1).all(|byte| byte == b'0');
     let decimal = text.strip_prefix("0.").and_then(|decimals| {
         let end = decimals.find(|c: char| c != '0')?;
         decimals.get(end..)?.strip_prefix('1').map(|rest| (end, rest))
@@ -89,7 +101,8 @@ fn exponent(text: &str) -> Option<(i32, &str)> {
     let digits = text.trim_start_matches(['⁻', '⁺']);
     let end = digits.find(|c: char| raised(c).is_none()).unwrap_or(digits.len());
     let (digits, rest) = digits.split_at(end);
-    let size: i32 = digits.chars().take(3).try_fold(0_i32, |sum, c| Some(sum * 10 + raised(c)? as i32))?;
+    let size: i32 =
+        digits.chars().take(3).try_fold(0_i32, |sum, c| Some(sum * 10 + raised(c)? as i32))?;
     (!digits.is_empty()).then_some((if negative { -size } else { size }, rest))
 }
 
@@ -112,7 +125,9 @@ mod tests {
 
     #[test]
     fn factors_before_a_name() {
-        for name in ["10^4 k", "10⁴ k", "10⁴·k", "10^4 × k", "10^{4}k", "1e4 k", "10000 k", "10000·k"] {
+        for name in
+            ["10^4 k", "10⁴ k", "10⁴·k", "10^4 × k", "10^{4}k", "1e4 k", "10000 k", "10000·k"]
+        {
             assert_eq!(found(name), Some(("k".to_string(), 1e4, false)), "{name}");
         }
         assert_eq!(found("10⁻³ k"), Some(("k".to_string(), 1e-3, false)));
@@ -120,7 +135,8 @@ mod tests {
 
     #[test]
     fn factors_behind_a_name() {
-        for name in ["k × 10^4", "k×10⁴", "k x 10^4", "k x10^4", "k*10000", "k 10^4", "k · 10⁴"] {
+        for name in ["k × 10^4", "k×10⁴", "k x 10^4", "k x10^4", "k*10000", "k 10^4", "k · 10⁴"]
+        {
             assert_eq!(found(name), Some(("k".to_string(), 1e4, true)), "{name}");
         }
         assert_eq!(found("k 10-3"), Some(("k".to_string(), 1e-3, true)));

@@ -15,7 +15,13 @@ pub(super) struct Inverse {
 pub(super) fn inverse(header: &str) -> Option<Inverse> {
     let squeezed: String = header.chars().filter(|c| !c.is_whitespace()).collect();
     let lower = squeezed.to_lowercase();
-    for word in ["inversetemperature", "reciprocaltemperature", "inversetemp", "reziproketemperatur", "kehrwertdertemperatur"] {
+    for word in [
+        "inversetemperature",
+        "reciprocaltemperature",
+        "inversetemp",
+        "reziproketemperatur",
+        "kehrwertdertemperatur",
+    ] {
         if let Some(rest) = lower.strip_prefix(word) {
             let rest = squeezed.get(squeezed.len() - rest.len()..).unwrap_or("");
             return Some(Inverse { multiplier: unit_scale(rest).unwrap_or(1.0) });
@@ -87,7 +93,14 @@ pub(super) fn logarithm(header: &str) -> Option<Logarithm> {
         return None;
     }
     let (prefix, decimal) = [
-        ("log10", true), ("log_10", true), ("log₁₀", true), ("log_e", false), ("loge", false), ("log", true), ("lg", true), ("ln", false),
+        ("log10", true),
+        ("log_10", true),
+        ("log₁₀", true),
+        ("log_e", false),
+        ("loge", false),
+        ("log", true),
+        ("lg", true),
+        ("ln", false),
     ]
     .into_iter()
     .find(|(prefix, _)| lower.starts_with(prefix))?;
@@ -142,28 +155,46 @@ pub(super) fn unit_in_argument(of: &str) -> Option<RateUnit> {
 /// A unit of k in brackets, behind a slash, a comma or "in".
 pub(super) fn rate_unit(text: &str) -> Option<RateUnit> {
     let text = text.trim().trim_start_matches(['/', ',', ';', ':']).trim();
-    let after_in = text.rsplit_once(" in ").map(|(_, unit)| unit).or_else(|| text.strip_prefix("in ")).unwrap_or(text);
+    let after_in = text
+        .rsplit_once(" in ")
+        .map(|(_, unit)| unit)
+        .or_else(|| text.strip_prefix("in "))
+        .unwrap_or(text);
     let colon = after_in.rsplit_once(':').map_or(after_in, |(_, unit)| unit);
-    [after_in, colon, colon.trim_matches(['(', ')', '[', ']'])].into_iter().find_map(|unit| RateUnit::parse(unit).ok())
+    [after_in, colon, colon.trim_matches(['(', ')', '[', ']'])]
+        .into_iter()
+        .find_map(|unit| RateUnit::parse(unit).ok())
 }
 
 /// A temperature inside a header, as in `c at 50 °C / mol L⁻¹`, and the header without it.
 pub(super) fn temperature(header: &str) -> Option<(Quantity, String)> {
     let mut from = 0;
-    while let Some(start) = header.get(from..)?.find(|c: char| c.is_ascii_digit()).map(|at| from + at) {
+    while let Some(start) =
+        header.get(from..)?.find(|c: char| c.is_ascii_digit()).map(|at| from + at)
+    {
         let rest = header.get(start..)?;
-        let length = rest.find(|c: char| !c.is_ascii_digit() && !matches!(c, '.' | ',')).unwrap_or(rest.len());
+        let length = rest
+            .find(|c: char| !c.is_ascii_digit() && !matches!(c, '.' | ','))
+            .unwrap_or(rest.len());
         let number = rest.get(..length)?.trim_end_matches(['.', ',']);
         let after = rest.get(number.len()..)?;
         if let Some((unit, unit_length)) = leading_degree(after)
             && let Ok(value) = number.replace(',', ".").parse::<f64>()
         {
             let negative = header.get(..start)?.ends_with(['-', '−', '–']);
-            let sign_start = if negative { header.get(..start)?.char_indices().last().map_or(start, |(at, _)| at) } else { start };
+            let sign_start = if negative {
+                header.get(..start)?.char_indices().last().map_or(start, |(at, _)| at)
+            } else {
+                start
+            };
             let before = header.get(..sign_start)?.trim_end().trim_end_matches(['@', '=', '(']);
             let after = after.get(unit_length..)?.trim_start_matches(')');
             let before = strip_last_word(before, &["at", "bei", "à", "T", "T ="]);
-            let kept = format!("{before} {}", after.trim_start()).trim().trim_matches([',', ';', ':', '_']).trim().to_string();
+            let kept = format!("{before} {}", after.trim_start())
+                .trim()
+                .trim_matches([',', ';', ':', '_'])
+                .trim()
+                .to_string();
             return Some((Quantity::new(if negative { -value } else { value }, unit.code()), kept));
         }
         from = start + length.max(1);
@@ -188,14 +219,25 @@ fn leading_degree(text: &str) -> Option<(TemperatureUnit, usize)> {
     let spaces = text.len() - text.trim_start().len();
     let rest = text.trim_start();
     for (written, unit) in [
-        ("°C", TemperatureUnit::Celsius), ("° C", TemperatureUnit::Celsius), ("ºC", TemperatureUnit::Celsius), ("℃", TemperatureUnit::Celsius),
-        ("˚C", TemperatureUnit::Celsius), ("degC", TemperatureUnit::Celsius), ("deg C", TemperatureUnit::Celsius), ("oC", TemperatureUnit::Celsius),
-        ("C", TemperatureUnit::Celsius), ("°F", TemperatureUnit::Fahrenheit), ("℉", TemperatureUnit::Fahrenheit), ("K", TemperatureUnit::Kelvin),
+        ("°C", TemperatureUnit::Celsius),
+        ("° C", TemperatureUnit::Celsius),
+        ("ºC", TemperatureUnit::Celsius),
+        ("℃", TemperatureUnit::Celsius),
+        ("˚C", TemperatureUnit::Celsius),
+        ("degC", TemperatureUnit::Celsius),
+        ("deg C", TemperatureUnit::Celsius),
+        ("oC", TemperatureUnit::Celsius),
+        ("C", TemperatureUnit::Celsius),
+        ("°F", TemperatureUnit::Fahrenheit),
+        ("℉", TemperatureUnit::Fahrenheit),
+        ("K", TemperatureUnit::Kelvin),
         ("°", TemperatureUnit::Celsius),
     ] {
         if let Some(after) = rest.strip_prefix(written) {
             // 50C and 323 K, but not 5 C2H6 nor 1000 K/T.
-            let ends = !after.starts_with(|c: char| c.is_alphanumeric()) && !after.trim_start().starts_with("/T") && !after.trim_start().starts_with("/min");
+            let ends = !after.starts_with(|c: char| c.is_alphanumeric())
+                && !after.trim_start().starts_with("/T")
+                && !after.trim_start().starts_with("/min");
             return ends.then_some((unit, spaces + written.len()));
         }
     }
@@ -210,10 +252,25 @@ mod tests {
     #[test]
     fn inverse_temperatures_in_many_shapes() {
         for (header, multiplier) in [
-            ("1/T", 1.0), ("1/T (1/K)", 1.0), ("1/T / K⁻¹", 1.0), ("T⁻¹ / K⁻¹", 1.0), ("1/(T/K)", 1.0), ("1/T [K]", 1.0),
-            ("1000/T", 1e-3), ("1000/T (K⁻¹)", 1e-3), ("10^3/T", 1e-3), ("10³ K/T", 1e-3), ("1000 K / T", 1e-3), ("1e3/T", 1e-3),
-            ("1/T × 10³", 1e-3), ("1/T*1000", 1e-3), ("(1/T)×10^3", 1e-3), ("1/T / 10⁻³ K⁻¹", 1e-3), ("1/T (10^-3 K^-1)", 1e-3),
-            ("10^4/T", 1e-4), ("inverse temperature (1/K)", 1.0),
+            ("1/T", 1.0),
+            ("1/T (1/K)", 1.0),
+            ("1/T / K⁻¹", 1.0),
+            ("T⁻¹ / K⁻¹", 1.0),
+            ("1/(T/K)", 1.0),
+            ("1/T [K]", 1.0),
+            ("1000/T", 1e-3),
+            ("1000/T (K⁻¹)", 1e-3),
+            ("10^3/T", 1e-3),
+            ("10³ K/T", 1e-3),
+            ("1000 K / T", 1e-3),
+            ("1e3/T", 1e-3),
+            ("1/T × 10³", 1e-3),
+            ("1/T*1000", 1e-3),
+            ("(1/T)×10^3", 1e-3),
+            ("1/T / 10⁻³ K⁻¹", 1e-3),
+            ("1/T (10^-3 K^-1)", 1e-3),
+            ("10^4/T", 1e-4),
+            ("inverse temperature (1/K)", 1.0),
         ] {
             let found = inverse(header).map_or(f64::NAN, |inverse| inverse.multiplier);
             assert!((found / multiplier - 1.0).abs() < 1e-12, "{header}: {found}");
@@ -234,7 +291,10 @@ mod tests {
         assert_eq!(unit_in_argument("k"), None);
         let found = logarithm("log k, k in 1/h").unwrap();
         assert!(found.decimal && found.base_unsaid);
-        assert_eq!((found.of.as_str(), rate_unit(&found.behind).unwrap().code()), ("k", "1/h".to_string()));
+        assert_eq!(
+            (found.of.as_str(), rate_unit(&found.behind).unwrap().code()),
+            ("k", "1/h".to_string())
+        );
         assert_eq!(rate_unit(&logarithm("ln k / h-1").unwrap().behind).unwrap().code(), "1/h");
         assert_eq!(rate_unit(&logarithm("ln k [k: h⁻¹]").unwrap().behind).unwrap().code(), "1/h");
         assert!(!logarithm("log10 (k/min-1)").unwrap().base_unsaid);
@@ -255,7 +315,11 @@ mod tests {
             ("run 1, 60C", 60.0, "°C", "run 1"),
             ("122 °F", 122.0, "°F", ""),
         ] {
-            assert_eq!(temperature(header), Some((Quantity::new(value, unit), kept.to_string())), "{header}");
+            assert_eq!(
+                temperature(header),
+                Some((Quantity::new(value, unit), kept.to_string())),
+                "{header}"
+            );
         }
         for header in ["1000 K/T", "k1", "10^4 k", "50", "2 Charge", "5 K/min", ""] {
             assert_eq!(temperature(header), None, "{header}");

@@ -2,7 +2,10 @@
 
 use super::multiplier::leading_power;
 use crate::table::Role;
-use crate::units::{ConcentrationUnit, HeatRateUnit, HeatingRateUnit, RateUnit, TemperatureUnit, TimeUnit, inverse_kelvin_scale};
+use crate::units::{
+    ConcentrationUnit, HeatRateUnit, HeatingRateUnit, RateUnit, TemperatureUnit, TimeUnit,
+    inverse_kelvin_scale,
+};
 
 /// What a unit measures.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -62,7 +65,10 @@ pub(super) fn measure(text: &str) -> Option<Measure> {
         return found(Family::Temperature, unit.code(), 1.0);
     }
     let start = text.trim_start_matches(['×', '·', '*', ' ']);
-    let start = start.strip_prefix(['x', 'X']).filter(|rest| rest.trim_start().starts_with("10")).map_or(start, str::trim_start);
+    let start = start
+        .strip_prefix(['x', 'X'])
+        .filter(|rest| rest.trim_start().starts_with("10"))
+        .map_or(start, str::trim_start);
     if let Some(scale) = inverse_kelvin_scale(start) {
         return found(Family::InverseTemperature, "1/K", scale);
     }
@@ -70,7 +76,9 @@ pub(super) fn measure(text: &str) -> Option<Measure> {
         return found(Family::Rate, &unit.code(), scale);
     }
     let (scale, rest) = match leading_power(start) {
-        Some((scale, rest)) if scale != 1.0 => (scale, rest.trim_start_matches([' ', '·', '×', '*'])),
+        Some((scale, rest)) if scale != 1.0 => {
+            (scale, rest.trim_start_matches([' ', '·', '×', '*']))
+        }
         _ => (1.0, start),
     };
     if let Ok(unit) = TimeUnit::parse(rest) {

@@ -13,11 +13,20 @@ pub(super) struct Named {
     pub error_is: Option<ErrorKind>,
     /// An error that is relative by its name.
     pub relative: bool,
+    /// An error of the temperatures.
+    pub of_temperature: bool,
 }
 
 impl Named {
     fn of(role: Role, strong: bool) -> Named {
-        Named { role, strong, signal_is: None, error_is: None, relative: false }
+        Named {
+            role,
+            strong,
+            signal_is: None,
+            error_is: None,
+            relative: false,
+            of_temperature: false,
+        }
     }
 
     fn signal(signal_is: SignalIs) -> Named {
@@ -43,9 +52,23 @@ const RATE: &[&str] = &[
     "k", "kobs", "kapp", "kdeg", "khyd", "kf", "kd", "rate", "rateconstant", "geschwindigkeitskonstante", "geschwindigkeit",
     "vitesse", "k1", "k2", "k3", "k4", "k5", "k6", "k7", "k8", "k9", "k₁", "k₂", "k′",
 ];
-const GROUP: &[&str] = &["batch", "lot", "charge", "oven", "ofen", "étuve", "etuve", "group", "gruppe", "groupe", "lote"];
-const RUN: &[&str] = &["run", "experiment", "expt", "exp", "versuch", "essai", "trial", "series", "nr", "no", "n°"];
-const LABEL: &[&str] = &["sample", "probe", "name", "label", "id", "échantillon", "echantillon", "muster", "code", "vial"];
+const GROUP: &[&str] = &[
+    "batch", "lot", "charge", "oven", "ofen", "étuve", "etuve", "group", "gruppe", "groupe", "lote",
+];
+const RUN: &[&str] =
+    &["run", "experiment", "expt", "exp", "versuch", "essai", "trial", "series", "nr", "no", "n°"];
+const LABEL: &[&str] = &[
+    "sample",
+    "probe",
+    "name",
+    "label",
+    "id",
+    "échantillon",
+    "echantillon",
+    "muster",
+    "code",
+    "vial",
+];
 #[rustfmt::skip]
 const UNUSED: &[&str] = &[
     "note", "notes", "comment", "comments", "remark", "remarks", "bemerkung", "bemerkungen", "kommentar", "remarque", "remarques",
@@ -74,8 +97,9 @@ pub(super) fn named(name: &str) -> Option<Named> {
     if name.is_empty() || name.chars().count() > 120 {
         return None;
     }
-    let words: Vec<&str> =
-        lower.split(|c: char| !c.is_alphanumeric() && !matches!(c, '½' | '′' | '°' | '₁' | '₂')).filter(|word| !word.is_empty())
+    let words: Vec<&str> = lower
+        .split(|c: char| !c.is_alphanumeric() && !matches!(c, '½' | '′' | '°' | '₁' | '₂'))
+        .filter(|word| !word.is_empty())
         // A lone capital K is the kelvin, or an equilibrium constant.
         .filter(|word| *word != "k" || name.contains('k'))
         .collect();
@@ -87,7 +111,8 @@ pub(super) fn named(name: &str) -> Option<Named> {
     }
     let percent = name.contains('%') || words.contains(&"percent") || words.contains(&"prozent");
     let head = head(&lower);
-    let head_words: Vec<&str> = words.iter().take_while(|word| head.contains(**word)).copied().collect();
+    let head_words: Vec<&str> =
+        words.iter().take_while(|word| head.contains(**word)).copied().collect();
     // English and German put the noun last: "batch assay" is an assay, "product batch" a batch.
     let noun = head_words.iter().rev().find_map(|word| strong(word, &head_words));
     let mut found = noun.or_else(|| percent.then(|| Named::of(Role::Signal, true)))?;
@@ -99,12 +124,15 @@ pub(super) fn named(name: &str) -> Option<Named> {
 
 /// What a single letter says, which a unit may overrule.
 pub(super) fn letter(name: &str) -> Option<Named> {
-    let bare: String = name.chars().filter(|c| c.is_alphanumeric() || matches!(c, '[' | ']')).collect();
+    let bare: String =
+        name.chars().filter(|c| c.is_alphanumeric() || matches!(c, '[' | ']')).collect();
     match bare.as_str() {
         "T" | "Tp" | "Tset" | "TS" | "Tmax" | "Tpeak" => Some(Named::of(Role::Temperature, false)),
         "t" => Some(Named::of(Role::Time, false)),
         "c" | "C" | "A" | "[A]" | "cA" | "CA" | "m" | "y" => Some(Named::of(Role::Signal, false)),
-        "x" | "X" | "α" | "alpha" => Some(Named { strong: false, ..Named::signal(SignalIs::Formed) }),
+        "x" | "X" | "α" | "alpha" => {
+            Some(Named { strong: false, ..Named::signal(SignalIs::Formed) })
+        }
         "q" => Some(Named::of(Role::HeatRate, false)),
         "β" | "beta" | "ß" => Some(Named::of(Role::HeatingRate, false)),
         _ => None,
@@ -114,7 +142,9 @@ pub(super) fn letter(name: &str) -> Option<Named> {
 /// The part before "at", "of", "to", which holds the noun.
 fn head(lower: &str) -> &str {
     let mut end = lower.len();
-    for preposition in [" at ", " of ", " to ", " for ", " after ", " bei ", " bis ", " de ", " du ", " à "] {
+    for preposition in
+        [" at ", " of ", " to ", " for ", " after ", " bei ", " bis ", " de ", " du ", " à "]
+    {
         if let Some(at) = lower.find(preposition).filter(|at| *at > 0) {
             end = end.min(at);
         }
@@ -125,16 +155,22 @@ fn head(lower: &str) -> &str {
 fn strong(word: &str, all: &[&str]) -> Option<Named> {
     let has = |wanted: &str| all.contains(&wanted);
     let within = |list: &[&str]| list.contains(&word);
-    if (within(&["rate"]) && has("heating")) || within(&["heizrate", "aufheizrate", "heatingrate"]) {
+    if (within(&["rate"]) && has("heating")) || within(&["heizrate", "aufheizrate", "heatingrate"])
+    {
         return Some(Named::of(Role::HeatingRate, true));
     }
-    if (within(&["rate", "flow", "release", "flux"]) && has("heat")) || within(&["wärmestrom", "wärmeleistung", "heatflow"]) {
+    if (within(&["rate", "flow", "release", "flux"]) && has("heat"))
+        || within(&["wärmestrom", "wärmeleistung", "heatflow"])
+    {
         return Some(Named::of(Role::HeatRate, true));
     }
     if within(&["constant", "constante", "konstante"]) {
         return Some(Named::of(Role::RateConstant, true));
     }
-    let is_temperature = within(TEMPERATURE) || word.ends_with("temperature") || word.ends_with("temperatur") || word == "température";
+    let is_temperature = within(TEMPERATURE)
+        || word.ends_with("temperature")
+        || word.ends_with("temperatur")
+        || word == "température";
     if is_temperature {
         return Some(Named::of(Role::Temperature, true));
     }
@@ -165,7 +201,9 @@ fn error(name: &str, lower: &str, words: &[&str]) -> Option<Named> {
     let by_letter = words.len() >= 2
         && matches!(words.first(), Some(&("s" | "u" | "sk" | "uk")))
         && name.contains(['(', '_', '['])
-        && words.get(1).is_some_and(|of| matches!(*of, "k" | "t" | "c" | "ln" | "log" | "x" | "kobs"));
+        && words
+            .get(1)
+            .is_some_and(|of| matches!(*of, "k" | "t" | "c" | "ln" | "log" | "x" | "kobs"));
     let by_delta = lower.starts_with(['δ', '∆']) && words.len() == 1 && name.chars().count() <= 5;
     let by_square_word = matches!(words, ["s", "d"] | ["s", "e"]) || words.starts_with(&["s", "d"]);
     if !(by_sign || by_word || by_letter || by_delta || by_square_word) {
@@ -173,24 +211,41 @@ fn error(name: &str, lower: &str, words: &[&str]) -> Option<Named> {
     }
     let has = |wanted: &[&str]| words.iter().any(|word| wanted.contains(word));
     let interval = has(&["ci", "95"]);
-    let mean = has(&["se", "sem", "stderr"]) || (has(&["standard", "std"]) && has(&["error", "err", "fehler"])) || matches!(words, ["s", "e"]);
-    let deviation = has(&["sd", "std", "stdev", "stddev", "stdabw", "standardabweichung", "deviation", "rsd", "cv", "sigma", "σ"]) || by_letter || by_square_word;
+    let mean = has(&["se", "sem", "stderr"])
+        || (has(&["standard", "std"]) && has(&["error", "err", "fehler"]))
+        || matches!(words, ["s", "e"]);
+    let deviation = has(&[
+        "sd",
+        "std",
+        "stdev",
+        "stddev",
+        "stdabw",
+        "standardabweichung",
+        "deviation",
+        "rsd",
+        "cv",
+        "sigma",
+        "σ",
+    ]) || by_letter
+        || by_square_word;
     let error_is = match (interval, mean, deviation) {
         (true, _, _) => Some(ErrorKind::HalfWidth95),
         (_, true, _) => Some(ErrorKind::StandardError),
         (_, _, true) => Some(ErrorKind::Sd),
         _ => None,
     };
-    // An error of the temperatures is no error of what was measured.
-    let of_temperature = name.contains("(T)") || name.ends_with("_T") || has(&["temp", "temperature", "temperatur"]);
+    // An error of the temperatures is none of what was measured.
+    let of_temperature =
+        name.contains("(T)") || name.ends_with("_T") || has(&["temp", "temperature", "temperatur"]);
     let role = if of_temperature { Role::Ignore } else { Role::Sd };
     let relative = has(&["rsd", "cv", "relative"]) || (!interval && name.contains('%'));
-    Some(Named { error_is, relative, ..Named::of(role, true) })
+    Some(Named { error_is, relative, of_temperature, ..Named::of(role, true) })
 }
 
 /// `c/c0`, `A/A₀`: a fraction of the start.
 fn ratio(lower: &str) -> Option<Named> {
-    let squeezed: String = lower.chars().filter(|c| !matches!(c, ' ' | '(' | ')' | '[' | ']' | '_')).collect();
+    let squeezed: String =
+        lower.chars().filter(|c| !matches!(c, ' ' | '(' | ')' | '[' | ']' | '_')).collect();
     let known = ["c/c0", "c/c₀", "a/a0", "a/a₀", "ca/ca0", "ct/c0", "m/m0", "n/n0"];
     known.iter().any(|ratio| squeezed.starts_with(ratio)).then(|| Named::signal(SignalIs::Left))
 }

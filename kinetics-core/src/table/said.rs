@@ -1,0 +1,89 @@
+//! Sentences about how a whole column was read.
+
+use super::columns::shown;
+use super::values::TimeShape;
+use super::{Choice, Column, Decimal, Separator};
+use crate::problem::shortened;
+use crate::text::decimal::Votes;
+use crate::text::{Reading, read_cell};
+
+fn choice(at: usize, column: &Column, sentence: &str) -> Choice {
+    let header = if column.header.is_empty() {
+        String::new()
+    } else {
+        format!(" ({})", shortened(&column.header))
+    };
+    Choice { sentence: format!("Column {}{header}: {sentence}", at + 1), column: Some(at + 1) }
+}
+
+/// What the decimal mark was taken to be, where anybody could doubt it:
+/// `ambiguous` holds the first cell of each column that either mark explains.
+pub(super) fn decimal_marks(
+    columns: &[Column],
+    votes: &[Votes],
+    ambiguous: &[Option<String>],
+    separator: Separator,
+) -> Vec<Choice> {
+    let mut choices = Vec::new();
+    let mut all = Votes::default();
+    votes.iter().for_each(|votes| all.add(votes));
+    if votes.iter().any(|votes| votes.certain() == Some(Decimal::Comma)) {
+        choices.push(Choice {
+            sentence: "The comma is read as the decimal mark.".to_string(),
+            column: None,
+        });
+    }
+    for (at, column) in columns.iter().enumerate() {
+        let (Some(votes), Some(Some(cell))) = (votes.get(at), ambiguous.get(at)) else { continue };
+        if !column.role.is_numeric() || !votes.doubtful(column.decimal) || votes.certain().is_some()
+        {
+            continue;
+        }
+        let marks = |decimal: Decimal| {
+            if decimal == Decimal::Comma { "decimal commas" } else { "decimal points" }
+        };
+        let why = if all.certain().is_some() {
+            format!("because other numbers have {}", marks(column.decimal))
+        } else if separator == Separator::Semicolon {
+            "because semicolons separate the columns".to_string()
+        } else {
+            "because nothing says that the comma marks decimals".to_string()
+        };
+        let other = column.decimal.other();
+        let sentence = format!(
+            "“{cell}” is read as {}, {why}; with {} it would be {}.",
+            read_as(cell, column.decimal),
+            marks(other),
+            read_as(cell, other)
+        );
+        choices.push(choice(at, column, &sentence));
+    }
+    choices
+}
+
+fn read_as(cell: &str, decimal: Decimal) -> String {
+    match read_cell(cell, decimal) {
+        Reading::Number(number) => shown(number.value),
+        _ => "no number".to_string(),
+    }
+}
+
+/// How times of a clock were read.
+pub(super) fn clocks(columns: &[Column], shapes: &[TimeShape]) -> Vec<Choice> {
+    let mut choices = Vec::new();
+    for (at, (column, shape)) in columns.iter().zip(shapes).enumerate() {
+        let unit = column.unit.as_deref().unwrap_or("h");
+        let sentence = match shape {
+            TimeShape::Numbers => continue,
+            TimeShape::Stamps => format!("times count in {unit} from the first stamp of each run."),
+            TimeShape::Clock { seconds: true } => {
+                format!("times are read as hours:minutes:seconds, in {unit}.")
+            }
+            TimeShape::Clock { seconds: false } => {
+                format!("times are read as hours:minutes, not minutes:seconds, in {unit}.")
+            }
+        };
+        choices.push(choice(at, column, &sentence));
+    }
+    choices
+}
