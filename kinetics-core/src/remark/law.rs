@@ -4,51 +4,8 @@ use super::{Evidence, Remark, Severity};
 use crate::temperature_law::{
     ScatterChoice, Target, curvature as test_curvature, fit, influential,
 };
-use crate::units::EnergyUnit;
+use crate::units::{ConcentrationKind, EnergyUnit, RateUnit};
 use crate::wording::{Figures, fixed, significant};
-
-/// All temperatures below 150 K, and an energy that no reaction in solution has; or a stated
-/// energy that the fit gives when the numbers are taken as °C.
-pub(super) fn celsius_as_kelvin(evidence: &Evidence) -> Option<Remark> {
-    const COLDEST_USUAL_KELVIN: f64 = 150.0;
-    const LOWEST_USUAL_ENERGY: f64 = 15_000.0;
-    const MATCH: f64 = 0.02;
-    let observations = evidence.observations;
-    if !evidence.read_as_kelvin || observations.is_empty() {
-        return None;
-    }
-    let fitted = &evidence.basis.law;
-    let energy = fitted.activation_energy(fitted.reference).0;
-    let all_cold = observations.iter().all(|o| o.temperature.0 < COLDEST_USUAL_KELVIN);
-    let matches_stated = evidence.stated_activation_energy.is_some_and(|stated| {
-        let shifted: Vec<_> = observations
-            .iter()
-            .map(|o| {
-                let temperature = crate::quantity::Kelvin(
-                    o.temperature.0 + crate::constants::ZERO_CELSIUS_KELVIN,
-                );
-                crate::measurements::Observation { temperature, ..*o }
-            })
-            .collect();
-        let as_celsius = fit(fitted.law, &shifted, ScatterChoice::FromResiduals);
-        let close = |found: f64| (found / stated.0 - 1.0).abs() < MATCH;
-        as_celsius.is_ok_and(|law| close(law.activation_energy(law.reference).0)) && !close(energy)
-    });
-    if !((all_cold && energy < LOWEST_USUAL_ENERGY) || matches_stated) {
-        return None;
-    }
-    let decimal = evidence.basis.display.decimal;
-    let kilojoules = significant(energy / 1000.0, 2, decimal);
-    Some(Remark::new(
-        "celsius-as-kelvin",
-        Severity::Caution,
-        format!(
-            "The temperatures were read as K and give an activation energy of only \
-             {kilojoules}\u{a0}kJ/mol: they look like °C, and then every answer is wrong."
-        ),
-        "If they are °C, choose °C in the head of the temperature column.",
-    ))
-}
 
 /// Ea ≤ 0, or an interval of Ea that includes zero.
 pub(super) fn negative_activation_energy(evidence: &Evidence) -> Option<Remark> {
@@ -163,4 +120,62 @@ pub(super) fn influence(evidence: &Evidence) -> Option<Remark> {
         ),
         "Check that run; repeat it, or leave it out with a reason.",
     ))
+}
+
+/// The whole interval of a first-order pre-exponential factor outside what elementary steps have.
+pub(super) fn implausible_pre_exponential_factor(evidence: &Evidence) -> Option<Remark> {
+    const LEAST_PER_SECOND: f64 = 1e9;
+    const MOST_PER_SECOND: f64 = 1e17;
+    let basis = evidence.basis;
+    if basis.base_unit != Some(RateUnit::PER_SECOND) {
+        return None;
+    }
+    let factor = basis.spread(&basis.law.law.ln_pre_exponential_factor(basis.law.reference));
+    let (low, high) = factor.mean?;
+    if high >= LEAST_PER_SECOND && low <= MOST_PER_SECOND {
+        return None;
+    }
+    let decimal = basis.display.decimal;
+    Some(Remark::new(
+        "implausible-a",
+        Severity::Note,
+        format!(
+            "The pre-exponential factor, {} to {} s⁻¹, lies outside the 10⁹ to 10¹⁷ s⁻¹ usual for \
+             a single step: several steps, a transport limit or a wrong unit may be behind it.",
+            significant(low, 2, decimal),
+            significant(high, 2, decimal)
+        ),
+        "Check the units; rely on the law within the data only.",
+    ))
+}
+
+/// A second-order rate constant faster than molecules meet.
+pub(super) fn diffusion_limit(evidence: &Evidence) -> Option<Remark> {
+    const ENCOUNTERS: f64 = 1e10;
+    let basis = evidence.basis;
+    let unit = basis.base_unit?;
+    let molar = unit.concentration.is_some_and(|c| c.kind() == ConcentrationKind::Molar);
+    if unit.order() != 2.0 || !molar {
+        return None;
+    }
+    let asked = evidence
+        .answers
+        .iter()
+        .flat_map(|answer| answer.rows.iter().flatten().chain(std::iter::once(answer)))
+        .filter(|answer| answer.question == "rate-at")
+        .filter_map(|answer| answer.value);
+    let measured = evidence.observations.iter().map(|o| libm::exp(o.ln_rate));
+    let fastest = asked.chain(measured).fold(0.0, f64::max);
+    (fastest > ENCOUNTERS).then(|| {
+        Remark::new(
+            "diffusion-limit",
+            Severity::Caution,
+            format!(
+                "A rate constant of {} L mol⁻¹ s⁻¹ is faster than molecules meet in a liquid \
+                 (about 10¹⁰).",
+                significant(fastest, 2, basis.display.decimal)
+            ),
+            "Check the units; in a liquid the rate levels off there.",
+        )
+    })
 }

@@ -1,10 +1,12 @@
 //! What the tool notices by itself: each remark one sentence with its remedy, fired by one
 //! numeric trigger.
 //!
-//! A remark is one function in [`law`] or [`answers`] and one line in [`CHECKS`].
+//! A remark is one function in a file of its subject and one line in [`CHECKS`].
 
 mod answers;
 mod law;
+mod scatter;
+mod stated;
 
 use serde::Serialize;
 
@@ -68,12 +70,19 @@ pub struct Evidence<'a> {
 
 type Check = fn(&Evidence) -> Option<Remark>;
 
-const CHECKS: [Check; 7] = [
-    law::celsius_as_kelvin,
+const CHECKS: [Check; 14] = [
+    stated::celsius_as_kelvin,
+    stated::log_base,
+    stated::unit_of_energy,
     law::negative_activation_energy,
     law::two_points,
     law::curvature,
     law::influence,
+    law::implausible_pre_exponential_factor,
+    law::diffusion_limit,
+    scatter::excess_scatter,
+    scatter::lack_of_fit,
+    scatter::weighting,
     answers::extrapolation,
     answers::doubling_rule,
 ];

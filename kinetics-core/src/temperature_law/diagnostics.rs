@@ -104,6 +104,88 @@ pub fn influential(fitted: &FittedLaw) -> Vec<Influence> {
     found
 }
 
+/// The F test of the scatter about the law against the scatter between replicates (Draper &
+/// Smith, Applied Regression Analysis, 3rd ed. 1998, §2.1; from memory).
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct LackOfFitTest {
+    /// F with the two degrees of freedom.
+    pub f: f64,
+    /// Temperatures minus parameters.
+    pub numerator: usize,
+    /// Runs minus temperatures.
+    pub denominator: usize,
+    /// Probability of such an F if the law holds.
+    pub p: f64,
+}
+
+/// Tests a law against its replicates at the weights of its fit; none without replicates, with
+/// no more temperatures than parameters, or where replicates are exactly alike.
+pub fn lack_of_fit(fitted: &FittedLaw, observations: &[Observation]) -> Option<LackOfFitTest> {
+    let mut order: Vec<usize> = (0..observations.len()).collect();
+    let temperature = |i: usize| observations[i].temperature.0;
+    order.sort_by(|a, b| temperature(*a).total_cmp(&temperature(*b)));
+    let (mut temperatures, mut pure) = (0, 0.0);
+    for alike in order.chunk_by(|a, b| temperature(*a) == temperature(*b)) {
+        temperatures += 1;
+        let total: f64 = alike.iter().map(|&i| fitted.weights[i]).sum();
+        let weighted = |i: &usize| fitted.weights[*i] * fitted.residuals[*i];
+        let mean = alike.iter().map(weighted).sum::<f64>() / total;
+        pure += alike
+            .iter()
+            .map(|&i| fitted.weights[i] * (fitted.residuals[i] - mean).powi(2))
+            .sum::<f64>();
+    }
+    let denominator = observations.len() - temperatures;
+    let numerator = temperatures.checked_sub(fitted.law.parameters()).filter(|n| *n > 0)?;
+    let all: f64 = fitted.residuals.iter().zip(&fitted.weights).map(|(r, w)| w * r * r).sum();
+    if denominator == 0 || pure <= ROUNDING_SHARE * all {
+        return None;
+    }
+    let f = ((all - pure).max(0.0) / numerator as f64) / (pure / denominator as f64);
+    Some(LackOfFitTest {
+        f,
+        numerator,
+        denominator,
+        p: f_tail(f, numerator as f64, denominator as f64),
+    })
+}
+
+/// The activation energy at T0 in J/mol if k itself, not ln k, scatters alike at all
+/// temperatures: least squares on k by Gauss–Newton from the fitted law; none where it does not
+/// settle or the law has more than two parameters.
+pub fn activation_energy_on_rates(fitted: &FittedLaw, observations: &[Observation]) -> Option<f64> {
+    const MOST_ROUNDS: usize = 100;
+    if fitted.law.parameters() != 2 {
+        return None;
+    }
+    let contrasts: Vec<_> =
+        observations.iter().map(|o| fitted.ln_rate_contrast(o.temperature)).collect();
+    let largest = observations.iter().map(|o| o.ln_rate).fold(f64::NEG_INFINITY, f64::max);
+    let mut parameters = fitted.parameters.clone();
+    for _ in 0..MOST_ROUNDS {
+        // About the present law k ≈ k̂(1 + δ ln k): a weighted fit of the correction.
+        let rates: Vec<f64> =
+            contrasts.iter().map(|c| libm::exp(c.at(&parameters) - largest)).collect();
+        let design = DMatrix::from_fn(observations.len(), 2, |row, column| {
+            contrasts[row].coefficients[column]
+        });
+        let correction: Vec<f64> = observations
+            .iter()
+            .zip(&rates)
+            .map(|(o, rate)| libm::exp(o.ln_rate - largest) / rate - 1.0)
+            .collect();
+        let weights: Vec<f64> = rates.iter().map(|rate| (rate * rate).max(1e-200)).collect();
+        let step = least_squares::fit(&design, &correction, &weights).ok()?;
+        for (parameter, change) in parameters.iter_mut().zip(step.coefficients.iter()) {
+            *parameter += change.clamp(-0.5 * parameter.abs() - 1.0, 0.5 * parameter.abs() + 1.0);
+        }
+        if (step.coefficients[1] / parameters[1]).abs() < 1e-10 {
+            return Some(parameters[1]);
+        }
+    }
+    None
+}
+
 #[cfg(test)]
 #[allow(clippy::unwrap_used)]
 mod tests {
@@ -160,5 +242,48 @@ mod tests {
         let expected = misfit / (own * own + without.components[0].run_variance).sqrt();
         assert!((worst.studentised_residual / expected.abs() - 1.0).abs() < 1e-8);
         assert!(influential(&runs(0.0, 0.0).0).is_empty());
+    }
+
+    #[test]
+    fn replicates_that_agree_with_each_other_and_not_with_the_law_are_seen() {
+        let at = |t: f64, y: f64| Observation { temperature: Kelvin(t), ln_rate: y, ln_sd: None };
+        let good = [
+            at(320.0, -5.0),
+            at(320.0, -4.9),
+            at(330.0, -4.05),
+            at(330.0, -3.95),
+            at(340.0, -3.1),
+            at(340.0, -3.0),
+        ];
+        let law = |runs: &[Observation]| {
+            fit(TemperatureLaw::Arrhenius, runs, ScatterChoice::Automatic).unwrap()
+        };
+        let test = lack_of_fit(&law(&good), &good).unwrap();
+        assert_eq!((test.numerator, test.denominator), (1, 3));
+        assert!(test.p > 0.05);
+        let mut bent = good;
+        for run in &mut bent[2..4] {
+            run.ln_rate += 1.0;
+        }
+        assert!(lack_of_fit(&law(&bent), &bent).unwrap().p < 0.01);
+        assert_eq!(lack_of_fit(&law(&good[..4]), &good[..4]), None);
+    }
+
+    /// Against a search over the energy, the rate at T0 solved for each.
+    #[test]
+    fn the_fit_on_rates_is_the_least_sum_of_squares_in_k() {
+        let (fitted, observations) = runs(0.0, 0.3);
+        let found = activation_energy_on_rates(&fitted, &observations).unwrap();
+        let misfit = |energy: f64| {
+            let shape =
+                |o: &Observation| (fitted.ln_rate_contrast(o.temperature).at(&[0.0, energy])).exp();
+            let (above, below) = observations.iter().fold((0.0, 0.0), |(a, b), o| {
+                (a + o.ln_rate.exp() * shape(o), b + shape(o).powi(2))
+            });
+            let scale = above / below;
+            observations.iter().map(|o| (o.ln_rate.exp() - scale * shape(o)).powi(2)).sum::<f64>()
+        };
+        assert!(misfit(found) < misfit(found * 1.000_1));
+        assert!(misfit(found) < misfit(found * 0.999_9));
     }
 }

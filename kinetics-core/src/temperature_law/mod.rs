@@ -23,7 +23,10 @@ mod likelihood;
 mod scatter;
 mod thermometer;
 
-pub use diagnostics::{CurvatureTest, Influence, curvature, influential};
+pub use diagnostics::{
+    CurvatureTest, Influence, LackOfFitTest, activation_energy_on_rates, curvature, influential,
+    lack_of_fit,
+};
 pub use fitted::{Component, FittedLaw, Kernel, Target};
 pub use inverse::TemperatureSet;
 pub use likelihood::aicc;
