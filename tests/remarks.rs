@@ -150,8 +150,10 @@ fn lack_of_fit() {
 fn weighting() {
     // Bent upwards alike at both ends: the line in ln k does not tilt, that in k follows the hot
     // end alone.
+    let quiet = [(50.0, 0.03), (55.0, -0.03), (60.0, 0.0), (65.0, 0.01), (70.0, -0.01), (75.0, 0.0)];
     let bent = |size: f64| {
-        paste(90.0, 0.05, "1/h", &SIX.map(|(t, e)| (t, e + size * ((t - 62.5) / 12.5_f64).powi(2))))
+        let runs = quiet.map(|(t, e)| (t, e + size * ((t - 62.5) / 12.5_f64).powi(2)));
+        paste(90.0, 0.05, "1/h", &runs)
     };
     check("weighting", (&bent(0.1), json!({})), (&bent(0.0), json!({})));
 }
