@@ -66,6 +66,8 @@ pub struct Wording {
     pub standing: String,
     /// "if another law holds: 32 to 67 h"; empty without rivals.
     pub rival: String,
+    /// "if the thermometer is off by as much as stated: 41 to 47 h"; empty without an offset.
+    pub offset: String,
 }
 
 /// One answer, in the terms of the findings document.
@@ -176,6 +178,8 @@ pub struct Basis {
     pub law: FittedLaw,
     /// Laws that the data do not exclude.
     pub rivals: Vec<FittedLaw>,
+    /// The law with the thermometer off to either side by its stated offset.
+    pub shifted: Vec<FittedLaw>,
     /// Order of the rate law.
     pub order: Order,
     /// Unit of k internally; none where the data do not say it.
@@ -320,7 +324,7 @@ pub fn whom(bound: Target) -> &'static str {
 pub fn sentence(wording: &Wording, side: Side) -> String {
     let pause = if side == Side::Two { ";" } else { "" };
     let mut sentence = format!("{}{pause} {}.", wording.headline, wording.scatter);
-    for part in [&wording.standing, &wording.rival] {
+    for part in [&wording.standing, &wording.rival, &wording.offset] {
         if !part.is_empty() {
             sentence.push(' ');
             sentence.push_str(&capitalised(part));

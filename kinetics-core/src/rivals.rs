@@ -2,7 +2,7 @@
 //! same scatter choice and ranked by AICc.
 
 use crate::measurements::Observation;
-use crate::temperature_law::{FittedLaw, ScatterChoice, TemperatureLaw, aicc, fit};
+use crate::temperature_law::{FittedLaw, Settings, TemperatureLaw, aicc, fit};
 
 /// A law above the best by more than this in AICc counts as excluded (Burnham & Anderson 2002,
 /// §2.6, where 4 to 7 is "considerably less" and above 10 "essentially no" support).
@@ -42,8 +42,9 @@ const CANDIDATES: [TemperatureLaw; 4] = [
 pub fn rivals(
     chosen: &FittedLaw,
     observations: &[Observation],
-    choice: ScatterChoice,
+    settings: impl Into<Settings>,
 ) -> Vec<Rival> {
+    let settings = settings.into();
     if !chosen.has_intervals() || observations.is_empty() {
         return Vec::new();
     }
@@ -65,7 +66,7 @@ pub fn rivals(
     let mut found: Vec<Rival> = laws
         .into_iter()
         .filter_map(|(law, score)| {
-            let law = fit(law, observations, choice).ok()?;
+            let law = fit(law, observations, settings).ok()?;
             let delta_aicc = score.map(|score| score - best);
             let weight = delta_aicc.map(|delta| libm::exp(-0.5 * delta) / total);
             Some(Rival { law, delta_aicc, weight })
@@ -80,6 +81,7 @@ pub fn rivals(
 mod tests {
     use super::*;
     use crate::quantity::Kelvin;
+    use crate::temperature_law::ScatterChoice;
 
     fn rivals_of(points: usize, bend: f64) -> Vec<Rival> {
         let noise = [0.03, -0.02, 0.01, -0.03, 0.02, 0.015, -0.02, 0.03, -0.01, -0.02];

@@ -289,6 +289,7 @@ fn basis(runs: &[Observation], scatter: ScatterChoice) -> Option<Basis> {
     Some(Basis {
         law,
         rivals: Vec::new(),
+        shifted: Vec::new(),
         order: Order::FIRST,
         base_unit: Some(RateUnit::PER_SECOND),
         shown_unit: Some(RateUnit::PER_SECOND),

@@ -1,8 +1,8 @@
-//! What was observed, typed: runs with a temperature and a rate constant.
+//! What was observed, typed: runs with a temperature and what tells their rate.
 
 mod rates;
 
-pub use rates::{LeftOut, Rates, Run, rates};
+pub use rates::{LeftOut, Measurand, Rates, Run, rates};
 
 use crate::quantity::Kelvin;
 

@@ -19,6 +19,7 @@ use serde_json::{Map, Value};
 
 use crate::answer::{Answer, Basis, Refusal, Side, sentence};
 use crate::quantity::Quantity;
+use crate::temperature_law::FittedLaw;
 
 /// A kind of question.
 #[derive(Debug, Clone, Copy)]
@@ -135,23 +136,38 @@ fn answer_one(question: &Question, blanks: &Blanks, basis: &Basis) -> Result<Ans
             "Ask for a temperature nearer to the measured ones.",
         ));
     }
-    let under_rivals: Vec<f64> = basis
-        .rivals
-        .iter()
-        .filter_map(|law| {
-            let rival = Basis { law: law.clone(), rivals: Vec::new(), ..basis.clone() };
-            (question.answer)(blanks, &rival).ok()?.key_number()
-        })
-        .filter(|number| number.is_finite())
-        .collect();
-    answer.rival_low = under_rivals.iter().copied().reduce(f64::min);
-    answer.rival_high = under_rivals.iter().copied().reduce(f64::max);
-    if let Some((low, high)) = answer.rival_low.zip(answer.rival_high) {
+    if let Some((low, high)) = under(question, blanks, basis, &basis.rivals) {
+        (answer.rival_low, answer.rival_high) = (Some(low), Some(high));
         answer.wording.rival =
             format!("if another law holds: {}", (question.range)(low, high, basis));
-        answer.sentence = sentence(&answer.wording, answer.side.unwrap_or(Side::Two));
     }
+    if let Some((low, high)) = under(question, blanks, basis, &basis.shifted) {
+        answer = answer.with_detail("offset_low", Some(low)).with_detail("offset_high", Some(high));
+        answer.wording.offset = format!(
+            "if the thermometer is off by as much as stated: {}",
+            (question.range)(low, high, basis)
+        );
+    }
+    answer.sentence = sentence(&answer.wording, answer.side.unwrap_or(Side::Two));
     Ok(answer)
+}
+
+/// The least and largest key number of a question if other laws hold; none without any.
+fn under(
+    question: &Question,
+    blanks: &Blanks,
+    basis: &Basis,
+    laws: &[FittedLaw],
+) -> Option<(f64, f64)> {
+    let numbers = laws.iter().filter_map(|law| {
+        let (rivals, shifted) = (Vec::new(), Vec::new());
+        let other = Basis { law: law.clone(), rivals, shifted, ..basis.clone() };
+        (question.answer)(blanks, &other).ok()?.key_number().filter(|number| number.is_finite())
+    });
+    numbers.fold(None, |range, number| {
+        let (low, high) = range.unwrap_or((number, number));
+        Some((low.min(number), high.max(number)))
+    })
 }
 
 /// A question with the examples of its blanks filled in, as an entry of `asked`.

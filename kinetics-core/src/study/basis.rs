@@ -1,21 +1,21 @@
-//! What answers will stand on: the law fitted under the study's assumptions, or the reason why
-//! there is none.
+//! What answers will stand on: the law under the study's assumptions, or the reason why there is
+//! none.
 
-use super::document::{LawChoice, OrderChoice, Study};
-use crate::answer::{Basis, InitialConcentration, Refusal};
+use super::assumptions::{
+    display, initial_concentration, level, order, stated_order, temperature_law,
+};
+use super::document::Study;
+use super::learning::{Learnt, learn};
+use crate::answer::{Basis, Refusal};
 use crate::grounds::Support;
-use crate::measurements::{Observation, Rates};
-use crate::quantity::Kelvin;
+use crate::measurements::Rates;
+use crate::quantity::Quantity;
 use crate::rate_law::Order;
 use crate::remark::{Remark, Severity};
-use crate::rivals::{Rival, rivals};
+use crate::rivals::Rival;
 use crate::table::Form;
-use crate::temperature_law::{FittedLaw, LawError, ScatterChoice, TemperatureLaw, fit};
+use crate::temperature_law::{FittedLaw, TemperatureLaw};
 use crate::units::{ConcentrationKind, RateUnit, TimeUnit};
-use crate::wording::Display;
-
-/// The level of intervals where a study does not choose one.
-pub(super) const USUAL_LEVEL: f64 = 0.95;
 
 /// A basis or a refusal, and what was noticed on the way.
 pub(super) struct Ground {
@@ -25,60 +25,62 @@ pub(super) struct Ground {
     pub remarks: Vec<Remark>,
     pub order: Option<f64>,
     pub rivals: Vec<Rival>,
+    pub alternatives: Vec<FittedLaw>,
 }
 
-/// Lays the ground for answers.
-pub(super) fn lay(study: &Study, rates: &Rates) -> Ground {
+/// Lays the ground for answers; runs that were not rate constants become such on the way.
+pub(super) fn lay(study: &Study, rates: &mut Rates) -> Ground {
     let mut remarks = version_remark(study);
     let outcome = build(study, rates, &mut remarks);
-    let order = stated_order(study).or(unit_of(study, rates).map(|u| u.order()));
+    let stated = stated_order(study).or(unit_of(study, rates).map(RateUnit::order));
     match outcome {
-        Ok((basis, rivals)) => Ground {
-            rivals,
+        Ok((basis, learnt)) => Ground {
             refusal: Refusal::new("", ""),
-            order: basis.base_unit.map(|_| basis.order.value()).or(order),
+            order: basis.base_unit.map(|_| basis.order.value()).or(stated),
             basis: Some(basis),
             remarks,
+            rivals: learnt.rivals,
+            alternatives: learnt.alternatives,
         },
-        Err(refusal) => Ground { basis: None, refusal, remarks, order, rivals: Vec::new() },
+        Err(refusal) => Ground {
+            basis: None,
+            refusal,
+            remarks,
+            order: stated,
+            rivals: Vec::new(),
+            alternatives: Vec::new(),
+        },
     }
-}
-
-/// The study's level of intervals.
-pub(super) fn level(study: &Study) -> Result<f64, Refusal> {
-    let level = study.assumed.level.unwrap_or(USUAL_LEVEL);
-    if (0.5..1.0).contains(&level) {
-        return Ok(level);
-    }
-    Err(Refusal::new(
-        format!("The level {level} of the intervals is not between 0.5 and 1."),
-        "Write it as a fraction, for example 0.95.",
-    ))
-}
-
-/// A law, where it holds, and the laws beside it.
-struct Learnt {
-    law: FittedLaw,
-    support: Support,
-    rivals: Vec<Rival>,
 }
 
 fn build(
     study: &Study,
-    rates: &Rates,
+    rates: &mut Rates,
     remarks: &mut Vec<Remark>,
-) -> Result<(Basis, Vec<Rival>), Refusal> {
+) -> Result<(Basis, Learnt), Refusal> {
     let level = level(study)?;
     let law = temperature_law(study)?;
-    let unit = unit_of(study, rates);
-    let order = order(study, unit, remarks)?;
-    let Learnt { law: fitted, support, rivals } = match study.measured.form {
+    let order = order(study, unit_of(study, rates), remarks)?;
+    let learnt = match study.measured.form {
         Form::KnownLaw => {
             let law = known_law(study, law)?;
-            let support = Support::of_known_law(law.reference);
-            Learnt { law, support, rivals: Vec::new() }
+            Learnt {
+                support: Support::of_known_law(law.reference),
+                law,
+                rivals: Vec::new(),
+                alternatives: Vec::new(),
+                shifted: Vec::new(),
+            }
         }
-        Form::Rates => fit_runs(study, rates, law, remarks)?,
+        Form::Rates => learn(study, rates, law, remarks)?,
+        Form::Times => {
+            times_to_rates(study, rates, order)?;
+            learn(study, rates, law, remarks)?
+        }
+        Form::HeatRates => {
+            heat_to_rates(study, rates, order)?;
+            learn(study, rates, law, remarks)?
+        }
         other => {
             return Err(Refusal::new(
                 format!("Data of the form “{}” cannot be evaluated yet.", other.code()),
@@ -86,113 +88,74 @@ fn build(
             ));
         }
     };
-    let not_excluded = rivals.iter().filter(|r| !r.is_excluded()).map(|r| r.law.clone()).collect();
+    let unit = unit_of(study, rates);
+    let not_excluded = learnt.rivals.iter().filter(|rival| !rival.is_excluded());
     let basis = Basis {
-        law: fitted,
-        rivals: not_excluded,
+        law: learnt.law.clone(),
+        rivals: not_excluded.map(|rival| rival.law.clone()).collect(),
+        shifted: learnt.shifted.clone(),
         order,
         base_unit: unit.map(RateUnit::base),
         shown_unit: unit,
         initial_concentration: initial_concentration(study, unit, order)?,
-        support,
+        support: learnt.support.clone(),
         level,
         display: display(study),
     };
-    Ok((basis, rivals))
+    Ok((basis, learnt))
 }
 
-fn fit_runs(
-    study: &Study,
-    rates: &Rates,
-    law: TemperatureLaw,
-    remarks: &mut Vec<Remark>,
-) -> Result<Learnt, Refusal> {
-    let observations: Vec<Observation> = rates.runs.iter().map(|r| r.observation).collect();
-    let mut choice = study.assumed.scatter.unwrap_or_default();
-    let uses_errors = choice != ScatterChoice::FromResiduals;
-    if rates.errors_missing > 0 && uses_errors {
-        remarks.push(Remark::new(
-            "errors-incomplete",
-            Severity::Caution,
-            format!(
-                "{} of {} runs state no error, so the stated errors are not used: the intervals \
-                 come from the residuals.",
-                rates.errors_missing,
-                rates.runs.len()
-            ),
-            "State an error for every run, or leave out the runs without one.",
-        ));
-        choice = ScatterChoice::FromResiduals;
+/// Times to one stated extent: ln k = ln θ_X − ln t.
+fn times_to_rates(study: &Study, rates: &mut Rates, order: Order) -> Result<(), Refusal> {
+    if rates.runs.is_empty() {
+        return Ok(());
     }
-    let no_errors = observations.iter().all(|o| o.ln_sd.is_none());
-    let asks_for_errors =
-        matches!(choice, ScatterChoice::AsStated | ScatterChoice::AsStatedPlusRunToRun);
-    if no_errors && asks_for_errors && !observations.is_empty() {
-        remarks.push(Remark::new(
-            "errors-incomplete",
-            Severity::Caution,
-            "The scatter choice needs stated errors and there are none: the intervals come from \
-             the residuals.",
-            "Paste a column of errors, or choose the scatter of the residuals.",
-        ));
-        choice = ScatterChoice::FromResiduals;
-    }
-    let fitted = fit(law, &observations, choice).map_err(|error| law_refusal(&error))?;
-    let temperatures: Vec<Kelvin> = observations.iter().map(|o| o.temperature).collect();
-    let stated = !no_errors && choice != ScatterChoice::FromResiduals;
-    let support = Support::of_runs(&temperatures, stated)
-        .ok_or_else(|| law_refusal(&LawError::NothingMeasured))?;
-    let rivals = rivals(&fitted, &observations, choice);
-    if rivals.iter().any(|r| r.delta_aicc.is_none()) {
-        remarks.push(Remark::new(
-            "rivals-unranked",
-            Severity::Note,
-            "Too few runs tell the temperature laws apart: none is ranked and none excluded.",
-            "Five runs or more allow a ranking.",
-        ));
-    }
-    Ok(Learnt { law: fitted, support, rivals })
-}
-
-fn law_refusal(error: &LawError) -> Refusal {
-    match error {
-        LawError::NothingMeasured => Refusal::new(
-            "Nothing is measured yet.",
-            "Paste rate constants at two temperatures or more, or state a known law.",
-        ),
-        LawError::TooFewTemperatures { needed, .. } => Refusal::new(
-            format!("There is no law yet: {error}."),
-            format!("Measure at {needed} temperatures or more, or state a known law."),
-        ),
-        LawError::ErrorsMissing { .. } => Refusal::new(
-            format!("There is no law: {error}."),
-            "State an error for every run, or choose the scatter of the residuals.",
-        ),
-        LawError::NotComputable => Refusal::new(
-            format!("There is no law: {error}."),
-            "Check the units and the errors of the runs.",
-        ),
-    }
-}
-
-fn temperature_law(study: &Study) -> Result<TemperatureLaw, Refusal> {
-    Ok(match study.assumed.temperature_law.unwrap_or_default() {
-        LawChoice::Arrhenius => TemperatureLaw::Arrhenius,
-        LawChoice::Eyring => TemperatureLaw::Eyring,
-        LawChoice::LogLinear => TemperatureLaw::LogLinear,
-        LawChoice::Curved => TemperatureLaw::Curved,
-        LawChoice::ArrheniusWithPower => {
-            let power = study.assumed.power.filter(|m| m.is_finite()).ok_or_else(|| {
-                Refusal::new(
-                    "The law with a power of T needs that power.",
-                    "State the power, for example 0.5.",
-                )
-            })?;
-            TemperatureLaw::ArrheniusWithPower(power)
+    let needs = "State the part that is gone at these times, for example 5 %.";
+    let extent =
+        study.measured.extent.as_ref().ok_or_else(|| {
+            Refusal::new("The times do not say to which extent they belong.", needs)
+        })?;
+    let initial = initial_concentration(study, None, order)?;
+    let fraction = match (extent.fraction(), extent.concentration(), initial) {
+        (Ok(fraction), ..) => fraction,
+        (_, Ok((gone, kind)), Some(initial)) if kind == initial.kind => gone / initial.value,
+        _ => {
+            return Err(Refusal::new(
+                format!("The extent {extent} is no part of a stated initial concentration."),
+                needs,
+            ));
         }
-    })
+    };
+    let ln_theta = order
+        .ln_theta(fraction, initial.map(|c| c.value))
+        .map_err(|error| Refusal::new(format!("The times give no rate: {error}."), needs))?;
+    let kind = initial.map_or(ConcentrationKind::Molar, |c| c.kind);
+    rates.shift(ln_theta, RateUnit::for_order(order.value(), kind.base(), TimeUnit::Second));
+    Ok(())
 }
 
+/// Heat rates at the start: k = q/Q for first order, where the heat of reaction Q is stated;
+/// without it k has no unit, and what needs one is refused.
+fn heat_to_rates(study: &Study, rates: &mut Rates, order: Order) -> Result<(), Refusal> {
+    let Some(stated) = study.heat.as_ref().and_then(|heat| heat.heat_of_reaction.as_ref()) else {
+        return Ok(());
+    };
+    let heat = stated.joules_per_kilogram().map_err(|error| {
+        Refusal::new(format!("The heat of reaction cannot be used: {error}."), "Correct it.")
+    })?;
+    if !(heat > 0.0) {
+        return Err(Refusal::new(
+            "The heat of reaction is not above zero.",
+            "Write heat that is set free as a positive number.",
+        ));
+    }
+    if order == Order::FIRST {
+        rates.shift(-libm::log(heat), RateUnit::PER_SECOND);
+    }
+    Ok(())
+}
+
+/// The law that a study states instead of runs.
 fn known_law(study: &Study, law: TemperatureLaw) -> Result<FittedLaw, Refusal> {
     let missing = |what: &str| {
         Refusal::new(
@@ -210,12 +173,12 @@ fn known_law(study: &Study, law: TemperatureLaw) -> Result<FittedLaw, Refusal> {
 
     let kelvin = temperature.kelvin().map_err(|e| unusable(e.to_string()))?;
     let joules = |value: f64| {
-        crate::quantity::Quantity::new(value, energy.unit.as_str())
+        Quantity::new(value, energy.unit.as_str())
             .joules_per_mole()
             .map(|j| j.0)
             .map_err(|e| unusable(e.to_string()))
     };
-    let (k, _) = crate::quantity::Quantity::new(rate.value, rate.unit.as_str())
+    let (k, _) = Quantity::new(rate.value, rate.unit.as_str())
         .rate_constant()
         .map_err(|e| unusable(e.to_string()))?;
     if !(k > 0.0) {
@@ -240,92 +203,6 @@ fn unit_of(study: &Study, rates: &Rates) -> Option<RateUnit> {
             RateUnit::parse(unit).ok()
         }
         _ => rates.unit,
-    }
-}
-
-fn stated_order(study: &Study) -> Option<f64> {
-    match study.assumed.order {
-        Some(OrderChoice::Number(order)) => Some(order),
-        _ => None,
-    }
-}
-
-/// The order of reaction: stated, else that of k's unit, else one.
-fn order(
-    study: &Study,
-    unit: Option<RateUnit>,
-    remarks: &mut Vec<Remark>,
-) -> Result<Order, Refusal> {
-    let from_unit = unit.map(|u| u.order());
-    let Some(stated) = stated_order(study).or(from_unit) else { return Ok(Order::FIRST) };
-    let order = Order::new(stated).ok_or_else(|| {
-        Refusal::new(
-            format!("The order {stated} is not a number from zero up."),
-            "State an order of 0 or more, or let the unit of k say it.",
-        )
-    })?;
-    let Some(unit) = unit else { return Ok(order) };
-    if (unit.order() - stated).abs() < 1e-9 {
-        return Ok(order);
-    }
-    let says = Order::new(unit.order()).map_or_else(|| "no order known here".into(), Order::name);
-    let sentence = format!(
-        "The order is stated as {stated}, but the unit {} is that of {says}.",
-        unit.symbol()
-    );
-    let example = match unit.concentration {
-        Some(concentration) => RateUnit::for_order(stated, concentration, unit.time),
-        None => {
-            let molar = ConcentrationKind::Molar.base();
-            RateUnit::for_order(stated, molar, TimeUnit::Second)
-        }
-    };
-    let remedy = format!(
-        "Correct the order, or the unit of k (order {stated} has a unit such as {}).",
-        example.symbol()
-    );
-    remarks.push(Remark::new("order-and-unit", Severity::Stop, sentence.clone(), remedy.clone()));
-    Err(Refusal::new(sentence, remedy))
-}
-
-/// The initial concentration in the base unit of k's concentration; 100 % where k counts in %.
-fn initial_concentration(
-    study: &Study,
-    unit: Option<RateUnit>,
-    order: Order,
-) -> Result<Option<InitialConcentration>, Refusal> {
-    let in_rate = unit.and_then(|u| u.concentration).map(|c| c.kind());
-    let Some(stated) = &study.measured.initial_concentration else {
-        let whole = InitialConcentration { value: 100.0, kind: ConcentrationKind::Percent };
-        return Ok((in_rate == Some(ConcentrationKind::Percent)).then_some(whole));
-    };
-    let correct = "Correct the initial concentration.";
-    let (value, kind) = stated.concentration().map_err(|error| {
-        Refusal::new(format!("The initial concentration cannot be used: {error}."), correct)
-    })?;
-    if !(value > 0.0) {
-        return Err(Refusal::new("The initial concentration is not above zero.", correct));
-    }
-    if order.needs_initial_concentration() && in_rate.is_some_and(|expected| expected != kind) {
-        let expected = in_rate.map(|k| k.base().symbol()).unwrap_or_default();
-        return Err(Refusal::new(
-            format!(
-                "The initial concentration, {stated}, does not convert into {expected}, as k has it."
-            ),
-            "State both in the same kind of concentration.",
-        ));
-    }
-    Ok(Some(InitialConcentration { value, kind }))
-}
-
-fn display(study: &Study) -> Display {
-    let usual = Display::default();
-    let chosen = &study.display;
-    Display {
-        temperature: chosen.temperature.unwrap_or(usual.temperature),
-        energy: chosen.energy.unwrap_or(usual.energy),
-        time: chosen.time.as_deref().and_then(|unit| TimeUnit::parse(unit).ok()),
-        decimal: chosen.decimal.map_or(usual.decimal, |d| d.mark()),
     }
 }
 

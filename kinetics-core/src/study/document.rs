@@ -52,6 +52,9 @@ pub struct Study {
     pub measured: Measured,
     /// What is assumed about it.
     pub assumed: Assumed,
+    /// Heats, for what they decide.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub heat: Option<HeatData>,
     /// How to show numbers.
     pub display: DisplayChoice,
     /// Questions, each an object with its code and its blanks.
@@ -93,6 +96,9 @@ pub struct Measured {
     /// Initial concentration, for orders other than one.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub initial_concentration: Option<Quantity>,
+    /// Times: the part gone at each of them.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub extent: Option<Quantity>,
     /// An activation energy from elsewhere, to compare with.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub stated_activation_energy: Option<Quantity>,
@@ -151,6 +157,21 @@ pub struct StatedQuantity {
     pub sd: Option<f64>,
     /// The unit.
     pub unit: String,
+}
+
+/// Heat of reaction and heat capacity.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize, Default)]
+#[serde(default)]
+pub struct HeatData {
+    /// Heat set free per mass.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub heat_of_reaction: Option<Quantity>,
+    /// Heat capacity per mass.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub heat_capacity: Option<Quantity>,
+    /// Keys that this version does not know.
+    #[serde(flatten)]
+    pub other: Map<String, Value>,
 }
 
 /// Uncertainty of the temperatures.

@@ -1,11 +1,12 @@
 //! From a study to its findings: every floor of the house in turn.
 
+use super::assumptions::{USUAL_LEVEL, level};
 use super::basis::{self, Ground};
 use super::document::Study;
 use super::findings::{Findings, LawFindings, Read, RunFindings};
 use super::record;
 use crate::answer::{Answer, Basis};
-use crate::measurements::{LeftOut, Observation, Rates, rates};
+use crate::measurements::{LeftOut, Measurand, Observation, Rates, rates};
 use crate::question;
 use crate::remark::{Evidence, Remark, remarks};
 use crate::table::{ColumnHint, Form, Hints, Table, read_table};
@@ -64,12 +65,18 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         .iter()
         .map(|e| LeftOut { row: e.row, reason: e.reason.clone() })
         .collect();
-    let rates = match study.measured.form {
-        Form::Rates => rates(table, &excluded, study.measured.error_is),
-        _ => Rates::default(),
+    let measurand = match study.measured.form {
+        Form::Rates => Some(Measurand::RateConstant),
+        Form::Times => Some(Measurand::Time),
+        Form::HeatRates => Some(Measurand::HeatRate),
+        Form::Progress | Form::Peaks | Form::KnownLaw => None,
     };
+    let mut rates = measurand.map_or_else(Rates::default, |measurand| {
+        rates(table, measurand, &excluded, study.measured.error_is)
+    });
 
-    let Ground { basis, refusal, mut remarks, order, rivals } = basis::lay(study, &rates);
+    let Ground { basis, refusal, mut remarks, order, rivals, alternatives } =
+        basis::lay(study, &mut rates);
     let answers: Vec<Answer> = study
         .asked
         .iter()
@@ -78,9 +85,9 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
     remarks.extend(own_remarks(study, &rates, basis.as_ref(), &answers));
     remarks.sort_by_key(|remark| remark.severity);
 
-    let level = basis::level(study).unwrap_or(basis::USUAL_LEVEL);
+    let level = level(study).unwrap_or(USUAL_LEVEL);
     let mut problems = study.problems.clone();
-    if study.measured.form == Form::Rates {
+    if study.measured.form != Form::KnownLaw {
         problems.extend(table.problems.iter().cloned());
         problems.extend(rates.problems.iter().cloned());
     }
@@ -89,7 +96,9 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         read: read(study, table, &rates, basis.as_ref(), order),
         problems,
         runs: runs(&rates, basis.as_ref(), order, level),
-        law: basis.as_ref().map(|basis| LawFindings::of(basis, &study.measured.assumed)),
+        law: basis
+            .as_ref()
+            .map(|basis| LawFindings::of(basis, &alternatives, &study.measured.assumed)),
         one_stage: None,
         rivals: rivals.iter().map(|rival| super::Rival::of(rival, order)).collect(),
         remarks,

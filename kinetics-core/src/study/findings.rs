@@ -11,7 +11,7 @@ use crate::numeric::distributions::normal_quantile;
 use crate::problem::Problem;
 use crate::remark::Remark;
 use crate::table::{Column, Decimal, Form};
-use crate::temperature_law::{Component, Contrast, Scatter, Target};
+use crate::temperature_law::{Component, Contrast, FittedLaw, Scatter, Target};
 use crate::units::ConcentrationKind;
 
 /// Everything found in a study.
@@ -189,6 +189,37 @@ pub struct LawFindings {
     pub chi_squared: Option<f64>,
     /// Its upper tail probability.
     pub chi_squared_p: Option<f64>,
+    /// What the other scatter choices would give.
+    pub other_scatter: Vec<OtherScatter>,
+}
+
+/// The law under another scatter choice.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct OtherScatter {
+    /// Which.
+    pub scatter: Scatter,
+    /// Apparent activation energy at the T0 of the law itself.
+    pub activation_energy: Estimate,
+    /// Width of that interval ÷ width under the chosen scatter.
+    pub width_ratio: Option<f64>,
+}
+
+impl OtherScatter {
+    fn of(law: &FittedLaw, basis: &Basis) -> Self {
+        let reference = basis.law.reference;
+        let estimate = |law: &FittedLaw| {
+            let target = law.law.activation_energy(reference, law.reference);
+            let of_law = Basis { law: law.clone(), ..basis.clone() };
+            Estimate::of(&target, &of_law, "J/mol")
+        };
+        let width = |estimate: &Estimate| Some(estimate.high? - estimate.low?);
+        let activation_energy = estimate(law);
+        let width_ratio = width(&activation_energy)
+            .zip(width(&estimate(&basis.law)))
+            .map(|(other, own)| other / own)
+            .filter(|ratio| ratio.is_finite());
+        Self { scatter: law.scatter, activation_energy, width_ratio }
+    }
 }
 
 /// What the data say if the run-to-run scatter is known.
@@ -221,7 +252,7 @@ pub struct Record {
 
 impl LawFindings {
     /// What there is to say of a basis' law.
-    pub(super) fn of(basis: &Basis, assumed: &[String]) -> Self {
+    pub(super) fn of(basis: &Basis, alternatives: &[FittedLaw], assumed: &[String]) -> Self {
         let fitted = &basis.law;
         let (law, reference) = (fitted.law, fitted.reference);
         let rate_unit = basis.base_unit.map(|unit| unit.code()).unwrap_or_default();
@@ -262,6 +293,7 @@ impl LawFindings {
             mixture,
             chi_squared: fitted.chi_squared.map(|c| c.0),
             chi_squared_p: fitted.chi_squared.map(|c| c.1),
+            other_scatter: alternatives.iter().map(|law| OtherScatter::of(law, basis)).collect(),
             rate_unit,
         }
     }
@@ -285,12 +317,13 @@ fn first_two(covariance: &DMatrix<f64>) -> Vec<Vec<f64>> {
 
 /// A run's rate constant with the interval of its stated error (normal on the ln scale).
 pub(super) fn stated_rate(run: &Run, unit: &str, level: f64) -> Estimate {
+    let rate_constant = libm::exp(run.observation.ln_rate);
     let half_width = run.observation.ln_sd.map(|sd| sd * normal_quantile(0.5 * (1.0 + level)));
     Estimate {
-        value: run.rate_constant,
-        standard_error: run.observation.ln_sd.map(|sd| sd * run.rate_constant),
-        low: half_width.map(|h| run.rate_constant * libm::exp(-h)),
-        high: half_width.map(|h| run.rate_constant * libm::exp(h)),
+        value: rate_constant,
+        standard_error: run.observation.ln_sd.map(|sd| sd * rate_constant),
+        low: half_width.map(|h| rate_constant * libm::exp(-h)),
+        high: half_width.map(|h| rate_constant * libm::exp(h)),
         level,
         unit: unit.into(),
         why: half_width.is_none().then_some(WhyNoInterval::NoScatterKnown),

@@ -1,13 +1,15 @@
 //! A study: everything about one reaction, as a file and as findings.
 
+mod assumptions;
 mod basis;
 mod document;
 mod evaluate;
 mod findings;
+mod learning;
 mod record;
 
 pub use document::{
-    Assumed, ColumnChoice, DisplayChoice, Excluded, LawChoice, Measured, OrderChoice,
+    Assumed, ColumnChoice, DisplayChoice, Excluded, HeatData, LawChoice, Measured, OrderChoice,
     StatedQuantity, Study, StudyError, Thermometer, VERSION,
 };
 pub use evaluate::{Evaluation, Prepared, evaluate, evaluate_prepared, hints, prepare};
