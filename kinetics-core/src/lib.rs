@@ -18,6 +18,7 @@ pub mod wording;
 
 // 2 · from text to a table
 pub mod text;
+
 pub mod table;
 
 // 3 · what was observed

@@ -57,7 +57,9 @@ pub(super) fn decide(
     }
     let mut choices = roles.choices;
     choices.append(&mut deciding.choices);
-    Columns { columns, form: roles.form, problems: deciding.problems, choices }
+    let mut problems = roles.problems;
+    problems.append(&mut deciding.problems);
+    Columns { columns, form: roles.form, problems, choices }
 }
 
 struct Deciding<'a> {

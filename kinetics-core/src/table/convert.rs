@@ -2,6 +2,7 @@
 //! decided.
 
 use super::columns::rate_unit;
+use super::header::without_humidity;
 use super::tally::Tally;
 use super::values::TimeShape;
 use super::{Column, Content, Form, Role, Row};
@@ -160,23 +161,29 @@ impl Converter {
             }
             TimeShape::Numbers => {}
         }
-        let mut reading = read_cell(cell, plan.decimal);
+        let (decimal, role) = (plan.decimal, plan.role);
+        let mut reading = read_cell(cell, decimal);
+        if reading == Reading::Text
+            && role == Role::Temperature
+            && let Some(rest) = without_humidity(cell)
+        {
+            reading = read_cell(&rest, decimal);
+            self.tally(column, |tally| tally.humidity.count(row.line, cell));
+        }
         if reading == Reading::Text
             && !self.strict
-            && evidence(cell) == Evidence::Certain(plan.decimal.other())
+            && evidence(cell) == Evidence::Certain(decimal.other())
         {
-            reading = read_cell(cell, plan.decimal.other());
-            if reading != Reading::Text
-                && let Some(tally) = self.tallies.get_mut(column)
-            {
-                tally.other_mark.count(row.line, cell);
+            reading = read_cell(cell, decimal.other());
+            if reading != Reading::Text {
+                self.tally(column, |tally| tally.other_mark.count(row.line, cell));
             }
         }
         match reading {
             Reading::Number(number) => self.scaled(&number, cell, column, row),
             Reading::Below(limit) => {
                 self.tally(column, |tally| tally.below.count(row.line, cell));
-                Content::Below(limit.map(|limit| limit * self.multiplier(column)))
+                Content::Below(limit.map(|limit| times(limit, self.multiplier(column))))
             }
             Reading::NotDetermined => {
                 self.tally(column, |tally| tally.not_determined.count(row.line, cell));
@@ -211,10 +218,10 @@ impl Converter {
         }
         match own_unit {
             None => {
-                value *= self.multiplier(column);
-                error = error.map(|error| error * self.multiplier(column));
+                value = times(value, self.multiplier(column));
+                error = error.map(|error| times(error, self.multiplier(column)));
             }
-            Some(own) => match self.to_column(own, column, row) {
+            Some(own) => match self.in_column(own, column, row) {
                 Some((scale, shift)) => {
                     value = value * scale + shift;
                     error = error.map(|error| error * scale);
@@ -234,7 +241,7 @@ impl Converter {
     }
 
     /// Scale and shift from a cell's own unit into the column's.
-    fn to_column(&mut self, own: &str, column: usize, row: &Row) -> Option<(f64, f64)> {
+    fn in_column(&mut self, own: &str, column: usize, row: &Row) -> Option<(f64, f64)> {
         let plan = self.plans.get_mut(column)?;
         if let Some((known, factor)) = &plan.cached
             && known == own
@@ -283,6 +290,17 @@ impl Converter {
             self.tally(column, |tally| tally.unlisted += 1);
         }
         Content::Bad
+    }
+}
+
+/// Multiplied; by a division where the multiplier is 10⁻ⁿ, which binary numbers
+/// only come near: 2.1 by 1e-4 is 2.1e-4.
+fn times(value: f64, multiplier: f64) -> f64 {
+    let divisor = libm::round(1.0 / multiplier);
+    if multiplier < 1.0 && divisor <= 1e15 && 1.0 / divisor == multiplier {
+        value / divisor
+    } else {
+        value * multiplier
     }
 }
 
@@ -373,7 +391,9 @@ fn expected(cell: &str, plan: &Plan) -> String {
             || cell.contains("x 10")
         {
             "write the power of ten as in 1.2e-3"
-        } else if cell.contains(':') && plan.role == Role::Time {
+        } else if plan.role == Role::Time && cell.contains(':') && cell.contains(['.', '/']) {
+            "write dates as in 2024-03-01 08:00"
+        } else if plan.role == Role::Time && cell.contains(':') {
             "or a duration as in 1:30"
         } else if cell.chars().filter(char::is_ascii_digit).count() > 0
             && cell.chars().filter(|c| matches!(c, '.' | ',')).count() > 1

@@ -2,7 +2,7 @@
 //! header, its units and its rows, and which are titles and notes around it.
 
 use super::header;
-use super::{Choice, Decimal, Hints, Separator};
+use super::{Choice, Decimal, Hints, Role, Separator};
 use crate::problem::{Position, Problem, shortened};
 use crate::text::lines::{MOST_FIELDS, Record, Records};
 use crate::text::number::looks_numeric;
@@ -60,7 +60,7 @@ impl Layout {
         if layout.refusal.is_some() {
             return layout;
         }
-        let sample = Sample::take(text, separator);
+        let mut sample = Sample::take(text, separator);
         let Some(first) = sample.first_row() else {
             layout.refusal = sample.nothing(text);
             return layout;
@@ -99,8 +99,26 @@ impl Layout {
         Kind::Note
     }
 
+    /// Whether a line holds nothing but a temperature, in a table that has no column of them.
+    pub fn is_run_title(&self, text: &str, record: &Record) -> bool {
+        if record.filled() != 1 || self.columns < 2 || record.line < self.first_line {
+            return false;
+        }
+        let alone = record.fields.iter().find(|span| !span.is_empty() && span.len() <= 40);
+        let alone =
+            alone.and_then(|span| text.get(span.clone())).is_some_and(header::is_temperature);
+        let first = self.headers.first().map_or("", String::as_str);
+        alone
+            && header::read(first, self.units.first().map_or("", String::as_str)).role
+                != Some(Role::Temperature)
+    }
+
     /// Whether a line between rows is the header of another table.
     pub fn is_other_header(&self, text: &str, record: &Record) -> bool {
+        let short = record.fields.iter().all(|span| span.len() <= 40);
+        if !short || record.filled() < 2 || record.fields.len() > 20 {
+            return false;
+        }
         let cells: Vec<String> =
             (0..record.fields.len()).map(|column| record.field(text, column).to_string()).collect();
         let same = cells
@@ -210,10 +228,9 @@ impl Layout {
         let named = self.headers.iter().filter(|header| !header.is_empty()).count();
         let suspicious = rows.iter().filter(after_integer_part).count();
         let wider = rows.iter().filter(|record| named > 0 && record.filled() > named).count();
-        let without_points = !rows.iter().any(|record| quoted_or_point(&record));
+        let without_points = !rows.iter().any(quoted_or_point);
         let twice = without_points && (suspicious * 2 >= rows.len() || wider * 2 > rows.len());
-        let row =
-            rows.iter().find(|record| after_integer_part(&record)).or_else(|| rows.first())?;
+        let row = rows.iter().find(|record| after_integer_part(record)).or_else(|| rows.first())?;
         twice.then(|| {
             let line = sample.text.get(row.span.clone()).unwrap_or("");
             Problem::said(
@@ -327,6 +344,8 @@ struct Sample<'text> {
     numeric: Vec<Vec<bool>>,
     /// The usual number of filled fields.
     usual: usize,
+    /// One number in a line of the usual width makes it a row.
+    lenient: bool,
 }
 
 impl<'text> Sample<'text> {
@@ -361,7 +380,7 @@ impl<'text> Sample<'text> {
             .enumerate()
             .max_by_key(|(_, count)| **count)
             .map_or(0, |(width, _)| width);
-        Sample { text, separator, records, numeric, usual }
+        Sample { text, separator, records, numeric, usual, lenient: false }
     }
 
     /// Enough of its fields are numbers.
@@ -372,13 +391,33 @@ impl<'text> Sample<'text> {
         };
         let numbers = numeric.iter().filter(|number| **number).count();
         let filled = record.filled();
-        numbers > 0 && (numbers * 2 >= filled || (filled == self.usual && numbers > 1))
+        numbers > 0
+            && (numbers * 2 >= filled || (filled == self.usual && (numbers > 1 || self.lenient)))
     }
 
     /// Index of the first record that belongs to the rows.
-    fn first_row(&self) -> Option<usize> {
-        (0..self.records.len())
-            .find(|index| self.looks_like_row(*index) && !self.is_header_of_the_rest(*index))
+    fn first_row(&mut self) -> Option<usize> {
+        let first = |sample: &Sample<'_>| {
+            (0..sample.records.len()).find(|index| {
+                sample.looks_like_row(*index) && !sample.is_header_of_the_rest(*index)
+            })
+        };
+        first(self).or_else(|| {
+            // Rows with hardly a number are rows all the same below a clear header.
+            self.lenient = self.has_header();
+            first(self).filter(|_| self.lenient)
+        })
+    }
+
+    /// A line that names at least two roles.
+    fn has_header(&self) -> bool {
+        let roles = |record: &Record| {
+            let names = (0..record.fields.len()).map(|column| record.field(self.text, column));
+            names
+                .filter(|name| name.chars().count() <= 40 && header::read(name, "").role.is_some())
+                .count()
+        };
+        self.records.iter().take(10).any(|record| record.fields.len() <= 20 && roles(record) > 1)
     }
 
     /// A line with numbers in it that is a header all the same: `t/h 50 60 70`.

@@ -1,6 +1,7 @@
 //! From a text to a table: cells with their places, columns with roles and
 //! units, the problems met, and every decision made on the user's behalf.
 
+mod beside;
 mod columns;
 mod convert;
 mod edit;
@@ -8,12 +9,14 @@ mod errors;
 mod header;
 mod layout;
 mod reader;
+mod refusals;
 mod role;
 mod roles;
 mod said;
 mod tally;
 mod values;
 mod view;
+mod wide;
 
 use std::ops::Range;
 

@@ -8,17 +8,20 @@ use std::collections::HashMap;
 use super::columns::{self, Columns};
 use super::convert::Converter;
 use super::layout::{Kind, Layout, is_rule};
+use super::refusals;
 use super::said;
 use super::tally::Lines;
 use super::values::{TimeShape, Values};
 use super::{Cell, Choice, Content, Decimal, Hints, Role, Row, Separator, Table};
-use crate::problem::{Position, Problem, shortened};
+use crate::problem::{Problem, shortened};
 use crate::text::decimal::{Evidence, Votes, evidence};
-use crate::text::lines::{LONGEST_LINE, MOST_FIELDS, Record, Records};
+use crate::text::lines::{MOST_FIELDS, Record, Records};
 
 /// Notes and problems of lines that are kept one by one.
 const MOST_NOTES: usize = 500;
 const MOST_LINE_PROBLEMS: usize = 50;
+/// Notes that are looked at as headers of a second table.
+const MOST_HEADERS: usize = 40;
 
 /// Reads a text row by row.
 pub struct Reader<'text> {
@@ -185,26 +188,25 @@ impl<'text> Reader<'text> {
         }
         let Some(mut record) = self.records.next(&self.text) else { return false };
         if record.too_long {
-            self.refuse_line(&record);
+            self.refuse(refusals::long_line(&self.text, &record));
             return true;
         }
         if record.line < self.layout.first_line || is_rule(&self.text, &record) {
             return true;
         }
         self.join_excess(&mut record);
+        if self.layout.is_run_title(&self.text, &record) {
+            self.refuse(refusals::run_title(&self.text, &record));
+            return true;
+        }
         match self.layout.kind(&self.text, &record) {
             Kind::Blank => {}
             Kind::Note => {
-                if self.notes.len() < MOST_NOTES {
-                    self.notes.push((
-                        record.line,
-                        shortened(self.text.get(record.span.clone()).unwrap_or("")),
-                    ));
-                    self.other_table =
-                        !self.rows.is_empty() && self.layout.is_other_header(&self.text, &record);
-                    if self.other_table {
-                        self.refuse_other_table(&record);
-                    }
+                self.note(&record);
+                let looked_at = !self.rows.is_empty() && self.notes.len() <= MOST_HEADERS;
+                if looked_at && self.layout.is_other_header(&self.text, &record) {
+                    self.other_table = true;
+                    self.refuse(refusals::other_table(&self.text, &record));
                 }
             }
             Kind::Row => self.add_row(&record),
@@ -226,33 +228,17 @@ impl<'text> Reader<'text> {
         }
     }
 
-    fn refuse_other_table(&mut self, record: &Record) {
-        let line = self.text.get(record.span.clone()).unwrap_or("");
-        self.problems.push(Problem::said(
-            &Position::row(record.line),
-            line,
-            "one table with one header",
-            &format!("a second table with other headers begins here (“{}”); it is not read. Paste one table at a time, or give both the same columns.", shortened(line)),
-        ));
+    fn refuse(&mut self, problem: Problem) {
+        if self.problems.len() < MOST_LINE_PROBLEMS {
+            self.problems.push(problem);
+        }
     }
 
-    fn refuse_line(&mut self, record: &Record) {
-        if self.problems.len() >= MOST_LINE_PROBLEMS {
-            return;
+    fn note(&mut self, record: &Record) {
+        if self.notes.len() < MOST_NOTES {
+            self.notes
+                .push((record.line, shortened(self.text.get(record.span.clone()).unwrap_or(""))));
         }
-        let line = self.text.get(record.span.clone()).unwrap_or("");
-        let start: String = line.chars().take(80).collect();
-        let (what, limit) = if record.span.len() > LONGEST_LINE {
-            (format!("{} characters", record.span.len()), format!("{LONGEST_LINE}"))
-        } else {
-            (format!("more than {MOST_FIELDS} columns"), format!("{MOST_FIELDS} columns"))
-        };
-        self.problems.push(Problem::said(
-            &Position::row(record.line),
-            &start,
-            &format!("at most {limit} in a line"),
-            &format!("the line has {what}, at most {limit} are read; it is left out."),
-        ));
     }
 
     fn add_row(&mut self, record: &Record) {
@@ -273,18 +259,9 @@ impl<'text> Reader<'text> {
             }
             cells.push(Cell { span, content: Content::Empty });
         }
-        let beyond = record.fields.iter().skip(columns).find(|span| !span.is_empty());
-        if let Some(span) = beyond
-            && self.problems.len() < MOST_LINE_PROBLEMS
-        {
-            let found = self.text.get(span.clone()).unwrap_or("");
-            let expected = format!("{columns} columns, as in the rows above");
-            self.problems.push(Problem::new(
-                &Position::row(record.line),
-                found,
-                &expected,
-                "what is beyond them is not read",
-            ));
+        if let Some(span) = record.fields.iter().skip(columns).find(|span| !span.is_empty()) {
+            let found = self.text.get(span.clone()).unwrap_or("").to_string();
+            self.refuse(refusals::field_beyond(record.line, &found, columns));
         }
         self.rows.push(Row { line: record.line, cells });
     }

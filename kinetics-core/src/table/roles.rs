@@ -4,18 +4,19 @@
 use super::header::Reading;
 use super::values::{TimeShape, Values};
 use super::{Choice, Form, Hints, Origin, Role};
-use crate::problem::shortened;
+use crate::problem::{Position, Problem, shortened};
 use crate::quantity::Quantity;
 
 /// Roles in the making.
 pub(super) struct Roles<'a> {
     headers: &'a [String],
-    readings: &'a [Reading],
-    values: &'a [Values],
+    pub readings: &'a [Reading],
+    pub values: &'a [Values],
     pub roles: Vec<Option<(Role, Origin)>>,
     pub run_temperatures: Vec<Option<Quantity>>,
     pub form: Option<Form>,
     pub choices: Vec<Choice>,
+    pub problems: Vec<Problem>,
 }
 
 /// Decides the role of every column, and the form of the data.
@@ -37,10 +38,21 @@ pub(super) fn decide<'a>(
         .collect();
     let run_temperatures = vec![None; readings.len()];
     let form = hints.form.filter(|form| *form != Form::KnownLaw);
-    let mut deciding =
-        Roles { headers, readings, values, roles, run_temperatures, form, choices: Vec::new() };
+    let mut deciding = Roles {
+        headers,
+        readings,
+        values,
+        roles,
+        run_temperatures,
+        form,
+        choices: Vec::new(),
+        problems: Vec::new(),
+    };
     deciding.correct_letters();
+    deciding.beside();
+    deciding.units_in_cells();
     deciding.wide();
+    deciding.times_across();
     deciding.form =
         deciding.form.or_else(|| deciding.form_of_known()).or_else(|| deciding.form_of_values());
     deciding.fill();
@@ -55,41 +67,51 @@ impl Roles<'_> {
         self.roles.get(column).copied().flatten().map(|(role, _)| role)
     }
 
-    fn position(&self, wanted: impl Fn(Role) -> bool) -> Option<usize> {
+    pub(super) fn position(&self, wanted: impl Fn(Role) -> bool) -> Option<usize> {
         (0..self.roles.len()).find(|column| self.role(*column).is_some_and(&wanted))
     }
 
-    fn has(&self, wanted: impl Fn(Role) -> bool) -> bool {
+    pub(super) fn has(&self, wanted: impl Fn(Role) -> bool) -> bool {
         self.position(wanted).is_some()
     }
 
-    fn set(&mut self, column: usize, role: Role, origin: Origin) {
+    pub(super) fn set(&mut self, column: usize, role: Role, origin: Origin) {
         if let Some(slot) = self.roles.get_mut(column) {
             *slot = Some((role, origin));
         }
     }
 
-    fn say(&mut self, column: usize, sentence: String) {
+    pub(super) fn say(&mut self, column: usize, sentence: String) {
         self.choices.push(Choice { sentence, column: Some(column + 1) });
     }
 
-    fn header(&self, column: usize) -> &str {
+    pub(super) fn refuse(&mut self, column: usize, found: &str, expected: &str, message: &str) {
+        let header = self.header(column).to_string();
+        self.problems.push(Problem::said(
+            &Position::column(column + 1, &header),
+            found,
+            expected,
+            message,
+        ));
+    }
+
+    pub(super) fn header(&self, column: usize) -> &str {
         self.headers.get(column).map_or("", |header| header.trim())
     }
 
-    fn title(&self, column: usize) -> String {
+    pub(super) fn title(&self, column: usize) -> String {
         match self.header(column) {
             "" => format!("Column {}", column + 1),
             header => format!("Column {} ({})", column + 1, shortened(header)),
         }
     }
 
-    fn numeric(&self, column: usize) -> bool {
+    pub(super) fn numeric(&self, column: usize) -> bool {
         self.values.get(column).is_some_and(Values::is_numeric)
     }
 
     /// Columns of numbers without a role, from the left.
-    fn unknown(&self) -> Vec<usize> {
+    pub(super) fn unknown(&self) -> Vec<usize> {
         (0..self.roles.len())
             .filter(|column| self.role(*column).is_none() && self.numeric(*column))
             .collect()
@@ -115,118 +137,28 @@ impl Roles<'_> {
         }
     }
 
-    /// Time down and one column for each run across, its temperature in the header.
-    fn wide(&mut self) {
-        let runs: Vec<usize> = (0..self.readings.len())
-            .filter(|column| {
-                self.readings.get(*column).is_some_and(|reading| reading.run_temperature.is_some())
-            })
-            .filter(|column| {
-                matches!(self.role(*column), None | Some(Role::Signal | Role::Sd))
-                    && self.numeric(*column)
-            })
-            .collect();
-        if runs.is_empty() {
-            self.wide_with_bare_numbers();
-            self.wide_with_numbered_runs();
-            return;
-        }
-        for column in &runs {
-            if self.role(*column).is_none() {
-                self.set(*column, Role::Signal, Origin::Header);
-            }
-            let temperature =
-                self.readings.get(*column).and_then(|reading| reading.run_temperature.clone());
-            if let Some(slot) = self.run_temperatures.get_mut(*column) {
-                *slot = temperature;
-            }
-        }
-        if !self.has(|role| role == Role::Time)
-            && let Some(column) = self.unknown().first().copied()
-        {
-            self.set(column, Role::Time, Origin::Assumed);
-            self.say(
-                column,
-                format!(
-                    "{} is taken as the time, because the other columns name temperatures.",
-                    self.title(column)
-                ),
-            );
-        }
-    }
-
-    /// `t/h 50 60 70`: headers that are numbers, above signals.
-    fn wide_with_bare_numbers(&mut self) {
-        let unknown = self.unknown();
-        let time = self.position(|role| role == Role::Time);
-        let bare: Vec<(usize, f64)> = unknown
-            .iter()
-            .filter_map(|column| {
-                Some((
-                    *column,
-                    self.header(*column)
-                        .replace(',', ".")
-                        .parse::<f64>()
-                        .ok()
-                        .filter(|value| value.is_finite())?,
-                ))
-            })
-            .collect();
-        let others: Vec<usize> = unknown
-            .iter()
-            .copied()
-            .filter(|column| !bare.iter().any(|(other, _)| other == column))
-            .collect();
-        let plausible = bare.iter().all(|(_, value)| (-100.0..1000.0).contains(value));
-        let clear = time.is_some() && others.is_empty() || time.is_none() && others == [0];
-        if bare.len() < 2
-            || !plausible
-            || !clear
-            || self.has(|role| matches!(role, Role::Temperature | Role::InverseTemperature))
-        {
-            return;
-        }
-        let unit = if bare.iter().all(|(_, value)| *value >= 250.0) { "K" } else { "°C" };
-        for (column, value) in &bare {
-            self.set(*column, Role::Signal, Origin::Assumed);
-            if let Some(slot) = self.run_temperatures.get_mut(*column) {
-                *slot = Some(Quantity::new(*value, unit));
-            }
-        }
-        if let Some(column) = others.first() {
-            self.set(*column, Role::Time, Origin::Assumed);
-        }
-        let numbers: Vec<String> =
-            bare.iter().take(4).map(|(_, value)| value.to_string()).collect();
-        let first = bare.first().map_or(0, |(column, _)| *column);
-        self.say(
-            first,
-            format!(
-                "The headers {} are taken as temperatures of runs in {unit}, each column as the signal of one run{}.",
-                numbers.join(", "),
-                if others.is_empty() { "" } else { ", and column 1 as the time" }
-            ),
-        );
-    }
-
-    /// `t/h  run 1  run 2`: runs beside a time, whose temperatures are not said.
-    fn wide_with_numbered_runs(&mut self) {
-        let runs: Vec<usize> = (0..self.roles.len())
-            .filter(|column| self.roles.get(*column) == Some(&Some((Role::Run, Origin::Header))))
-            .filter(|column| {
-                self.numeric(*column) && self.header(*column).contains(|c: char| c.is_ascii_digit())
-            })
-            .collect();
-        if runs.len() > 1
-            && self.has(|role| role == Role::Time)
-            && !self.has(|role| role == Role::Signal)
-        {
-            for column in runs {
-                self.set(column, Role::Signal, Origin::Assumed);
+    /// Columns without a header whose cells name their units.
+    fn units_in_cells(&mut self) {
+        for column in self.unknown() {
+            let Some(unit) = self.values.get(column).and_then(Values::usual_unit) else { continue };
+            let roles = [
+                Role::Temperature,
+                Role::Time,
+                Role::RateConstant,
+                Role::HeatRate,
+                Role::HeatingRate,
+                Role::Signal,
+            ];
+            let suits = |role: &Role| role.unit_code(unit).is_ok();
+            let run =
+                self.readings.get(column).is_some_and(|reading| reading.run_temperature.is_some());
+            if let Some(role) = roles.into_iter().find(suits).filter(|_| !run) {
                 let sentence = format!(
-                    "{} is taken as the signal of one run; its header names no temperature.",
-                    self.title(column)
+                    "{} is taken as the {}, because its cells count in {unit}.",
+                    self.title(column),
+                    role.words()
                 );
+                self.set(column, role, Origin::Values);
                 self.say(column, sentence);
             }
         }
@@ -387,42 +319,6 @@ impl Roles<'_> {
             } else if own.like_errors_of(values, 1.0) && self.role(column - 1) == Some(wanted) {
                 self.take(column, Role::Sd);
             }
-        }
-    }
-
-    /// One temperature, one time; logarithms of k step back behind k.
-    fn drop_duplicates(&mut self) {
-        let is_temperature =
-            |role: Role| matches!(role, Role::Temperature | Role::InverseTemperature);
-        let keep_temperature = self
-            .position(|role| role == Role::Temperature)
-            .or_else(|| self.position(is_temperature));
-        let keep_time = self.position(|role| role == Role::Time);
-        let best_rate = [Role::RateConstant, Role::LnRateConstant, Role::Log10RateConstant]
-            .into_iter()
-            .find(|rate| self.has(|role| role == *rate));
-        for column in 0..self.roles.len() {
-            let Some(Some((role, origin))) = self.roles.get(column).copied() else { continue };
-            if origin == Origin::Stated {
-                continue;
-            }
-            let (kept, what) = match role {
-                role if is_temperature(role) && keep_temperature != Some(column) => {
-                    (keep_temperature, "a temperature")
-                }
-                Role::Time if keep_time != Some(column) => (keep_time, "a time"),
-                role if role.is_rate() && Some(role) != best_rate => {
-                    (self.position(|role| Some(role) == best_rate), "a rate constant")
-                }
-                _ => continue,
-            };
-            let kept =
-                kept.map_or(String::new(), |kept| self.title(kept).replacen("Column", "column", 1));
-            self.set(column, Role::Ignore, origin);
-            self.say(
-                column,
-                format!("{} also holds {what} and is not used; {kept} is.", self.title(column)),
-            );
         }
     }
 

@@ -50,6 +50,7 @@ pub(super) struct Tally {
     pub empty: Lines,
     pub filled_down: Lines,
     pub other_mark: Lines,
+    pub humidity: Lines,
     pub bad: usize,
     /// Bad cells without a problem of their own.
     pub unlisted: usize,
@@ -90,6 +91,9 @@ impl Tally {
         let what = if column.role == Role::Temperature { "the temperature" } else { "what stands" };
         say(&self.filled_down, &|rows, _| {
             format!("{cells} {what} above ({rows}), as merged cells do.")
+        });
+        say(&self.humidity, &|rows, example| {
+            format!("the humidity in “{example}” is not used ({rows}).")
         });
         say(&self.other_mark, &|rows, example| {
             format!(

@@ -2,6 +2,7 @@
 //! temperatures from rate constants where no header does.
 
 use super::Row;
+use super::header::without_humidity;
 use crate::text::number::{Reading, read_cell};
 use crate::text::{Decimal, stamp};
 
@@ -47,7 +48,13 @@ impl Values {
             let cell =
                 row.cells.get(column).and_then(|cell| text.get(cell.span.clone())).unwrap_or("");
             let mut number = None;
-            match read_cell(cell, decimal) {
+            let reading = match read_cell(cell, decimal) {
+                Reading::Text => {
+                    without_humidity(cell).map_or(Reading::Text, |rest| read_cell(&rest, decimal))
+                }
+                other => other,
+            };
+            match reading {
                 Reading::Empty => {}
                 Reading::Number(found) => {
                     values.filled += 1;
@@ -77,7 +84,7 @@ impl Values {
             }
             values.numbers.push(number);
         }
-        values.units.sort_by(|a, b| b.1.cmp(&a.1));
+        values.units.sort_by_key(|(_, count)| std::cmp::Reverse(*count));
         if stamps * 2 > values.filled {
             values.time_shape = TimeShape::Stamps;
         } else if clocks * 2 > values.filled {
@@ -111,7 +118,7 @@ impl Values {
     /// Could be temperatures in °C, K or °F.
     pub fn like_temperatures(&self) -> bool {
         self.range().is_some_and(|(low, high)| {
-            low >= -100.0 && high <= 1500.0 && high >= 4.0 && high - low <= 800.0
+            low >= -100.0 && (4.0..=1500.0).contains(&high) && high - low <= 800.0
         })
     }
 

@@ -246,6 +246,12 @@ impl Scanner<'_> {
             _ => {}
         }
         self.skip_blanks();
+        let raised = matches!(self.peek(2), Some('^' | '⁻' | '⁰'..='⁹' | '¹' | '²' | '³'));
+        if self.at > before && self.peek(0) == Some('1') && self.peek(1) == Some('0') && raised {
+            // 1.2 10⁻³ has lost its multiplication sign.
+            self.at += 2;
+            return self.power().map(Some);
+        }
         if !matches!(self.peek(0), Some('×' | 'x' | 'X' | 'х')) {
             self.at = before;
             return Some(None);
@@ -261,7 +267,11 @@ impl Scanner<'_> {
 
     /// What stands behind the 10.
     fn power(&mut self) -> Option<i32> {
-        if self.accept('^') {
+        let starred = self.peek(0) == Some('×') && self.peek(1) == Some('×');
+        if starred {
+            self.at += 1;
+        }
+        if starred && self.accept('×') || self.accept('^') {
             self.skip_blanks();
             let bracket = self.peek(0).filter(|open| matches!(open, '(' | '{'));
             self.at += usize::from(bracket.is_some());

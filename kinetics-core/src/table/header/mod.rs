@@ -12,6 +12,7 @@ mod words;
 
 pub(super) use cut::cut_line;
 use multiplier::{Factor, factor};
+pub(super) use special::without_humidity;
 use units::{Family, Measure, measure};
 use words::{Named, letter, named};
 
@@ -59,11 +60,8 @@ impl Reading {
     }
 
     fn of(named: &Named) -> Reading {
-        let refused = named.of_temperature.then_some(
-            "errors of single temperatures are not read; state the uncertainty of the thermometer instead",
-        );
         Reading {
-            refused,
+            refused: named.refused,
             role: Some(named.role),
             signal_is: named.signal_is,
             error_is: named.error_is,
@@ -76,6 +74,7 @@ impl Reading {
 /// Reads a header and the cell of a row of units below it, which may be empty.
 pub(super) fn read(header: &str, units_cell: &str) -> Reading {
     let header = cleaned(header);
+    let header = without_humidity(&header).unwrap_or(header);
     let units_cell = units::bare(&cleaned(units_cell));
     if header.is_empty() && units_cell.is_empty() || header.chars().count() > 200 {
         return Reading::nothing();
@@ -116,6 +115,11 @@ pub(super) fn read(header: &str, units_cell: &str) -> Reading {
 pub(super) fn is_unit_cell(cell: &str) -> bool {
     let bare = units::bare(&cleaned(cell));
     matches!(bare.as_str(), "" | "-" | "1" | "–") || measure(&bare).is_some()
+}
+
+/// Whether a text is a temperature and no more: `50 °C`, `T = 323 K`.
+pub(super) fn is_temperature(text: &str) -> bool {
+    special::temperature(&cleaned(text)).is_some_and(|(_, rest)| rest.is_empty())
 }
 
 /// One kind of space, minus and multiplication sign; what a wrong character set
@@ -231,6 +235,10 @@ fn fit(name: &str, unit: &str) -> Option<Reading> {
     let taken = factor(name);
     let core = taken.as_ref().map_or(name, |factor| factor.name.as_str()).trim();
     let spoken = named(core).or_else(|| letter(core));
+    // "7 d" is a time, no column of times.
+    if core.parse::<f64>().is_ok() {
+        return None;
+    }
     let reading = match spoken {
         Some(named) if measure.family.suits(named.role) => Reading::of(&named),
         // "s(k)" holds no seconds, and a label has no unit.

@@ -40,7 +40,7 @@ fn behind(name: &str) -> Option<Factor> {
         let number = rest.trim_start_matches(|c: char| c == ' ' || is_times(c));
         let number = number.strip_prefix(['x', 'X']).map_or(number, str::trim_start);
         let (size, left) = leading_power(number)?;
-        (starts && left.trim().is_empty() && (size >= 10.0 || size < 1.0)).then_some((
+        (starts && left.trim().is_empty() && !(1.0..10.0).contains(&size)).then_some((
             at,
             size,
             c == ' ' && rest.trim_start() == number,

@@ -202,6 +202,28 @@ pub(super) fn temperature(header: &str) -> Option<(Quantity, String)> {
     None
 }
 
+/// A condition such as `25 °C/60 % RH` without its humidity; none if it names none.
+pub(in crate::table) fn without_humidity(text: &str) -> Option<String> {
+    if text.len() > 80 || !text.contains(['R', 'r']) {
+        return None;
+    }
+    let lower = text.to_ascii_lowercase();
+    let word = ["rh", "r.h.", "r. h.", "rf", "r.f.", "rel"].into_iter().find_map(|word| {
+        let at = lower.rfind(word)?;
+        let before = text.get(..at)?.trim_end();
+        (before.ends_with('%') || before.ends_with(|c: char| c.is_ascii_digit())).then_some(at)
+    })?;
+    let before = text.get(..word)?.trim_end().trim_end_matches('%').trim_end();
+    let number =
+        before.trim_end_matches(|c: char| c.is_ascii_digit() || matches!(c, '.' | '±' | ' '));
+    let kept =
+        number.trim_end().trim_end_matches(['/', ',', ';', '-', '–', '(', '+', '@']).trim_end();
+    let after = text
+        .get(word..)?
+        .trim_start_matches(|c: char| c.is_alphabetic() || matches!(c, '.' | ' ' | ')'));
+    (number.len() < before.len()).then(|| format!("{kept} {after}").trim().to_string())
+}
+
 fn strip_last_word<'a>(text: &'a str, words: &[&str]) -> &'a str {
     let text = text.trim_end();
     for word in words {
@@ -300,6 +322,22 @@ mod tests {
         assert!(!logarithm("log10 (k/min-1)").unwrap().base_unsaid);
         for header in ["logger", "lot", "k", "length", "ln", "login time"] {
             assert_eq!(logarithm(header), None, "{header}");
+        }
+    }
+
+    #[test]
+    fn humidity_is_taken_off_a_condition() {
+        for (text, kept) in [
+            ("25°C/60%RH", "25°C"),
+            ("25 °C / 60 % RH", "25 °C"),
+            ("40 °C, 75% r.h.", "40 °C"),
+            ("40C/75RH", "40C"),
+            ("assay at 30 °C (65 % RH)", "assay at 30 °C"),
+        ] {
+            assert_eq!(without_humidity(text).as_deref(), Some(kept), "{text}");
+        }
+        for text in ["", "RH", "25 °C", "% RSD", "% rel. sd", "run 3", "rate 5", "60 % left"] {
+            assert_eq!(without_humidity(text), None, "{text}");
         }
     }
 

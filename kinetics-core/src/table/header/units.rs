@@ -64,6 +64,15 @@ pub(super) fn measure(text: &str) -> Option<Measure> {
     if let Ok(unit) = TemperatureUnit::parse(text) {
         return found(Family::Temperature, unit.code(), 1.0);
     }
+    // "1/h" is a unit, "1 M" and "7 d" are quantities.
+    let counts = text.strip_prefix('1').is_some_and(|rest| {
+        !rest.is_empty()
+            && !rest.trim_start().starts_with('/')
+            && !rest.starts_with(['0', 'e', 'E'])
+    });
+    if counts {
+        return None;
+    }
     let start = text.trim_start_matches(['×', '·', '*', ' ']);
     let start = start
         .strip_prefix(['x', 'X'])

@@ -13,20 +13,13 @@ pub(super) struct Named {
     pub error_is: Option<ErrorKind>,
     /// An error that is relative by its name.
     pub relative: bool,
-    /// An error of the temperatures.
-    pub of_temperature: bool,
+    /// Why the column cannot be used although it is understood.
+    pub refused: Option<&'static str>,
 }
 
 impl Named {
     fn of(role: Role, strong: bool) -> Named {
-        Named {
-            role,
-            strong,
-            signal_is: None,
-            error_is: None,
-            relative: false,
-            of_temperature: false,
-        }
+        Named { role, strong, signal_is: None, error_is: None, relative: false, refused: None }
     }
 
     fn signal(signal_is: SignalIs) -> Named {
@@ -82,7 +75,7 @@ const LEFT: &[&str] = &[
 #[rustfmt::skip]
 const FORMED: &[&str] = &[
     "conversion", "converted", "umsatz", "degraded", "gone", "lost", "loss", "verlust", "abbau", "abgebaut", "formed", "impurity",
-    "impurities", "degradant", "degradation", "product", "yield", "ausbeute", "reacted", "verunreinigung", "rendement", "extent",
+    "impurities", "degradant", "degradation", "product", "yield", "ausbeute", "reacted", "conv", "verunreinigung", "rendement", "extent",
 ];
 #[rustfmt::skip]
 const SIGNAL: &[&str] = &[
@@ -211,6 +204,8 @@ fn error(name: &str, lower: &str, words: &[&str]) -> Option<Named> {
     }
     let has = |wanted: &[&str]| words.iter().any(|word| wanted.contains(word));
     let interval = has(&["ci", "95"]);
+    let limit =
+        has(&["lower", "upper", "low", "high", "lcl", "ucl", "min", "max", "untere", "obere"]);
     let mean = has(&["se", "sem", "stderr"])
         || (has(&["standard", "std"]) && has(&["error", "err", "fehler"]))
         || matches!(words, ["s", "e"]);
@@ -237,9 +232,18 @@ fn error(name: &str, lower: &str, words: &[&str]) -> Option<Named> {
     // An error of the temperatures is none of what was measured.
     let of_temperature =
         name.contains("(T)") || name.ends_with("_T") || has(&["temp", "temperature", "temperatur"]);
-    let role = if of_temperature { Role::Ignore } else { Role::Sd };
+    let role = if of_temperature || limit { Role::Ignore } else { Role::Sd };
+    let refused = match (of_temperature, limit) {
+        (true, _) => Some(
+            "errors of single temperatures are not read; state the uncertainty of the thermometer instead",
+        ),
+        (_, true) => Some(
+            "limits of an interval are not read; give its half-width, or the standard deviation",
+        ),
+        _ => None,
+    };
     let relative = has(&["rsd", "cv", "relative"]) || (!interval && name.contains('%'));
-    Some(Named { error_is, relative, of_temperature, ..Named::of(role, true) })
+    Some(Named { error_is, relative, refused, ..Named::of(role, true) })
 }
 
 /// `c/c0`, `A/A₀`: a fraction of the start.
