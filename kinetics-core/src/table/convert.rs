@@ -293,15 +293,18 @@ impl Converter {
     }
 }
 
-/// Multiplied; by a division where the multiplier is 10⁻ⁿ, which binary numbers
-/// only come near: 2.1 by 1e-4 is 2.1e-4.
+/// Multiplied; by a power of ten as one shifts the decimal point on paper, so
+/// that 2.1 in a column of 10³ k is 0.0021 and not 0.0021000000000000003.
 fn times(value: f64, multiplier: f64) -> f64 {
-    let divisor = libm::round(1.0 / multiplier);
-    if multiplier < 1.0 && divisor <= 1e15 && 1.0 / divisor == multiplier {
-        value / divisor
-    } else {
-        value * multiplier
+    let power = libm::round(libm::log10(multiplier));
+    if multiplier == 1.0 || power.abs() > 300.0 || format!("1e{power}").parse() != Ok(multiplier) {
+        return value * multiplier;
     }
+    let written = format!("{value:e}");
+    let shifted = written.split_once('e').and_then(|(digits, own)| {
+        format!("{digits}e{}", own.parse::<f64>().ok()? + power).parse().ok()
+    });
+    shifted.unwrap_or(value * multiplier)
 }
 
 /// A time of a clock in the unit of its column.
@@ -403,4 +406,29 @@ fn expected(cell: &str, plan: &Plan) -> String {
             return number.to_string();
         };
     format!("{number} ({hint})")
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn powers_of_ten_shift_the_decimal_point() {
+        assert_eq!(times(2.1, 1e-3), 0.0021);
+        assert_eq!(times(5.9, 1.0 / 1e5), 5.9e-5);
+        assert_eq!(times(-2.1, 1e4), -21_000.0);
+        assert_eq!(times(2.1, 60.0), 126.0);
+        assert_eq!(times(0.0, 1e-3), 0.0);
+        assert_eq!(times(2.1, 1.0), 2.1);
+    }
+
+    #[test]
+    fn units_of_one_kind_convert_and_others_do_not() {
+        assert_eq!(factor(Role::Time, "h", "min"), Some(60.0));
+        assert_eq!(factor(Role::Signal, "M", "mmol/L"), Some(1000.0));
+        assert_eq!(factor(Role::Signal, "%", "mol/L"), None);
+        assert_eq!(factor(Role::RateConstant, "1/h", "L/(mol s)"), None);
+        assert_eq!(factor(Role::Label, "h", "min"), None);
+        assert_eq!(between_scales("K", "°C"), Some((1.0, -273.15)));
+    }
 }

@@ -21,6 +21,14 @@ pub(super) fn tie(
     let value = columns.get(of)?.clone();
     let reading = readings.get(at)?;
     let hint = hints.columns.get(at);
+    if hint.is_none_or(|hint| hint.role.is_none()) && follows_unused_mean(at, columns) {
+        let error = columns.get_mut(at)?;
+        error.role = Role::Ignore;
+        return Some(
+            "it holds the errors of the mean beside it and, like that one, is not used."
+                .to_string(),
+        );
+    }
     let error = columns.get_mut(at)?;
     error.error_of = Some(of);
     let stated =
@@ -102,6 +110,18 @@ fn value_of(at: usize, columns: &[Column], form: Option<Form>) -> Option<usize> 
     };
     let fits = |other: &usize| columns.get(*other).is_some_and(|column| wanted(column.role));
     (0..at).rev().find(fits).or_else(|| (at + 1..columns.len()).find(fits))
+}
+
+/// Right behind a mean that is left out because its single values are there.
+fn follows_unused_mean(at: usize, columns: &[Column]) -> bool {
+    let before = at.checked_sub(1).and_then(|before| columns.get(before));
+    before.is_some_and(|column| {
+        let name = column.header.to_lowercase();
+        column.role == Role::Ignore
+            && ["mean", "average", "avg", "mittel", "moyenne"]
+                .iter()
+                .any(|word| name.contains(word))
+    })
 }
 
 /// In per cent of the value, by name, unit or cells.

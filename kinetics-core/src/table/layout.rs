@@ -446,8 +446,7 @@ impl<'text> Sample<'text> {
                 && !attempts_number(field)
                 && filled_below > 0
                 && numeric_below * 10 >= filled_below * 6;
-            let empty_corner = index == 0
-                && column == 0
+            let empty_corner = column == 0
                 && field.is_empty()
                 && record.filled() > 1
                 && rest > 1
@@ -471,11 +470,13 @@ impl<'text> Sample<'text> {
             for record in self.rows(first) {
                 counts[record.fields.len().min(MOST_FIELDS)] += 1;
             }
+            // The narrowest of equally frequent widths: the last field may contain spaces.
+            let most = counts.iter().max().copied().unwrap_or(0);
             return counts
                 .iter()
-                .enumerate()
-                .max_by_key(|(_, count)| **count)
-                .map_or(0, |(width, _)| width);
+                .position(|count| *count == most)
+                .filter(|_| most > 0)
+                .unwrap_or(0);
         }
         let header =
             first.checked_sub(1).and_then(|above| self.records.get(above)).map_or(0, last_filled);

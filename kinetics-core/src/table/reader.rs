@@ -412,7 +412,7 @@ mod tests {
             (table.columns[0].role_from, table.columns[0].unit_from),
             (Origin::Stated, Origin::Stated)
         );
-        assert_eq!(values(&table, 0), [Some(1.234 * 1e-3), Some(2.345 * 1e-3)]);
+        assert_eq!(values(&table, 0), [Some(0.001_234), Some(0.002_345)]);
         assert_eq!(table.columns[1].unit.as_deref(), Some("°F"));
         assert!(table.problems.is_empty() && table.choices.is_empty());
         hints.decimal = Some(Decimal::Point);

@@ -76,6 +76,7 @@ pub fn read_cell(cell: &str, decimal: Decimal) -> Reading {
     }
     let (bare, marked) = without_marks(cell);
     let bare = bare.strip_prefix('\'').unwrap_or(bare);
+    let bare = bare.strip_suffix(':').unwrap_or(bare);
     match scan(bare, decimal) {
         Some(found) => Reading::Number(Number { marked, ..found }),
         None => Reading::Text,

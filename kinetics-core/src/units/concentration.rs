@@ -37,6 +37,8 @@ unit_list! {
         MolePerCubicMetre = "mol/m^3", "mol/m³", 1e-3;
         /// mole per cubic centimetre
         MolePerCubicCentimetre = "mol/cm^3", "mol/cm³", 1e3;
+        /// molecule per cubic centimetre
+        MoleculePerCubicCentimetre = "molecule/cm^3", "molecule/cm³", 1e3 / 6.022_140_76e23;
         /// per cent of the initial or nominal content
         Percent = "%", "%", 1.0;
         /// fraction of the initial or nominal content
@@ -90,7 +92,8 @@ impl ConcentrationUnit {
             | ConcentrationUnit::MicromolePerLitre
             | ConcentrationUnit::NanomolePerLitre
             | ConcentrationUnit::MolePerCubicMetre
-            | ConcentrationUnit::MolePerCubicCentimetre => ConcentrationKind::Molar,
+            | ConcentrationUnit::MolePerCubicCentimetre
+            | ConcentrationUnit::MoleculePerCubicCentimetre => ConcentrationKind::Molar,
             ConcentrationUnit::Percent | ConcentrationUnit::Fraction => ConcentrationKind::Percent,
             ConcentrationUnit::GramPerLitre
             | ConcentrationUnit::MilligramPerMillilitre

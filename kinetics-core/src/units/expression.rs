@@ -14,7 +14,7 @@ const DEEPEST: usize = 6;
 /// Symbols with a prefix: how many of the plain symbol they are.
 #[rustfmt::skip]
 const PREFIXED: &[(&str, f64, &str)] = &[
-    ("kmol", 1e3, "mol"), ("mmol", 1e-3, "mol"), ("µmol", 1e-6, "mol"), ("nmol", 1e-9, "mol"),
+    ("kmol", 1e3, "mol"), ("mmol", 1e-3, "mol"), ("µmol", 1e-6, "mol"), ("nmol", 1e-9, "mol"), ("molecule", 1.0 / 6.022_140_76e23, "mol"),
     ("m³", 1e3, "L"), ("mL", 1e-3, "L"), ("µL", 1e-6, "L"),
     ("kg", 1e3, "g"), ("mg", 1e-3, "g"), ("µg", 1e-6, "g"), ("ng", 1e-9, "g"),
     ("kJ", 1e3, "J"), ("kcal", 1e3, "cal"), ("kW", 1e3, "W"), ("mW", 1e-3, "W"), ("µW", 1e-6, "W"),

@@ -71,7 +71,9 @@ impl UnitError {
 /// Whether a text is made of symbols of units alone, of whatever dimension.
 pub(crate) fn is_unit(text: &str) -> bool {
     TemperatureUnit::parse(text).is_ok()
-        || expression::readings(text).first().is_some_and(|unit| unit.scale == 1.0 && !unit.factors.is_empty())
+        || expression::readings(text)
+            .first()
+            .is_some_and(|unit| unit.scale == 1.0 && !unit.factors.is_empty())
 }
 
 /// Reads a unit of inverse temperature: how many 1/K it is, as in `10⁻³ K⁻¹`.

@@ -288,6 +288,10 @@ mod tests {
                 ],
             ),
             ("cm^3/(mol s)", &["cm³/(mol s)", "cm3 mol-1 s-1"]),
+            (
+                "cm^3/(molecule s)",
+                &["cm3 molecule-1 s-1", "cm³/(molecule s)", "cm^3 molec^-1 s^-1"],
+            ),
             ("L/(mmol min)", &["mM-1 min-1", "L mmol⁻¹ min⁻¹"]),
             ("mol/(L s)", &["mol/(L s)", "M/s", "M s-1", "mol L-1 s-1", "mol dm⁻³ s⁻¹"]),
             ("L^0.5/(mol^0.5 s)", &["L^0.5/(mol^0.5 s)", "M^-0.5 s^-1", "L^0,5 mol^-0,5 s^-1"]),

@@ -50,7 +50,7 @@ const WORDS: &[(&[&str], Meaning)] = &[
     (&["kelvin", "deg", "degc", "celsius"], &[("K", 1.0)]), (&["degf", "fahrenheit"], &[("°F", 1.0)]),
     (&["percent", "pct", "prozent"], &[("%", 1.0)]), (&["fraction"], &[("fraction", 1.0)]),
     (&["ppm"], &[("mg", 1.0), ("kg", -1.0)]), (&["ppb"], &[("µg", 1.0), ("kg", -1.0)]),
-    (&["particle", "particles", "molecule", "atom"], &[]),
+    (&["molecule", "molecules", "molec"], &[("molecule", 1.0)]), (&["particle", "particles", "atom"], &[]),
 ];
 
 /// What a word of a unit stands for: one symbol, or two written together

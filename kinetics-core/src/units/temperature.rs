@@ -68,7 +68,11 @@ impl TemperatureUnit {
     }
 
     fn unknown(text: &str) -> UnitError {
-        UnitError::unknown(TemperatureUnit::SUBJECT, text, TemperatureUnit::ALL.iter().map(|unit| unit.symbol()))
+        UnitError::unknown(
+            TemperatureUnit::SUBJECT,
+            text,
+            TemperatureUnit::ALL.iter().map(|unit| unit.symbol()),
+        )
     }
 
     /// A reading on this scale, in K; may be at or below zero.

@@ -83,6 +83,11 @@ const SIGNAL: &[&str] = &[
     "response", "intensity", "activity", "c0", "au", "mau",
 ];
 
+const LIMIT: &[&str] =
+    &["lower", "upper", "low", "high", "lcl", "ucl", "min", "max", "untere", "obere"];
+const LIMITS_REFUSED: &str =
+    "limits of an interval are not read; give its half-width, or the standard deviation";
+
 /// What the words of a name say about its column; none if they say nothing.
 pub(super) fn named(name: &str) -> Option<Named> {
     let name = name.trim();
@@ -108,6 +113,11 @@ pub(super) fn named(name: &str) -> Option<Named> {
         words.iter().take_while(|word| head.contains(**word)).copied().collect();
     // English and German put the noun last: "batch assay" is an assay, "product batch" a batch.
     let noun = head_words.iter().rev().find_map(|word| strong(word, &head_words));
+    if noun.as_ref().is_some_and(|named| named.role == Role::RateConstant)
+        && words.iter().any(|word| LIMIT.contains(word))
+    {
+        return Some(Named { refused: Some(LIMITS_REFUSED), ..Named::of(Role::Ignore, true) });
+    }
     let mut found = noun.or_else(|| percent.then(|| Named::of(Role::Signal, true)))?;
     if found.role == Role::Signal && found.signal_is.is_none() {
         found.signal_is = words.iter().find_map(|word| strong(word, &words)?.signal_is);
@@ -204,8 +214,7 @@ fn error(name: &str, lower: &str, words: &[&str]) -> Option<Named> {
     }
     let has = |wanted: &[&str]| words.iter().any(|word| wanted.contains(word));
     let interval = has(&["ci", "95"]);
-    let limit =
-        has(&["lower", "upper", "low", "high", "lcl", "ucl", "min", "max", "untere", "obere"]);
+    let limit = has(LIMIT);
     let mean = has(&["se", "sem", "stderr"])
         || (has(&["standard", "std"]) && has(&["error", "err", "fehler"]))
         || matches!(words, ["s", "e"]);
@@ -237,9 +246,7 @@ fn error(name: &str, lower: &str, words: &[&str]) -> Option<Named> {
         (true, _) => Some(
             "errors of single temperatures are not read; state the uncertainty of the thermometer instead",
         ),
-        (_, true) => Some(
-            "limits of an interval are not read; give its half-width, or the standard deviation",
-        ),
+        (_, true) => Some(LIMITS_REFUSED),
         _ => None,
     };
     let relative = has(&["rsd", "cv", "relative"]) || (!interval && name.contains('%'));
