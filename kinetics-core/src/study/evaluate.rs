@@ -105,8 +105,7 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         answers,
         record: record::empty(&study.measured.text),
     };
-    findings.record.citations = record::citations(&findings);
-    findings.record.text = record::text(study, &findings);
+    record::write(study, &mut findings);
     Evaluation { findings, basis, rates }
 }
 

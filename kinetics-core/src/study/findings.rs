@@ -242,6 +242,8 @@ pub struct MixtureComponent {
 pub struct Record {
     /// The account as text.
     pub text: String,
+    /// The same as HTML without style, for a wiki.
+    pub html: String,
     /// Sources of the methods used.
     pub citations: Vec<Citation>,
     /// Version of the program.

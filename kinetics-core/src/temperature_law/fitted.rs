@@ -174,20 +174,9 @@ impl FittedLaw {
 
     /// The value that the target stays below with `probability`; none where no scatter is known.
     pub fn quantile(&self, target: &Contrast, whose: Target, probability: f64) -> Option<f64> {
-        let spread: Vec<(f64, f64, f64)> = self
-            .components
-            .iter()
-            .map(|component| {
-                let own = match whose {
-                    Target::Mean => 0.0,
-                    Target::NextRun => target.runs * component.run_variance,
-                };
-                let variance = quadratic_form(target, &component.covariance) + own;
-                (component.weight, target.at(&component.parameters), variance.max(0.0).sqrt())
-            })
-            .collect();
+        let spread = self.spread(target, whose);
         let standard = self.kernel.quantile(probability);
-        let ends = || spread.iter().map(|(_, location, scale)| location + scale * standard);
+        let ends = || spread.iter().map(|s| s.location + s.scale * standard);
         let low = ends().reduce(f64::min)?;
         let high = ends().reduce(f64::max)?;
         if low == high {
@@ -195,25 +184,66 @@ impl FittedLaw {
         }
         // The mixture's quantile lies between the smallest and largest of its components'.
         let distribution = |value: f64| {
-            let mut sum = (0.0, 0.0);
-            for &(weight, location, scale) in &spread {
-                if scale > 0.0 {
-                    let standard = (value - location) / scale;
-                    sum.0 += weight * self.kernel.cdf(standard);
-                    sum.1 += weight * self.kernel.density(standard) / scale;
-                } else if value >= location {
-                    sum.0 += weight;
-                }
-            }
-            sum
+            spread.iter().fold((0.0, 0.0), |(below, density), s| {
+                let (own_below, own_density) = s.distribution(self.kernel, value);
+                (below + own_below, density + own_density)
+            })
         };
         Some(smooth_crossing(distribution, probability, low, high))
+    }
+
+    /// The probability that the target stays below `value`; none where no scatter is known.
+    pub fn probability_below(&self, target: &Contrast, whose: Target, value: f64) -> Option<f64> {
+        let spread = self.spread(target, whose);
+        let below = spread.iter().map(|s| s.distribution(self.kernel, value).0).sum();
+        self.has_intervals().then_some(below)
+    }
+
+    /// What each component says of a target.
+    fn spread(&self, target: &Contrast, whose: Target) -> Vec<Spread> {
+        let of = |component: &Component| {
+            let own = match whose {
+                Target::Mean => 0.0,
+                Target::NextRun => target.runs * component.run_variance,
+            };
+            let variance = quadratic_form(target, &component.covariance) + own;
+            Spread {
+                weight: component.weight,
+                location: target.at(&component.parameters),
+                scale: variance.max(0.0).sqrt(),
+            }
+        };
+        self.components.iter().map(of).collect()
     }
 
     /// Two-sided interval of a linear target at `level` (0.95 for 95 %).
     pub fn interval(&self, target: &Contrast, whose: Target, level: f64) -> Option<(f64, f64)> {
         let tail = 0.5 * (1.0 - level);
         Some((self.quantile(target, whose, tail)?, self.quantile(target, whose, 1.0 - tail)?))
+    }
+}
+
+/// A component seen along one target.
+struct Spread {
+    weight: f64,
+    location: f64,
+    scale: f64,
+}
+
+impl Spread {
+    /// Its share of the probability below `value`, and of the density there.
+    fn distribution(&self, kernel: Kernel, value: f64) -> (f64, f64) {
+        if self.scale > 0.0 {
+            let standard = (value - self.location) / self.scale;
+            (
+                self.weight * kernel.cdf(standard),
+                self.weight * kernel.density(standard) / self.scale,
+            )
+        } else if value >= self.location {
+            (self.weight, 0.0)
+        } else {
+            (0.0, 0.0)
+        }
     }
 }
 

@@ -5,6 +5,7 @@
 //! surely differs from zero, else unbounded or two separate rays.
 
 use super::{FittedLaw, Target};
+use crate::numeric::distributions::normal_quantile;
 use crate::numeric::roots::secant_crossing;
 use crate::quantity::Kelvin;
 
@@ -38,9 +39,15 @@ impl FittedLaw {
         probability: f64,
     ) -> Option<Kelvin> {
         let start = self.temperature_at(ln_rate)?;
-        let edge = |t| self.quantile(&self.ln_rate_contrast(t), whose, probability);
-        edge(start)?;
-        reach(|t| edge(t).unwrap_or(f64::NAN), ln_rate, start)
+        self.has_intervals().then_some(())?;
+        // One look at the distribution a temperature, on the scale on which it is close to a
+        // line in 1/T; the warmer, the less probable it is to stay below.
+        let standard = |probability: f64| normal_quantile(probability.clamp(1e-15, 1.0 - 1e-15));
+        let chance = |t: Kelvin| {
+            let below = self.probability_below(&self.ln_rate_contrast(t), whose, ln_rate);
+            -standard(below.unwrap_or(f64::NAN))
+        };
+        reach(chance, -standard(probability), start)
     }
 
     /// The two-sided set at `level`.
