@@ -8,11 +8,14 @@ mod edit;
 mod errors;
 mod header;
 mod layout;
+#[cfg(test)]
+mod properties;
 mod reader;
 mod refusals;
 mod role;
 mod roles;
 mod said;
+mod sample;
 mod tally;
 mod values;
 mod view;

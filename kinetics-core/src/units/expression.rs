@@ -55,11 +55,14 @@ pub(crate) fn find<Unit: Copy>(
     units: &[Unit],
     code: impl Fn(Unit) -> &'static str,
 ) -> Option<Unit> {
+    let wanted = readings(text);
+    if wanted.is_empty() {
+        return None;
+    }
     let known: Vec<(Unit, Expression)> = units
         .iter()
         .filter_map(|unit| Some((*unit, readings(code(*unit)).into_iter().next()?)))
         .collect();
-    let wanted = readings(text);
     let same = wanted.iter().find_map(|wanted| known.iter().find(|(_, unit)| unit == wanted));
     let equal = || {
         let reduced = wanted.iter().map(Expression::reduced);

@@ -5,6 +5,8 @@ use super::read;
 
 /// Most words of a header line that is cut by sense.
 const MOST_WORDS: usize = 30;
+/// Most words of one header in it.
+const LONGEST_PIECE: usize = 8;
 
 /// A name and what may be its unit.
 #[derive(Clone, Debug, PartialEq)]
@@ -141,7 +143,7 @@ fn wide_pieces(line: &str) -> Vec<String> {
 /// first j words in n pieces.
 fn by_sense(words: &[&str], columns: usize) -> Option<Vec<String>> {
     let count = words.len();
-    let longest = count - columns + 1;
+    let longest = (count - columns + 1).min(LONGEST_PIECE);
     let mut best: Vec<Vec<Option<(u32, usize)>>> = vec![vec![None; columns + 1]; count + 1];
     best[0][0] = Some((0, 0));
     for end in 1..=count {
