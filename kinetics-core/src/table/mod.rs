@@ -140,7 +140,7 @@ pub enum Content {
         /// Its error.
         error: Option<f64>,
     },
-    /// Text, where text belongs.
+    /// Text, where text belongs; empty in a column that is not used.
     Text(Box<str>),
     /// Nothing.
     Empty,

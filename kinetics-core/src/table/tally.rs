@@ -1,7 +1,7 @@
 //! Counts what was set aside in a column, so that it can be said in one
 //! sentence instead of once a cell.
 
-use super::{Choice, Column, Role};
+use super::{Choice, Column, Decimal, Role};
 use crate::problem::{Position, Problem, shortened};
 
 /// Lines that are named before the rest is only counted.
@@ -95,9 +95,10 @@ impl Tally {
         say(&self.humidity, &|rows, example| {
             format!("the humidity in “{example}” is not used ({rows}).")
         });
+        let mark = if column.decimal == Decimal::Point { "comma" } else { "point" };
         say(&self.other_mark, &|rows, example| {
             format!(
-                "“{example}” in {rows} can only have the other decimal mark and is read with it."
+                "“{example}” in {rows} has a decimal {mark}, unlike most numbers of the column, and is read so."
             )
         });
     }

@@ -191,12 +191,6 @@ impl Votes {
             Decimal::Comma => self.ambiguous_comma + self.ambiguous_point > 0,
         }
     }
-
-    /// Whether any cell is of use as decimal comma only.
-    #[must_use]
-    pub fn both(&self) -> bool {
-        self.point > 0 && self.comma > 0
-    }
 }
 
 #[cfg(test)]
@@ -251,6 +245,6 @@ mod tests {
             votes.count(evidence(cell));
         }
         assert_eq!(votes.certain(), Some(Decimal::Comma));
-        assert!(votes.doubtful(Decimal::Comma) && votes.both());
+        assert!(votes.doubtful(Decimal::Comma));
     }
 }
