@@ -28,7 +28,7 @@ fn root() -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).join("..")
 }
 
-/// The repository's text files, but for lock files and the built page.
+/// The repository's text files, but for lock files, the built page and data.
 fn texts() -> Vec<(String, String)> {
     let listed = Command::new("git")
         .args(["ls-files", "-z", "--cached", "--others", "--exclude-standard"])
@@ -45,7 +45,9 @@ fn texts() -> Vec<(String, String)> {
 }
 
 fn is_generated(name: &str) -> bool {
-    name.ends_with("Cargo.lock") || name == "www-demo/kelvinclock.html"
+    name.ends_with("Cargo.lock")
+        || name == "www-demo/kelvinclock.html"
+        || name.ends_with(".json")
 }
 
 /// The forbidden things in a text, whole words as such.
