@@ -1,6 +1,5 @@
 //! Shared helpers of the checks.
 
-#[cfg(not(target_arch = "wasm32"))]
 pub mod simulation;
 
 use kinetics_core::study::{Findings, Study, evaluate};
