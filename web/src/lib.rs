@@ -5,4 +5,8 @@ pub mod api;
 #[cfg(feature = "page")]
 pub mod figure;
 #[cfg(feature = "page")]
+pub mod keep;
+#[cfg(feature = "page")]
+pub mod page;
+#[cfg(feature = "page")]
 pub mod start;

@@ -1,9 +1,11 @@
 //! Numbers, times and temperatures as running text, rounded to what their intervals support.
 
 mod number;
+mod quantity;
 mod time;
 
 pub use number::{Figures, Rounding, fixed, significant};
+pub use quantity::{Shown, bare, energy, entropy, factor, logarithm_of, rate, typed, typed_number};
 pub use time::{duration, duration_bound, duration_with_range};
 
 use crate::quantity::Kelvin;

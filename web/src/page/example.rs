@@ -1,0 +1,64 @@
+//! What a new user sees: an invented study, already evaluated.
+
+use kinetics_core::study::Study;
+use serde_json::json;
+
+/// The title of the example, by which it is known until the user begins with data of their own.
+const TITLE: &str = "Glaze hardener, batch 7 (invented example)";
+
+/// The measured text of the example.
+const TEXT: &str = "T/°C\tk / 10^-3 h^-1\ts(k) / 10^-3 h^-1\n\
+                    50\t18.4\t0.9\n\
+                    55\t33.2\t1.7\n\
+                    60\t54.7\t2.7\n\
+                    65\t81.9\t4.1\n\
+                    70\t133\t6.7\n\
+                    78\t275\t13.7\n";
+
+/// A hardener of a small maker of glazes: six rate constants and three questions. Invented.
+pub fn study() -> Study {
+    let asked = json!([
+        {
+            "question": "time-to-extent",
+            "temperature": {"value": 25, "unit": "°C"},
+            "gone": {"value": 5, "unit": "%"}
+        },
+        {
+            "question": "longest-stand",
+            "temperature": {"value": 40, "unit": "°C"},
+            "keep": {"value": 98, "unit": "%"}
+        },
+        {
+            "question": "temperature-for",
+            "gone": {"value": 99, "unit": "%"},
+            "time": {"value": 8, "unit": "h"}
+        }
+    ]);
+    let mut study = Study::new();
+    study.title = TITLE.into();
+    study.measured.text = TEXT.into();
+    study.asked = serde_json::from_value(asked).unwrap_or_default();
+    study
+}
+
+/// Whether the study is the example, however much it was played with.
+pub fn is_shown(study: &Study) -> bool {
+    study.title == TITLE
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_example_is_read_and_answered_without_a_complaint() {
+        let findings = kinetics_core::study::evaluate(&study());
+        assert_eq!(findings.runs.len(), 6);
+        assert!(findings.problems.is_empty(), "{:?}", findings.problems);
+        assert!(findings.law.is_some());
+        assert_eq!(findings.answers.len(), 3);
+        for answer in &findings.answers {
+            assert!(answer.refused.is_none() && answer.value.is_some(), "{answer:?}");
+        }
+    }
+}

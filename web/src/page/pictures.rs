@@ -1,0 +1,263 @@
+//! From findings to pictures: what was measured, the law and the questions, as figures take them.
+
+use kinetics_core::answer::{Answer, Basis};
+use kinetics_core::curve::{self, CurvePoint};
+use kinetics_core::grounds::Grounds as CoreGrounds;
+use kinetics_core::quantity::{Kelvin, Quantity};
+use kinetics_core::question::{BlankKind, Question};
+use kinetics_core::study::{Evaluation, Study};
+use kinetics_core::units;
+use kinetics_core::wording::{logarithm_of, typed};
+use serde_json::{Map, Value};
+
+use crate::figure::grounds::Grounds;
+use crate::figure::law_picture::{LawFlag, LawPicture, LawPoint, LawSample, RivalCurve};
+use crate::figure::scale::TemperatureUnit;
+use crate::figure::temperature_colour::TemperatureRange;
+use crate::figure::time_map::{
+    FlagInterval, MeasuredRegion, TimeFlag, TimeLine, TimeMap, TimeSample, View,
+};
+
+/// Points of a curve: enough that none of its bends shows corners.
+const CURVE_POINTS: usize = 120;
+/// More flags of one question than this hide each other.
+const MOST_FLAGS: usize = 8;
+/// More lines than this on the time map cannot be told apart.
+const MOST_LINES: usize = 6;
+/// More points than this are only a cloud, of which a part says as much.
+const MOST_POINTS: usize = 2_000;
+
+/// ln k against 1/T.
+pub fn law_picture(study: &Study, evaluation: &Evaluation) -> LawPicture {
+    let basis = evaluation.basis.as_ref();
+    let unit = basis.and_then(|b| b.shown_unit).or(evaluation.rates.unit);
+    // The picture's axis is in the unit of the data, the core's ln k in the base unit.
+    let shift = unit.map_or(0.0, |unit| unit.to_base().ln());
+    let runs = &evaluation.rates.runs;
+    let step = runs.len().div_ceil(MOST_POINTS).max(1);
+    let points = runs.iter().zip(&evaluation.findings.runs).step_by(step).map(|(run, found)| {
+        let seen = run.observation;
+        LawPoint {
+            label: run.name.clone(),
+            temperature: seen.temperature.0,
+            ln_rate: seen.ln_rate - shift,
+            standard_deviation: seen.ln_sd,
+            misfit_percent: found.ln_residual.map(|residual| 100.0 * residual.exp_m1()),
+            excluded: false,
+        }
+    });
+    let mut picture = LawPicture {
+        rate_label: logarithm_of("k", unit),
+        points: points.collect(),
+        span: basis.map(span),
+        flags: law_flags(study),
+        temperature_unit: temperature_unit(study),
+        ..LawPicture::default()
+    };
+    let (coldest, warmest) = picture.temperatures();
+    if let Some(basis) = basis {
+        picture.curve = samples(basis, coldest, warmest)
+            .iter()
+            .map(|point| LawSample {
+                temperature: point.temperature.0,
+                ln_rate: point.ln_value - shift,
+                interval: point.limits.map(|(low, high)| (low - shift, high - shift)),
+                grounds: grounds(point.grounds),
+            })
+            .collect();
+        picture.rivals = basis
+            .rivals
+            .iter()
+            .map(|rival| RivalCurve {
+                name: rival.law.code().replace('-', " "),
+                samples: picture
+                    .curve
+                    .iter()
+                    .map(|s| (s.temperature, rival.ln_rate(Kelvin(s.temperature)) - shift))
+                    .collect(),
+            })
+            .collect();
+    }
+    picture
+}
+
+/// Time against temperature, for the extents that are asked for.
+pub fn time_map(study: &Study, evaluation: &Evaluation, held_view: Option<View>) -> TimeMap {
+    let mut map = TimeMap {
+        flags: time_flags(study, evaluation),
+        temperature_unit: temperature_unit(study),
+        held_view,
+        ..TimeMap::default()
+    };
+    let Some(basis) = &evaluation.basis else { return map };
+    map.measured = Some(MeasuredRegion { temperatures: span(basis), times: None });
+    let (coldest, warmest) = map.temperatures();
+    let rates = samples(basis, coldest, warmest);
+    for (label, extent) in extents(study, basis) {
+        let Ok(times) = curve::ln_times(basis, &rates, extent) else { continue };
+        let samples = times
+            .iter()
+            .map(|point| TimeSample {
+                temperature: point.temperature.0,
+                time_seconds: point.ln_value.exp(),
+                interval: point.limits.map(|(low, high)| (low.exp(), high.exp())),
+                grounds: grounds(point.grounds),
+            })
+            .collect();
+        map.lines.push(TimeLine { label, samples });
+    }
+    map
+}
+
+/// The temperatures between which the colours of a study run.
+pub fn temperature_range(evaluation: &Evaluation) -> TemperatureRange {
+    let kelvins = || evaluation.rates.runs.iter().map(|run| run.observation.temperature.0);
+    TemperatureRange::covering(
+        kelvins().fold(f64::NAN, f64::min),
+        kelvins().fold(f64::NAN, f64::max),
+    )
+}
+
+/// The law over some temperatures, with the ends of the data among the points, so that a change
+/// of grounds falls where it belongs.
+fn samples(basis: &Basis, coldest: f64, warmest: f64) -> Vec<CurvePoint> {
+    let (from, to) = span(basis);
+    let mut edges = vec![coldest, from, to, warmest];
+    edges.retain(|kelvin| (coldest..=warmest).contains(kelvin));
+    let mut points: Vec<CurvePoint> = Vec::new();
+    for pair in edges.windows(2) {
+        let share = (1.0 / pair[0] - 1.0 / pair[1]) / (1.0 / coldest - 1.0 / warmest);
+        if share > 0.0 {
+            let count = (CURVE_POINTS as f64 * share).ceil() as usize + 2;
+            points.extend(curve::ln_rates(basis, Kelvin(pair[0]), Kelvin(pair[1]), count));
+        }
+    }
+    points
+}
+
+fn span(basis: &Basis) -> (f64, f64) {
+    let (coldest, hottest) = basis.support.span();
+    (coldest.0, hottest.0)
+}
+
+fn law_flags(study: &Study) -> Vec<LawFlag> {
+    let mut flags = Vec::new();
+    for (at, asked) in study.asked.iter().enumerate() {
+        let blanks = Question::of_code(code(asked)).map(|q| q.blanks).unwrap_or_default();
+        let temperatures = blanks
+            .iter()
+            .filter(|blank| blank.kind == BlankKind::Temperature)
+            .flat_map(|blank| quantities(asked, blank.name))
+            .filter_map(|quantity| quantity.kelvin().ok());
+        flags.extend(temperatures.take(MOST_FLAGS).map(|kelvin| LawFlag {
+            number: at + 1,
+            temperature: kelvin.0,
+            label: String::new(),
+        }));
+    }
+    flags
+}
+
+/// A flag for each answer that is a time at a temperature, or a temperature for a time.
+fn time_flags(study: &Study, evaluation: &Evaluation) -> Vec<TimeFlag> {
+    let mut flags = Vec::new();
+    for (at, (asked, answer)) in study.asked.iter().zip(&evaluation.findings.answers).enumerate() {
+        let alone = std::slice::from_ref(answer);
+        let answers = answer.rows.as_deref().unwrap_or(alone);
+        let placed = answers.iter().take(MOST_FLAGS).filter_map(|answer| {
+            time_flag(at + 1, answer.blanks.as_ref().unwrap_or(asked), answer)
+        });
+        flags.extend(placed);
+    }
+    flags
+}
+
+fn time_flag(number: usize, blanks: &Map<String, Value>, answer: &Answer) -> Option<TimeFlag> {
+    let value = answer.key_number()?;
+    let first = |name: &str| quantities(blanks, name).into_iter().next();
+    // Of one side, the flag stands at the bound and the bar reaches to the best guess.
+    let limits = answer.low.or(answer.value).zip(answer.high.or(answer.value));
+    let limits = limits.filter(|(low, high)| low < high);
+    let (temperature, time_seconds, interval) = match answer.unit.as_deref()? {
+        "s" => {
+            let kelvin = first("temperature")?.kelvin().ok()?;
+            (kelvin.0, value, limits.map(|(low, high)| FlagInterval::Times(low, high)))
+        }
+        "K" => {
+            let seconds = first("time")?.seconds().ok()?;
+            (value, seconds.0, limits.map(|(low, high)| FlagInterval::Temperatures(low, high)))
+        }
+        _ => return None,
+    };
+    Some(TimeFlag {
+        number,
+        temperature,
+        time_seconds,
+        interval,
+        grounds: answer.grounds.map(grounds),
+        label: String::new(),
+    })
+}
+
+/// The extents asked for, each once, with their names: "5 % gone".
+fn extents(study: &Study, basis: &Basis) -> Vec<(String, f64)> {
+    let mut found: Vec<(String, f64)> = Vec::new();
+    for asked in &study.asked {
+        let blanks = Question::of_code(code(asked)).map(|q| q.blanks).unwrap_or_default();
+        for blank in blanks.iter().filter(|blank| blank.kind == BlankKind::Part) {
+            for quantity in quantities(asked, blank.name) {
+                let Some(part) = part(&quantity, basis) else { continue };
+                let is_kept = blank.name == "keep";
+                let extent = if is_kept { 1.0 - part } else { part };
+                let word = if is_kept { "left" } else { "gone" };
+                let name = format!("{} {word}", typed(&[quantity], basis.display.decimal));
+                if found.iter().all(|(_, known)| (known - extent).abs() > 1e-9) {
+                    found.push((name, extent));
+                }
+            }
+        }
+    }
+    found.truncate(MOST_LINES);
+    found
+}
+
+/// A part of the initial amount as a fraction.
+fn part(quantity: &Quantity, basis: &Basis) -> Option<f64> {
+    quantity.fraction().ok().or_else(|| {
+        let (value, kind) = quantity.concentration().ok()?;
+        let initial = basis.initial_concentration.filter(|initial| initial.kind == kind)?;
+        Some(value / initial.value)
+    })
+}
+
+/// What stands in a blank of a question.
+pub fn quantities(asked: &Map<String, Value>, name: &str) -> Vec<Quantity> {
+    let read = |value: &Value| serde_json::from_value(value.clone()).ok();
+    match asked.get(name) {
+        Some(Value::Array(several)) => several.iter().filter_map(read).collect(),
+        Some(single) => read(single).into_iter().collect(),
+        None => Vec::new(),
+    }
+}
+
+/// The code of a question that is asked.
+pub fn code(asked: &Map<String, Value>) -> &str {
+    asked.get("question").and_then(Value::as_str).unwrap_or_default()
+}
+
+fn temperature_unit(study: &Study) -> TemperatureUnit {
+    match study.display.temperature {
+        Some(units::TemperatureUnit::Kelvin) => TemperatureUnit::Kelvin,
+        Some(units::TemperatureUnit::Fahrenheit) => TemperatureUnit::Fahrenheit,
+        Some(units::TemperatureUnit::Celsius) | None => TemperatureUnit::Celsius,
+    }
+}
+
+const fn grounds(grounds: CoreGrounds) -> Grounds {
+    match grounds {
+        CoreGrounds::Inside => Grounds::Inside,
+        CoreGrounds::Near => Grounds::Near,
+        CoreGrounds::Far => Grounds::Far,
+        CoreGrounds::Beyond => Grounds::Beyond,
+    }
+}
