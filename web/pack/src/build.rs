@@ -33,15 +33,15 @@ pub async fn page(root: &Path, out: &Path) -> Result<(), Failure> {
         sources: &sources,
     })?;
 
-    let gzipped = gzipped_bytes(&page)?;
-    println!("page: {} bytes, gzipped {gzipped} bytes; program: {} bytes", page.len(), wasm.len());
-    check_sizes(page.len(), gzipped)?;
     if let Some(folder) = out.parent() {
         fs::create_dir_all(folder).map_err(|error| Failure::file("create", folder, &error))?;
     }
-    fs::write(out, page).map_err(|error| Failure::file("write", out, &error))?;
+    fs::write(out, &page).map_err(|error| Failure::file("write", out, &error))?;
+    let gzipped = gzipped_bytes(&page)?;
     println!("wrote {}", out.display());
-    Ok(())
+    println!("page: {} bytes, gzipped {gzipped} bytes; program: {} bytes", page.len(), wasm.len());
+    // Last, so that a page that is too large can still be looked at.
+    check_sizes(page.len(), gzipped)
 }
 
 /// Builds the JavaScript interface alone, as a package for Node.
@@ -65,16 +65,17 @@ async fn package_into(
     for_cargo: &[&str],
 ) -> Result<(), Failure> {
     let task = Task::line(root, "wasm-pack build web --release --mode no-install --no-pack")
-        .environment("CARGO_ENCODED_RUSTFLAGS", plain_paths(root))
+        .environment("CARGO_ENCODED_RUSTFLAGS", compiler_flags(root))
         .argument("--out-dir")
         .argument(folder);
     let task = options.iter().chain(for_cargo).fold(task, Task::argument);
     task.run().await.map(drop)
 }
 
-/// Compiler flags that shorten the paths of source files, which panics name
-/// and the program thus carries, to what is the same on every machine.
-fn plain_paths(root: &Path) -> OsString {
+/// Compiler flags that make the page's parts share code (Leptos' own switch),
+/// and that shorten the paths of source files, which panics name and the
+/// program thus carries, to what is the same on every machine.
+fn compiler_flags(root: &Path) -> OsString {
     let mut shortened = vec![(root.to_owned(), ".")];
     if let Some(home) = cargo_home() {
         let registries = fs::read_dir(home.join("registry/src"));
@@ -84,12 +85,9 @@ fn plain_paths(root: &Path) -> OsString {
             shortened.push((registry.path(), "crates"));
         }
     }
-    let mut flags = OsString::new();
+    let mut flags = OsString::from("--cfg=erase_components");
     for (from, to) in shortened {
-        if !flags.is_empty() {
-            flags.push("\u{1f}");
-        }
-        flags.push("--remap-path-prefix=");
+        flags.push("\u{1f}--remap-path-prefix=");
         flags.push(from);
         flags.push("=");
         flags.push(to);

@@ -6,7 +6,7 @@ use std::io::Write;
 use base64::Engine;
 use base64::engine::general_purpose::STANDARD;
 use flate2::Compression;
-use flate2::write::{DeflateEncoder, GzEncoder};
+use flate2::write::GzEncoder;
 use sha2::{Digest, Sha256};
 
 use crate::command::Failure;
@@ -108,13 +108,13 @@ fn source_hash(text: &str) -> String {
     format!("sha256-{}", STANDARD.encode(Sha256::digest(text)))
 }
 
-/// Raw deflate, as `DecompressionStream('deflate-raw')` reads it.
+/// Raw deflate, as `DecompressionStream('deflate-raw')` reads it, by the
+/// encoder that searches longest: it saves 5 % of what everybody downloads.
 fn deflated(bytes: &[u8]) -> Result<Vec<u8>, Failure> {
-    let mut encoder = DeflateEncoder::new(Vec::new(), Compression::best());
-    encoder
-        .write_all(bytes)
-        .and_then(|()| encoder.finish())
-        .map_err(|error| Failure::new(format!("could not compress the program: {error}"), ""))
+    let mut out = Vec::new();
+    zopfli::compress(zopfli::Options::default(), zopfli::Format::Deflate, bytes, &mut out)
+        .map_err(|error| Failure::new(format!("could not compress the program: {error}"), ""))?;
+    Ok(out)
 }
 
 /// Writes the `<` of what an HTML parser would take for an end or a nested
