@@ -173,6 +173,26 @@ checks! {
         tally.end(8);
     }
 
+    /// What the remark on an influential run says of the activation energy without it: fitted under
+    /// the same scatter choice, printed to the digits that it shows.
+    fn influence_says_what_leaving_out_does() {
+        let mut compared = 0;
+        for case in cases() {
+            let Some(expected) = case.expected.get("diagnostics") else { continue };
+            let law = &case.evaluation.basis.as_ref().unwrap().law;
+            let Some(worst) = influential(law).first().copied() else { continue };
+            let remarks = &case.evaluation.findings.remarks;
+            let sentence = &remarks.iter().find(|r| r.code == "influence").unwrap().sentence;
+            let (_, from_number) = sentence.split_once("would be ").unwrap();
+            let printed = from_number.split(' ').next().unwrap();
+            let decimals = printed.split_once('.').map_or(0, |(_, decimals)| decimals.len());
+            let energy = expected["kilojoules_without"][worst.run].as_f64().unwrap();
+            assert_eq!(printed, format!("{energy:.decimals$}"), "{}", case.name);
+            compared += 1;
+        }
+        assert!(compared >= 2, "only {compared} sentences were compared");
+    }
+
     /// The ladder of τ is fine enough: with fifteen times its steps and a tail of 1e-9 in place of
     /// 1e-4, limits of the activation energy move by less than a hundredth of the half-width.
     fn the_ladder_is_fine_enough() {

@@ -380,14 +380,24 @@ def study(name, law, data, scatter, diagnose=False):
         "answers": [r | s if "/value" in r else r for r, s in zip(replies, spans)], "rivals": ranked,
     }
     if diagnose:
-        found["diagnostics"] = diagnostics(fit)
+        found["diagnostics"] = diagnostics(fit, data)
     if fit.scatter == "as-stated-plus-run-to-run":
         fine = Fit(law, data, scatter, step=0.004, last=1e-9)
         found["fine_ladder"] = dict(zip(("low", "high"), fine.interval(fine.law.energy(fit.reference))))
     return found
 
 
-def diagnostics(fit):
+def without(fit, data, run):
+    """The activation energy in kJ/mol at the whole fit's T0, one run left out."""
+    less = {
+        key: value[:run] + value[run + 1:] if isinstance(value, list) else value
+        for key, value in data.items()
+    }
+    other = Fit(fit.law, less, fit.scatter)
+    return other.value(other.law.energy(fit.reference)) / 1000.0
+
+
+def diagnostics(fit, data):
     """Cook's distance and external studentised residuals; F test of a further (1/T)² term."""
     # Weighted least squares are ordinary ones of rows times the root of their weight.
     root = numpy.sqrt(fit.weights)
@@ -401,6 +411,7 @@ def diagnostics(fit):
         "cooks_distances": influence.cooks_distance[0].tolist(),
         "studentised_residuals": numpy.abs(influence.resid_studentized_external).tolist(),
         "curvature_f": float(f), "curvature_p": float(p),
+        "kilojoules_without": [without(fit, data, run) for run in range(len(fit.t))],
     }
 
 
@@ -448,7 +459,7 @@ def main():
     studies = [
         study("averaged", Law("arrhenius"), STATED, averaged, diagnose=True),
         study("as stated", Law("arrhenius"), STATED, "as-stated", diagnose=True),
-        study("residuals of stated", Law("arrhenius"), STATED, "from-residuals"),
+        study("residuals of stated", Law("arrhenius"), STATED, "from-residuals", diagnose=True),
         study("residuals", Law("arrhenius"), BARE, "from-residuals", diagnose=True),
     ]
     for law in [Law("eyring"), Law("log-linear"), power, Law("curved")]:

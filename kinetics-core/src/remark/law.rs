@@ -92,7 +92,7 @@ pub(super) fn influence(evidence: &Evidence) -> Option<Remark> {
         .filter(|(run, _)| *run != worst.run)
         .map(|(_, o)| *o)
         .collect();
-    let without = fit(fitted.law, &others, ScatterChoice::Automatic).ok()?;
+    let without = fit(fitted.law, &others, ScatterChoice::from(fitted.scatter)).ok()?;
     let energy = |law: &crate::temperature_law::FittedLaw| {
         let unit: EnergyUnit = basis.display.energy;
         unit.from_joules_per_mole(law.activation_energy(fitted.reference).0)

@@ -65,6 +65,18 @@ pub enum Scatter {
     AsStatedPlusRunToRun,
 }
 
+impl From<Scatter> for ScatterChoice {
+    /// The choice that fits other runs as these were.
+    fn from(scatter: Scatter) -> Self {
+        match scatter {
+            Scatter::NoneKnown => Self::Automatic,
+            Scatter::FromResiduals => Self::FromResiduals,
+            Scatter::AsStated => Self::AsStated,
+            Scatter::AsStatedPlusRunToRun => Self::AsStatedPlusRunToRun,
+        }
+    }
+}
+
 /// Why no law could be fitted.
 #[derive(Debug, Clone, PartialEq, Error)]
 pub enum LawError {
