@@ -42,8 +42,7 @@ fn residuals_cover_when_all_runs_scatter_alike() {
 /// The harness can fail: stated errors alone do not cover when runs scatter three times as much.
 #[test]
 fn stated_errors_do_not_cover_when_runs_scatter_more() {
-    let cell =
-        Cell { runs: 6, errors: Errors::Equal, tau: 3.0, scatter: ScatterChoice::AsStated };
+    let cell = Cell { runs: 6, errors: Errors::Equal, tau: 3.0, scatter: ScatterChoice::AsStated };
     let outcomes = simulate(&cell, REPLICATES, 51);
     let time = outcomes.iter().find(|o| o.question == "time-to-extent").unwrap();
     assert!(time.coverage < 0.75, "{time:?}");

@@ -45,9 +45,7 @@ fn texts() -> Vec<(String, String)> {
 }
 
 fn is_generated(name: &str) -> bool {
-    name.ends_with("Cargo.lock")
-        || name == "www-demo/kelvinclock.html"
-        || name.ends_with(".json")
+    name.ends_with("Cargo.lock") || name == "www-demo/kelvinclock.html" || name.ends_with(".json")
 }
 
 /// The forbidden things in a text, whole words as such.

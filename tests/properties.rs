@@ -17,11 +17,16 @@ struct Runs {
 
 fn runs() -> impl Strategy<Value = Runs> {
     let run = (0.0..1.0_f64, -0.3..0.3_f64, 0.01..0.3_f64);
-    (250.0..450.0_f64, 15.0..60.0_f64, 30e3..150e3_f64, -14.0..-4.0_f64, prop::collection::vec(run, 3..9))
+    (
+        250.0..450.0_f64,
+        15.0..60.0_f64,
+        30e3..150e3_f64,
+        -14.0..-4.0_f64,
+        prop::collection::vec(run, 3..9),
+    )
         .prop_map(|(coldest, span, energy, ln_rate, points)| {
             let count = points.len() as f64;
-            let mut runs =
-                Runs { temperatures: vec![], rates: vec![], relative_errors: vec![] };
+            let mut runs = Runs { temperatures: vec![], rates: vec![], relative_errors: vec![] };
             for (i, (jitter, noise, error)) in points.into_iter().enumerate() {
                 let share = (i as f64 + 0.5 * jitter) / count;
                 let t = ((coldest + span * share) * 100.0).round() / 100.0;

@@ -58,7 +58,11 @@ fn celsius_as_kelvin() {
 #[test]
 fn log_base() {
     let fitted = found(&usual(), json!({})).law.map_or(0.0, |l| l.activation_energy.value / 1e3);
-    check("log-base", (&usual(), stated(fitted / 2.303 * 1.015)), (&usual(), stated(fitted / 2.303 * 1.03)));
+    check(
+        "log-base",
+        (&usual(), stated(fitted / 2.303 * 1.015)),
+        (&usual(), stated(fitted / 2.303 * 1.03)),
+    );
 }
 
 #[test]
@@ -125,7 +129,10 @@ fn excess_scatter() {
         let mut lines: Vec<String> = text.lines().map(str::to_owned).collect();
         for (i, line) in lines.iter_mut().enumerate() {
             let error = if i == 0 { "s".into() } else { format!("{share} %") };
-            line.push_str(&format!("\t{}", if i == 0 { "s(k), %".into() } else { error.replace(" %", "") }));
+            line.push_str(&format!(
+                "\t{}",
+                if i == 0 { "s(k), %".into() } else { error.replace(" %", "") }
+            ));
         }
         lines.join("\n")
     };
@@ -150,7 +157,8 @@ fn lack_of_fit() {
 fn weighting() {
     // Bent upwards alike at both ends: the line in ln k does not tilt, that in k follows the hot
     // end alone.
-    let quiet = [(50.0, 0.03), (55.0, -0.03), (60.0, 0.0), (65.0, 0.01), (70.0, -0.01), (75.0, 0.0)];
+    let quiet =
+        [(50.0, 0.03), (55.0, -0.03), (60.0, 0.0), (65.0, 0.01), (70.0, -0.01), (75.0, 0.0)];
     let bent = |size: f64| {
         let runs = quiet.map(|(t, e)| (t, e + size * ((t - 62.5) / 12.5_f64).powi(2)));
         paste(90.0, 0.05, "1/h", &runs)
@@ -161,7 +169,9 @@ fn weighting() {
 #[test]
 fn extrapolation() {
     let time = |t: f64| {
-        asked(json!({"question": "time-to-extent", "temperature": celsius(t), "gone": {"value": 5.0, "unit": "%"}}))
+        asked(
+            json!({"question": "time-to-extent", "temperature": celsius(t), "gone": {"value": 5.0, "unit": "%"}}),
+        )
     };
     check("extrapolation", (&usual(), time(34.9)), (&usual(), time(39.0)));
 }
@@ -208,5 +218,9 @@ fn rivals_unranked() {
 
 #[test]
 fn later_version() {
-    check("later-version", (&usual(), json!({"kelvinclock": 2})), (&usual(), json!({"kelvinclock": 1})));
+    check(
+        "later-version",
+        (&usual(), json!({"kelvinclock": 2})),
+        (&usual(), json!({"kelvinclock": 1})),
+    );
 }
