@@ -29,7 +29,9 @@ fn embedded_by_text(name: &str, policy: &str) -> std::path::PathBuf {
     };
     write_page(
         name,
-        &format!("<!doctype html>{policy}<iframe srcdoc=\"{text}\" width=\"900\"></iframe>"),
+        &format!(
+            "<!doctype html><meta charset=\"utf-8\">{policy}<iframe srcdoc=\"{text}\" width=\"900\"></iframe>"
+        ),
     )
 }
 
