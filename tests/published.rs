@@ -2,6 +2,8 @@
 //!
 //! Each check names its source and says what its tolerance is made of.
 
+#![allow(clippy::unwrap_used)]
+
 #[path = "published/accelerated_life.rs"]
 mod accelerated_life;
 #[path = "published/errors_in_both.rs"]

@@ -117,7 +117,7 @@ checks! {
         let findings = handbook_study();
         let energy = findings.law.as_ref().unwrap().activation_energy.value / ELECTRONVOLT;
         close(energy, 0.8085243091033674, 1e-9);
-        close(energy / 0.8084907, 11605.0 / 11604.518_121_55, 1e-7);
+        close(energy / 0.8084907, 11605.0 / 11_604.518_121_55, 1e-7);
         close(findings.answers[1].value.unwrap(), 13.900081389635782, 1e-9);
     }
 

@@ -60,12 +60,12 @@ struct Tally {
 }
 
 impl Tally {
-    /// Compares relative to the expected number, or to 1 where that is smaller in `absolute`.
+    /// Compares relative to the expected number, or to `floor` where that is larger.
     fn number(&mut self, place: &str, found: &Value, expected: &Value, tolerance: f64, floor: f64) {
         self.compared += 1;
         let expected = expected.as_f64().unwrap();
         let off = found.as_f64().map(|found| (found - expected).abs() / expected.abs().max(floor));
-        if off.is_none_or(|off| !(off <= tolerance)) {
+        if off.is_none_or(|off| off.is_nan() || off > tolerance) {
             self.off.push(format!("{place}: found {found}, expected {expected}, off {off:?}"));
         }
     }
