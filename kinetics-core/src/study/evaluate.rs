@@ -140,7 +140,7 @@ fn read(
     let is_table = study.measured.form != Form::KnownLaw;
     Read {
         form: study.measured.form,
-        decimal: is_table.then(|| table.decimal),
+        decimal: is_table.then_some(table.decimal),
         columns: if is_table { table.columns.clone() } else { Vec::new() },
         rows_read: rates.runs.len(),
         rows_excluded: rates

@@ -108,7 +108,7 @@ fn reach(function: impl Fn(Kelvin) -> f64, target: f64, start: Kelvin) -> Option
 }
 
 #[cfg(test)]
-#[allow(clippy::unwrap_used)]
+#[allow(clippy::unwrap_used, clippy::panic)]
 mod tests {
     use super::*;
     use crate::constants::MOLAR_GAS_CONSTANT;

@@ -119,7 +119,7 @@ pub fn fit(
     let stated = problem.stated_sd(observations);
     match (scatter, stated) {
         (ScatterChoice::FromResiduals, _) | (ScatterChoice::Automatic, Err(_)) => {
-            problem.from_residuals()
+            problem.on_residuals()
         }
         (_, Err(missing)) => Err(missing),
         (ScatterChoice::AsStated, Ok(sd)) => problem.as_stated(&sd, thermometer_sd_kelvin),
@@ -207,7 +207,7 @@ impl Problem {
         }
     }
 
-    fn from_residuals(&self) -> Result<FittedLaw, LawError> {
+    fn on_residuals(&self) -> Result<FittedLaw, LawError> {
         let weights = vec![1.0; self.ln_rates.len()];
         let reference = self.reference(&weights);
         let fit = self.solve(reference, &weights)?;

@@ -101,7 +101,7 @@ mod tests {
     fn bounds_stand_beside_their_best_guess() {
         let hours = |h: f64| Seconds(3600.0 * h);
         let display = Display::default();
-        let least = duration_bound(hours(2.718), hours(3.06), Rounding::Down, &display);
+        let least = duration_bound(hours(2.738), hours(3.06), Rounding::Down, &display);
         assert_eq!((&least.0[..], &least.1[..]), ("2.7\u{a0}h", "3.1\u{a0}h"));
         let most = duration_bound(hours(36.12), hours(34.3), Rounding::Up, &display);
         assert_eq!((&most.0[..], &most.1[..]), ("36.2\u{a0}h", "34.3\u{a0}h"));
