@@ -9,11 +9,11 @@
 pub mod numeric;
 
 // 1 · vocabulary
+pub mod citation;
+pub mod constants;
 pub mod problem;
 pub mod quantity;
 pub mod units;
-pub mod citation;
-pub mod constants;
 pub mod wording;
 
 // 2 · from text to a table

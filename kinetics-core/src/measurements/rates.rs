@@ -376,9 +376,8 @@ mod tests {
     fn errors_in_per_cent_and_in_the_unit_are_the_same() {
         let absolute = "T/°C\tk, 1/h\ts(k), 1/h\n50\t0.02\t0.001\n";
         let relative = "T/°C\tk, 1/h\ts(k), %\n50\t0.02\t5\n";
-        let sd = |text: &str| {
-            read(Form::Rates, Measurand::RateConstant, text).runs[0].observation.ln_sd
-        };
+        let sd =
+            |text: &str| read(Form::Rates, Measurand::RateConstant, text).runs[0].observation.ln_sd;
         let expected = (1.0_f64 + 0.05 * 0.05).ln().sqrt();
         for text in [absolute, relative] {
             assert!((sd(text).unwrap_or_default() - expected).abs() < 1e-12, "{text}");

@@ -1,7 +1,9 @@
 //! Probability distributions: thin names over `statrs`, with the few
 //! arguments that these methods need, and answers at the edges instead of errors.
 
-use statrs::distribution::{ChiSquared, Continuous, ContinuousCDF, FisherSnedecor, Normal, StudentsT};
+use statrs::distribution::{
+    ChiSquared, Continuous, ContinuousCDF, FisherSnedecor, Normal, StudentsT,
+};
 
 /// Probability that a standard normal variate is at most `x`.
 pub fn normal_cdf(x: f64) -> f64 {

@@ -87,8 +87,7 @@ pub fn smooth_crossing(
             above = at;
         }
         let newton = at - (value - target) / slope;
-        let next =
-            if newton > below && newton < above { newton } else { 0.5 * (below + above) };
+        let next = if newton > below && newton < above { newton } else { 0.5 * (below + above) };
         let step = (next - at).abs();
         at = next;
         if step <= finest + 4.0 * f64::EPSILON * at.abs() {
@@ -117,7 +116,10 @@ mod tests {
             let smooth = smooth_crossing(with_slope, target, -40.0, 60.0);
             assert!((smooth - crossing(value, target, -40.0, 60.0)).abs() < 1e-9, "{target}");
         }
-        assert!((smooth_crossing(|x| (x * x * x, 3.0 * x * x), 2.0, 0.0, 4.0) - 2.0_f64.cbrt()).abs() < 1e-14);
+        assert!(
+            (smooth_crossing(|x| (x * x * x, 3.0 * x * x), 2.0, 0.0, 4.0) - 2.0_f64.cbrt()).abs()
+                < 1e-14
+        );
     }
 
     #[test]

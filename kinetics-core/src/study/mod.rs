@@ -14,5 +14,6 @@ pub use document::{
 };
 pub use evaluate::{Evaluation, Prepared, evaluate, evaluate_prepared, hints, prepare};
 pub use findings::{
-    Estimate, Findings, LawFindings, MixtureComponent, OtherScatter, Read, Record, Rival, RunFindings,
+    Estimate, Findings, LawFindings, MixtureComponent, OtherScatter, Read, Record, Rival,
+    RunFindings,
 };
