@@ -17,7 +17,7 @@ pub async fn page(root: &Path, out: &Path) -> Result<(), Failure> {
     // Before the build, so that an edit during it shows as stale afterwards.
     let sources = sources::hash(root)?;
     println!("building the program (the first time takes a few minutes)");
-    let package = root.join("web/pkg");
+    let package = target_folder(root).join("kelvinclock-page");
     package_into(root, &package, &["--target", "no-modules", "--no-typescript"], &[]).await?;
 
     let read = |path: PathBuf| {
