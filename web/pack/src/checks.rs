@@ -33,6 +33,9 @@ pub async fn run(root: &Path) -> Tally {
     for line in LINTS {
         report.step(Task::line(root, line), Counting::One).await;
     }
+    // Compiled apart, so that compiling does not use up the wait for the tests.
+    let compile = Task::line(root, "cargo test --quiet --workspace --no-run");
+    report.step(compile, Counting::One).await;
     let tests = Task::line(root, "cargo test --quiet --workspace --no-fail-fast");
     report.step(tests, Counting::Cargo).await;
     for name in WASM_TESTS {
