@@ -1,5 +1,7 @@
 //! The demo studies open, are labelled as invented, and answer what they ask or refuse in words.
 
+#![allow(clippy::unwrap_used)]
+
 use kinetics_core::study::{Study, evaluate};
 
 #[test]
