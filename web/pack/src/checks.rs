@@ -39,8 +39,7 @@ pub async fn run(root: &Path) -> Tally {
     let tests = Task::line(root, "cargo test --quiet --workspace --no-fail-fast");
     report.step(tests, Counting::Cargo).await;
     for name in WASM_TESTS {
-        let line =
-            format!("cargo test --quiet -p checks --target wasm32-unknown-unknown --test {name}");
+        let line = format!("cargo test -p checks --target wasm32-unknown-unknown --test {name}");
         report.step(Task::line(root, &line), Counting::Cargo).await;
     }
     node(root, &mut report).await;
