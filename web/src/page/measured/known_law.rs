@@ -154,6 +154,10 @@ fn parse(
 ) -> Result<StatedQuantity, String> {
     let mark = if decimal == ',' { Decimal::Comma } else { Decimal::Point };
     let found = || format!("found “{}”, expected a number and its unit", shortened(text));
+    // An error alone is no value.
+    if text.trim_start().starts_with('±') {
+        return Err(found());
+    }
     // The unit begins at the first place from which on it is one.
     let starts = text.char_indices().filter(|(_, sign)| !sign.is_ascii_digit()).map(|(at, _)| at);
     let mut complaint = None;
