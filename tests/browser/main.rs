@@ -20,4 +20,6 @@ mod page;
 // The steps, by subject.
 mod frames;
 mod handling;
+mod hostile;
 mod starting;
+mod worksheet;

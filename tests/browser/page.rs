@@ -86,6 +86,11 @@ impl Page {
         self.client.enter_frame(0).await.unwrap();
     }
 
+    /// Steps back out of a frame.
+    pub async fn leave_frame(&self) {
+        self.client.enter_parent_frame().await.unwrap();
+    }
+
     /// Waits for an element.
     pub async fn element(&self, selector: &str) -> Element {
         let wait = self.client.wait().at_most(LONGEST_WAIT);
