@@ -283,7 +283,7 @@ fn questions_move_and_go() {
         page.click("#down-0").await;
         page.text_with(&answer(1), "At most 2.7\u{a0}h").await;
         page.text_with(&answer(2), "About 44\u{a0}h").await;
-        page.click("button[aria-label='Remove question 1']").await;
+        page.click("button[aria-label='remove, question 1']").await;
         page.text_with(&answer(1), "About 44\u{a0}h").await;
         assert_eq!(page.count(".asked > li").await, 2);
         page.press("Undo").await;

@@ -2,13 +2,13 @@
 //! saved study.
 
 use kinetics_core::study::Study;
-use leptos::prelude::*;
-use leptos::web_sys::{ClipboardEvent, DragEvent, Event, File, HtmlElement};
 use wasm_bindgen::JsCast;
-use wasm_bindgen::closure::Closure;
+use web_sys::{ClipboardEvent, DragEvent, Event, File, HtmlElement};
 
 use super::measured;
+use super::part::{Part, document};
 use super::sheet::Sheet;
+use super::timer::after;
 use crate::keep::files;
 
 /// A text from anywhere: a saved study is opened, anything else is read as a table.
@@ -33,62 +33,46 @@ pub fn text_of_paste(event: &ClipboardEvent) -> Option<String> {
     Some(text).filter(|text| !text.trim().is_empty())
 }
 
-/// Takes the first of some files.
+/// Takes a file.
 pub fn take_file(sheet: Sheet, file: File) {
     let name = file.name();
-    leptos::task::spawn_local(async move {
-        match files::text_of(&file).await {
-            Ok(text) => take_text(sheet, text),
-            Err(problem) => sheet.tell(format!("“{name}” was not opened: {problem}.")),
-        }
+    after(async move { files::text_of(&file).await }, move |outcome| match outcome {
+        Ok(text) => take_text(sheet, text),
+        Err(problem) => sheet.tell(format!("“{name}” was not opened: {problem}.")),
     });
 }
 
-/// Listens for pastes and drops anywhere on the page, as long as it lives.
-pub fn listen(sheet: Sheet) {
-    let document = document();
-    let on = |name: &str, closure: Closure<dyn Fn(Event)>| {
-        // Refused only where there are no events at all.
-        let _ = document.add_event_listener_with_callback(name, closure.as_ref().unchecked_ref());
-        closure.forget();
-    };
-    on(
-        "paste",
-        Closure::new(move |event: Event| {
-            let Some(event) = event.dyn_ref::<ClipboardEvent>() else { return };
-            let Some(text) = text_of_paste(event) else { return };
-            // A word pasted into a field belongs to that field; a table belongs to the page.
-            let is_table = text.trim().contains(['\n', '\t']);
-            if is_table || !is_in_a_field(event) {
-                event.prevent_default();
-                take_text(sheet, text);
-            }
-        }),
-    );
-    on(
-        "dragover",
-        Closure::new(|event: Event| {
+/// Listens for pastes and drops anywhere on the page.
+pub fn listen(body: Part, sheet: Sheet) -> Part {
+    body.on("paste", move |event| {
+        let Some(paste) = event.dyn_ref::<ClipboardEvent>() else { return };
+        let Some(text) = text_of_paste(paste) else { return };
+        // A word belongs to the field it is pasted into; a table, or a study, to the page.
+        let is_table = text.trim().contains(['\n', '\t']);
+        let is_study = text.trim_start().starts_with('{') && !is_in_a_field(event);
+        if !event.default_prevented() && (is_table || is_study) {
             event.prevent_default();
-            mark_dropping(true);
-        }),
-    );
-    on("dragleave", Closure::new(|_| mark_dropping(false)));
-    on(
-        "drop",
-        Closure::new(move |event: Event| {
-            event.prevent_default();
-            mark_dropping(false);
-            let transfer = event.dyn_ref::<DragEvent>().and_then(DragEvent::data_transfer);
-            let Some(transfer) = transfer else { return };
-            match transfer.files().and_then(|files| files.get(0)) {
-                Some(file) => take_file(sheet, file),
-                None => match transfer.get_data("text/plain") {
-                    Ok(text) if !text.trim().is_empty() => take_text(sheet, text),
-                    _ => {}
-                },
-            }
-        }),
-    );
+            take_text(sheet, text);
+        }
+    })
+    .on("dragover", |event| {
+        event.prevent_default();
+        mark_dropping(true);
+    })
+    .on("dragleave", |_| mark_dropping(false))
+    .on("drop", move |event| {
+        event.prevent_default();
+        mark_dropping(false);
+        let transfer = event.dyn_ref::<DragEvent>().and_then(DragEvent::data_transfer);
+        let Some(transfer) = transfer else { return };
+        match transfer.files().and_then(|files| files.get(0)) {
+            Some(file) => take_file(sheet, file),
+            None => match transfer.get_data("text/plain") {
+                Ok(text) if !text.trim().is_empty() => take_text(sheet, text),
+                _ => {}
+            },
+        }
+    })
 }
 
 fn is_in_a_field(event: &Event) -> bool {
@@ -97,8 +81,7 @@ fn is_in_a_field(event: &Event) -> bool {
 }
 
 fn mark_dropping(is_dropping: bool) {
-    if let Some(body) = document().body() {
-        // An outline less does no harm.
-        let _ = body.class_list().toggle_with_force("dropping", is_dropping);
+    if let Some(body) = document().and_then(|document| document.body()) {
+        body.set_class_name(if is_dropping { "dropping" } else { "" });
     }
 }

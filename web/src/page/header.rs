@@ -1,99 +1,88 @@
 //! The head of the page: title, undo, open, save, and where the study is kept.
 
-use kinetics_core::study::Study;
-use leptos::html::Textarea;
-use leptos::prelude::*;
+use web_sys::HtmlTextAreaElement;
 
 use super::file_button::file_button;
 use super::keeping::Keeping;
+use super::live::State;
+use super::part::{Part, button, part, value_of};
 use super::sheet::Sheet;
+use super::timer::after;
 use crate::keep::{clipboard, files, frame};
 
 /// The head.
-pub fn header(sheet: Sheet, keeping: Keeping) -> AnyView {
-    let title = move || sheet.study(|study| study.title.clone());
-    let retitle = move |typed: String| sheet.change("title", |study| study.title = typed);
-    let shows_text = RwSignal::new(false);
-    let save = move |_| {
-        let study = sheet.study_now(Study::clone);
+pub fn header(sheet: Sheet, keeping: &Keeping) -> Part {
+    let title = part("input")
+        .with("type", "text")
+        .with("aria-label", "Title of the study")
+        .with("placeholder", "Title of the study")
+        .with("autocomplete", "off")
+        .holds(move || sheet.study().title.clone())
+        .on("input", move |event| {
+            let typed = value_of(event);
+            sheet.change("title", |study| study.title = typed);
+        })
+        .on("blur", move |_| sheet.seal());
+    let shows_text = State::new(false);
+    let showing = shows_text.clone();
+    let save = move || {
+        let study = sheet.study();
         files::download(&file_name(&study.title), &study.to_json());
         // A sandboxed frame drops downloads without a word: the text is the way out.
-        shows_text.set(frame::is_embedded());
+        showing.set(frame::is_embedded());
     };
-    view! {
-        <header class="top">
-            <h1>"Kelvinclock"</h1>
-            <span class="title">
-                <input
-                    type="text"
-                    aria-label="Title of the study"
-                    placeholder="Title of the study"
-                    autocomplete="off"
-                    prop:value=title
-                    on:input=move |event| retitle(event_target_value(&event))
-                    on:blur=move |_| sheet.seal()
-                />
-            </span>
-            <nav aria-label="Study">
-                <button
-                    type="button"
-                    disabled=move || !sheet.can.get().0
-                    on:click=move |_| sheet.undo()
-                >
-                    "Undo"
-                </button>
-                <button
-                    type="button"
-                    disabled=move || !sheet.can.get().1
-                    on:click=move |_| sheet.redo()
-                >
-                    "Redo"
-                </button>
-                {file_button(sheet, "Open", "")}
-                <button type="button" on:click=save>"Save"</button>
-            </nav>
-            <p class="kept">
-                {keeping.words()}
-                " "
-                <span role="status" aria-live="polite">{move || sheet.said.get()}</span>
-            </p>
-            <Show when=move || shows_text.get()>{study_text(sheet, shows_text)}</Show>
-        </header>
-    }
-    .into_any()
+    let tools = part("nav")
+        .with("aria-label", "Study")
+        .add(button("Undo", move || sheet.undo()).is("disabled", move || !sheet.can().0))
+        .add(button("Redo", move || sheet.redo()).is("disabled", move || !sheet.can().1))
+        .add(file_button(sheet, "Open"))
+        .add(button("Save", save));
+    let said = part("span").with("role", "status").says(move || sheet.said());
+    let is_shown = shows_text.clone();
+    part("header")
+        .class("top")
+        .add(part("h1").text("Kelvinclock"))
+        .add(part("span").class("title").add(title))
+        .add(tools)
+        .add(part("p").class("kept").add(keeping.words()).text(" ").add(said))
+        .when(move || is_shown.get(), move || study_text(sheet, &shows_text))
 }
 
 /// The study as text, to be carried away by hand.
-fn study_text(sheet: Sheet, shown: RwSignal<bool>) -> AnyView {
-    let node = NodeRef::<Textarea>::new();
-    let text = move || sheet.study(Study::to_json);
-    let copy = move |_| {
-        let whole = sheet.study_now(Study::to_json);
-        leptos::task::spawn_local(async move {
-            if clipboard::copy(&whole).await {
+fn study_text(sheet: Sheet, is_shown: &State<bool>) -> Part {
+    let area = part("textarea")
+        .with("id", "study-text")
+        .with("readonly", "")
+        .holds(move || sheet.study().to_json());
+    let element = area.element::<HtmlTextAreaElement>();
+    let copy = move || {
+        let element = element.clone();
+        let whole = sheet.study().to_json();
+        after(async move { clipboard::copy(&whole).await }, move |is_copied| {
+            if is_copied {
                 sheet.tell("The study is copied. Paste it into this page to open it again.");
-            } else if let Some(area) = node.get_untracked() {
+            } else if let Some(area) = element {
                 area.select();
                 sheet.tell(
-                    "This frame forbids copying by a button: the text is selected, press Ctrl+C.",
+                    "Copying by a button is forbidden here: the text is selected, press Ctrl+C.",
                 );
             }
         });
     };
-    view! {
-        <div class="paste">
-            <label for="study-text" class="quiet">
-                "If no file appeared, the page around this frame forbids downloads. This is the \
-                 study; pasted into this page it opens again."
-            </label>
-            <textarea id="study-text" readonly node_ref=node prop:value=text></textarea>
-            <div class="actions">
-                <button type="button" on:click=copy>"Copy the study"</button>
-                <button type="button" on:click=move |_| shown.set(false)>"Close"</button>
-            </div>
-        </div>
-    }
-    .into_any()
+    let is_shown = is_shown.clone();
+    part("div")
+        .class("paste")
+        .add(part("label").with("for", "study-text").class("quiet").text(
+            "If no file appeared, the page around this frame forbids downloads. This is the study; \
+             pasted into this page it opens again.",
+        ))
+        .add(area)
+        .add(
+            part("div")
+                .class("actions")
+                .add(button("Copy the study", copy))
+                .add(button("Close", move || is_shown.set(false))),
+        )
 }
 
 /// "glaze-hardener-batch-7.kelvinclock.json".

@@ -1,5 +1,7 @@
 //! Undo and redo: earlier and later studies, one step for each thing done.
 
+use std::rc::Rc;
+
 use kinetics_core::study::Study;
 
 /// More steps than this are forgotten from the far end.
@@ -10,8 +12,8 @@ const MOST_BYTES: usize = 48_000_000;
 /// What was and what was taken back.
 #[derive(Debug, Default)]
 pub struct History {
-    past: Vec<Study>,
-    future: Vec<Study>,
+    past: Vec<Rc<Study>>,
+    future: Vec<Rc<Study>>,
     /// The step that is under way, such as typing into one blank; empty when none is.
     step: String,
 }
@@ -19,7 +21,7 @@ pub struct History {
 impl History {
     /// Keeps a study as it was before a change. Changes that carry the same `step` without a
     /// [`seal`](Self::seal) between them are one; an empty `step` stands alone.
-    pub fn record(&mut self, before: Study, step: &str) {
+    pub fn record(&mut self, before: Rc<Study>, step: &str) {
         self.future.clear();
         if !step.is_empty() && step == self.step {
             return;
@@ -48,7 +50,7 @@ impl History {
     }
 
     /// The study before the last change; `now` can be had back.
-    pub fn undo(&mut self, now: Study) -> Option<Study> {
+    pub fn undo(&mut self, now: Rc<Study>) -> Option<Rc<Study>> {
         self.seal();
         let before = self.past.pop()?;
         self.future.push(now);
@@ -56,7 +58,7 @@ impl History {
     }
 
     /// The study before the last undo.
-    pub fn redo(&mut self, now: Study) -> Option<Study> {
+    pub fn redo(&mut self, now: Rc<Study>) -> Option<Rc<Study>> {
         self.seal();
         let after = self.future.pop()?;
         self.past.push(now);
@@ -74,8 +76,8 @@ impl History {
 mod tests {
     use super::*;
 
-    fn titled(title: &str) -> Study {
-        Study { title: title.into(), ..Study::new() }
+    fn titled(title: &str) -> Rc<Study> {
+        Rc::new(Study { title: title.into(), ..Study::new() })
     }
 
     #[test]
@@ -110,7 +112,7 @@ mod tests {
         let mut large = Study::new();
         large.measured.text = "x".repeat(MOST_BYTES + 1);
         history.record(titled("a"), "");
-        history.record(large, "");
+        history.record(Rc::new(large), "");
         assert_eq!(history.undo(titled("c")).unwrap().measured.text.len(), MOST_BYTES + 1);
         assert_eq!(history.undo(titled("c")), None);
         for number in 0..MOST_STEPS + 5 {

@@ -1,30 +1,23 @@
 //! The law's picture, beside what was measured.
 
-use std::sync::Arc;
-
-use leptos::html::Canvas;
-use leptos::prelude::*;
+use std::rc::Rc;
 
 use super::canvas::{self, Drawing};
+use super::live::State;
+use super::once::once;
+use super::part::{Part, part};
 use super::picture_table::picture_table;
-use super::pictures::{self, temperature_range};
+use super::pictures;
 use super::sheet::Sheet;
 use super::surroundings::Surroundings;
+use crate::figure::Picture;
 
 /// The picture with its table.
-pub fn figure(sheet: Sheet, surroundings: ReadSignal<Surroundings>) -> AnyView {
-    let node = NodeRef::<Canvas>::new();
-    let drawing: Signal<Drawing> = Signal::derive(move || {
-        let evaluation = sheet.evaluation();
-        Arc::new(sheet.study(|study| pictures::law_picture(study, &evaluation))) as Drawing
+pub fn figure(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
+    let drawing: Drawing = once(sheet, move |study, evaluation| {
+        Rc::new(pictures::law_picture(study, evaluation, &sheet.curve())) as Rc<dyn Picture>
     });
-    let temperatures = Signal::derive(move || temperature_range(&sheet.evaluation()));
-    canvas::paint(node, drawing, temperatures, surroundings);
-    view! {
-        <figure class="picture">
-            <canvas class="law" node_ref=node></canvas>
-            {picture_table(sheet, drawing)}
-        </figure>
-    }
-    .into_any()
+    let canvas = part("canvas").class("law");
+    canvas::paint(&canvas, sheet, Rc::clone(&drawing), surroundings);
+    part("figure").class("picture").add(canvas).add(picture_table(sheet, drawing))
 }

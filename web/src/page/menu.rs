@@ -1,7 +1,11 @@
 //! A quiet menu: what is chosen reads as a part of the text around it, and is as wide.
 
-use leptos::html::Select;
-use leptos::prelude::*;
+use std::rc::Rc;
+
+use web_sys::{Event, HtmlSelectElement};
+
+use super::live::follow;
+use super::part::{Part, part};
 
 /// One line of a menu.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -27,60 +31,63 @@ impl Choice {
     }
 }
 
+/// What a menu offers now, and the value of the line that is chosen.
+pub type Offer = (Vec<Choice>, String);
+
 /// A menu that shows what is chosen and hands over what the user picks.
 pub fn menu(
-    label: Signal<String>,
-    choices: Signal<Vec<Choice>>,
-    chosen: Signal<String>,
-    pick: impl Fn(String) + 'static,
-) -> AnyView {
-    let node = NodeRef::<Select>::new();
-    // After the lines are in place: a menu cannot show a line that it does not have yet.
-    Effect::new(move |_| {
-        choices.track();
-        let chosen = chosen.get();
-        if let Some(select) = node.get() {
-            select.set_value(&chosen);
-        }
-    });
-    let shown = move || {
-        let chosen = chosen.get();
-        choices.with(|all| {
-            all.iter().find(|c| c.value == chosen).map(|c| c.text.clone()).unwrap_or_default()
-        })
-    };
-    view! {
-        <span class="menu" data-text=shown>
-            <select
-                node_ref=node
-                aria-label=move || label.get()
-                on:change=move |event| {
-                    pick(event_target_value(&event));
-                    // What was not accepted is shown as it was.
-                    if let Some(select) = node.get_untracked() {
-                        select.set_value(&chosen.get_untracked());
-                    }
-                }
-            >
-                {move || lines(choices.get())}
-            </select>
-        </span>
+    label: &str,
+    offer: impl Fn() -> Offer + 'static,
+    pick: impl Fn(&str) + 'static,
+) -> Part {
+    menu_boxed(label, Rc::new(offer), Box::new(pick))
+}
+
+fn menu_boxed(label: &str, offer: Rc<dyn Fn() -> Offer>, pick: Box<dyn Fn(&str)>) -> Part {
+    let shown = Rc::clone(&offer);
+    let choices = Rc::clone(&offer);
+    let select = part("select")
+        .with("aria-label", label)
+        .filled(move || choices().0, |choices| lines(choices))
+        .on("change", move |event| {
+            if let Some(select) = select_of(event) {
+                pick(&select.value());
+                // What was not accepted is shown as it was, by the look that follows.
+                super::live::changed();
+            }
+        });
+    if let Some(element) = select.element::<HtmlSelectElement>() {
+        follow(move || {
+            let (_, chosen) = offer();
+            if element.value() != chosen {
+                element.set_value(&chosen);
+            }
+        });
     }
-    .into_any()
+    let words = move || {
+        let (choices, chosen) = shown();
+        choices.into_iter().find(|choice| choice.value == chosen).map(|choice| choice.text)
+    };
+    part("span").class("menu").follows("data-text", words).add(select)
+}
+
+/// The menu that an event comes from.
+pub fn select_of(event: &Event) -> Option<HtmlSelectElement> {
+    use wasm_bindgen::JsCast;
+    event.target().and_then(|target| target.dyn_into().ok())
 }
 
 /// The lines, those of a heading together under it.
-fn lines(choices: Vec<Choice>) -> Vec<AnyView> {
+pub fn lines(choices: &[Choice]) -> Vec<Part> {
     let mut lines = Vec::new();
     for group in choices.chunk_by(|a, b| a.group == b.group) {
-        let options: Vec<AnyView> = group
+        let options = group
             .iter()
-            .map(|c| view! { <option value=c.value.clone()>{c.text.clone()}</option> }.into_any())
-            .collect();
+            .map(|choice| part("option").with("value", &choice.value).text(&choice.text));
         match group.first().map(|choice| choice.group) {
             Some("") | None => lines.extend(options),
             Some(heading) => {
-                lines.push(view! { <optgroup label=heading>{options}</optgroup> }.into_any());
+                lines.push(part("optgroup").with("label", heading).add_all(options));
             }
         }
     }

@@ -3,87 +3,95 @@
 //! One study is the truth ([`sheet`]); the core turns it into findings, and everything here
 //! shows them. Nothing is computed here that a chemist would read.
 
-mod arrivals;
-mod asked;
-mod blank;
-mod canvas;
+// What all parts share.
+mod live;
+mod once;
+mod part;
+mod timer;
+
+// The state.
 mod example;
-mod file_button;
-mod found;
-mod header;
 mod history;
 mod keeping;
-mod law_picture;
-mod measured;
+mod reading;
+mod sheet;
+
+// Small parts.
+mod amount;
+mod arrivals;
+mod blank;
+mod canvas;
+mod file_button;
 mod menu;
 mod picture_table;
 mod pictures;
-mod reading;
-mod record;
-mod sheet;
 mod surroundings;
 
+// The sections.
+mod asked;
+mod choices;
+mod found;
+mod header;
+mod law_picture;
+mod measured;
+mod record;
+
 use keeping::Keeping;
-use leptos::mount::mount_to;
-use leptos::prelude::*;
-use leptos::web_sys::{HtmlElement, KeyboardEvent};
+use part::{Part, document, part};
 use sheet::Sheet;
 use wasm_bindgen::JsCast;
-use wasm_bindgen::closure::Closure;
+use web_sys::{Element, Event, HtmlElement, KeyboardEvent};
 
 use crate::keep::frame;
 
 /// Fills an element with the page, for as long as the document lives.
-pub fn fill(place: HtmlElement) {
-    frame::report_height(&place);
-    mount_to(place, page).forget();
-}
-
-fn page() -> impl IntoView {
+pub fn fill(place: Element) {
     let (sheet, keeping) = Keeping::begin();
     let surroundings = surroundings::watch();
-    arrivals::listen(sheet);
-    listen_for_keys(sheet);
-    view! {
-        {header::header(sheet, keeping)}
-        <main>
-            {measured::section(sheet, surroundings)}
-            {found::section(sheet)}
-            {asked::section(sheet, surroundings)}
-            {record::section(sheet)}
-        </main>
-        <footer class="foot">
-            <p>
-                "Results are estimates for screening. Decisions that can hurt someone rest on \
-                 calorimetry, on local codes and on licensed practice."
-            </p>
-            <p>
-                "Kelvinclock " {crate::api::version()}
-                ". It computes in this page: no server, no network, nothing is sent anywhere."
-            </p>
-        </footer>
+    if let Some(body) = document().and_then(|document| document.body()) {
+        let body = arrivals::listen(Part::of(body.into()), sheet);
+        drop(body.on("keydown", move |event| undo_by_key(sheet, event)));
     }
+    let busy = move || sheet.is_working().then(|| "true".to_owned());
+    let main = part("main")
+        .follows("aria-busy", busy)
+        .follows("class", move || sheet.is_working().then(|| "working".to_owned()))
+        .add(measured::section(sheet, surroundings.clone()))
+        .add(found::section(sheet))
+        .add(asked::section(sheet, surroundings))
+        .add(record::section(sheet));
+    frame::report_height(&place);
+    drop(Part::of(place).add(header::header(sheet, &keeping)).add(main).add(footer()));
+}
+
+fn footer() -> Part {
+    let version = crate::api::version();
+    part("footer")
+        .class("foot")
+        .add(part("p").text(
+            "Results are estimates for screening. Decisions that can hurt someone rest on \
+             calorimetry, on local codes and on licensed practice.",
+        ))
+        .add(part("p").text(&format!(
+            "Kelvinclock {version}. It computes in this page: no server, no network, nothing is \
+             sent anywhere."
+        )))
 }
 
 /// Undo and redo by keys, outside of fields, which have their own.
-fn listen_for_keys(sheet: Sheet) {
-    let closure = Closure::<dyn Fn(KeyboardEvent)>::new(move |event: KeyboardEvent| {
-        let is_command = (event.ctrl_key() || event.meta_key()) && !event.alt_key();
-        let target = event.target().and_then(|t| t.dyn_into::<HtmlElement>().ok());
-        let is_field = target
-            .is_some_and(|element| matches!(element.tag_name().as_str(), "INPUT" | "TEXTAREA"));
-        if !is_command || is_field {
-            return;
-        }
-        match (event.key().to_lowercase().as_str(), event.shift_key()) {
-            ("z", false) => sheet.undo(),
-            ("z", true) | ("y", _) => sheet.redo(),
-            _ => return,
-        }
-        event.prevent_default();
-    });
-    // Refused only where there are no events at all; the buttons stay.
-    let _ =
-        document().add_event_listener_with_callback("keydown", closure.as_ref().unchecked_ref());
-    closure.forget();
+fn undo_by_key(sheet: Sheet, event: &Event) {
+    let Some(key) = event.dyn_ref::<KeyboardEvent>() else { return };
+    let is_command = (key.ctrl_key() || key.meta_key()) && !key.alt_key();
+    let target = event.target().and_then(|target| target.dyn_into::<HtmlElement>().ok());
+    let is_field =
+        target.is_some_and(|element| matches!(element.tag_name().as_str(), "INPUT" | "TEXTAREA"));
+    if !is_command || is_field {
+        return;
+    }
+    match (key.key().to_lowercase().as_str(), key.shift_key()) {
+        ("z", false) => sheet.undo(),
+        ("z", true) | ("y", _) => sheet.redo(),
+        _ => return,
+    }
+    event.prevent_default();
 }

@@ -1,11 +1,14 @@
 //! From findings to pictures: what was measured, the law and the questions, as figures take them.
 
+use std::rc::Rc;
+
 use kinetics_core::answer::{Answer, Basis};
-use kinetics_core::curve::{self, CurvePoint};
+use kinetics_core::curve::{CurvePoint, ln_rates, ln_times};
 use kinetics_core::grounds::Grounds as CoreGrounds;
 use kinetics_core::quantity::{Kelvin, Quantity};
 use kinetics_core::question::{BlankKind, Question};
 use kinetics_core::study::{Evaluation, Study};
+use kinetics_core::temperature_law::FittedLaw;
 use kinetics_core::units;
 use kinetics_core::wording::{logarithm_of, typed};
 use serde_json::{Map, Value};
@@ -18,8 +21,8 @@ use crate::figure::time_map::{
     FlagInterval, MeasuredRegion, TimeFlag, TimeLine, TimeMap, TimeSample, View,
 };
 
-/// Points of a curve: enough that none of its bends shows corners.
-const CURVE_POINTS: usize = 120;
+/// Points of a curve: bands bend gently, and each point costs an interval.
+const CURVE_POINTS: usize = 40;
 /// More flags of one question than this hide each other.
 const MOST_FLAGS: usize = 8;
 /// More lines than this on the time map cannot be told apart.
@@ -27,12 +30,49 @@ const MOST_LINES: usize = 6;
 /// More points than this are only a cloud, of which a part says as much.
 const MOST_POINTS: usize = 2_000;
 
+/// The law over all temperatures that the pictures show.
+pub type Curve = Rc<Vec<CurvePoint>>;
+
+/// The law's curve; an interval at each of its points is the dear part of a picture, so that
+/// both share it.
+pub fn curve(study: &Study, evaluation: &Evaluation) -> Curve {
+    let Some(basis) = &evaluation.basis else { return Curve::default() };
+    let of_law = without_curve(study, evaluation).temperatures();
+    let of_map = without_lines(study, evaluation, None).temperatures();
+    Rc::new(samples(basis, of_law.0.min(of_map.0), of_law.1.max(of_map.1)))
+}
+
 /// ln k against 1/T.
-pub fn law_picture(study: &Study, evaluation: &Evaluation) -> LawPicture {
+pub fn law_picture(study: &Study, evaluation: &Evaluation, curve: &Curve) -> LawPicture {
+    let mut picture = without_curve(study, evaluation);
+    let Some(basis) = &evaluation.basis else { return picture };
+    let shift = ln_unit(evaluation);
+    picture.curve = curve
+        .iter()
+        .map(|point| LawSample {
+            temperature: point.temperature.0,
+            ln_rate: point.ln_value - shift,
+            interval: point.limits.map(|(low, high)| (low - shift, high - shift)),
+            grounds: grounds(point.grounds),
+        })
+        .collect();
+    let along = |rival: &FittedLaw| {
+        let ln_rate = |point: &CurvePoint| rival.ln_rate(point.temperature) - shift;
+        curve.iter().map(|point| (point.temperature.0, ln_rate(point))).collect()
+    };
+    picture.rivals = basis
+        .rivals
+        .iter()
+        .map(|rival| RivalCurve { name: rival.law.code().replace('-', " "), samples: along(rival) })
+        .collect();
+    picture
+}
+
+/// What of the law's picture needs no law.
+fn without_curve(study: &Study, evaluation: &Evaluation) -> LawPicture {
     let basis = evaluation.basis.as_ref();
     let unit = basis.and_then(|b| b.shown_unit).or(evaluation.rates.unit);
-    // The picture's axis is in the unit of the data, the core's ln k in the base unit.
-    let shift = unit.map_or(0.0, |unit| unit.to_base().ln());
+    let shift = ln_unit(evaluation);
     let runs = &evaluation.rates.runs;
     let step = runs.len().div_ceil(MOST_POINTS).max(1);
     let points = runs.iter().zip(&evaluation.findings.runs).step_by(step).map(|(run, found)| {
@@ -46,55 +86,34 @@ pub fn law_picture(study: &Study, evaluation: &Evaluation) -> LawPicture {
             excluded: false,
         }
     });
-    let mut picture = LawPicture {
+    LawPicture {
         rate_label: logarithm_of("k", unit),
         points: points.collect(),
         span: basis.map(span),
         flags: law_flags(study),
         temperature_unit: temperature_unit(study),
         ..LawPicture::default()
-    };
-    let (coldest, warmest) = picture.temperatures();
-    if let Some(basis) = basis {
-        picture.curve = samples(basis, coldest, warmest)
-            .iter()
-            .map(|point| LawSample {
-                temperature: point.temperature.0,
-                ln_rate: point.ln_value - shift,
-                interval: point.limits.map(|(low, high)| (low - shift, high - shift)),
-                grounds: grounds(point.grounds),
-            })
-            .collect();
-        picture.rivals = basis
-            .rivals
-            .iter()
-            .map(|rival| RivalCurve {
-                name: rival.law.code().replace('-', " "),
-                samples: picture
-                    .curve
-                    .iter()
-                    .map(|s| (s.temperature, rival.ln_rate(Kelvin(s.temperature)) - shift))
-                    .collect(),
-            })
-            .collect();
     }
-    picture
+}
+
+/// Pictures have their axis in the unit of the data, the core has ln k in the base unit: the
+/// difference of the two.
+fn ln_unit(evaluation: &Evaluation) -> f64 {
+    let unit = evaluation.basis.as_ref().and_then(|basis| basis.shown_unit);
+    unit.or(evaluation.rates.unit).map_or(0.0, |unit| unit.to_base().ln())
 }
 
 /// Time against temperature, for the extents that are asked for.
-pub fn time_map(study: &Study, evaluation: &Evaluation, held_view: Option<View>) -> TimeMap {
-    let mut map = TimeMap {
-        flags: time_flags(study, evaluation),
-        temperature_unit: temperature_unit(study),
-        held_view,
-        ..TimeMap::default()
-    };
+pub fn time_map(
+    study: &Study,
+    evaluation: &Evaluation,
+    curve: &Curve,
+    held_view: Option<View>,
+) -> TimeMap {
+    let mut map = without_lines(study, evaluation, held_view);
     let Some(basis) = &evaluation.basis else { return map };
-    map.measured = Some(MeasuredRegion { temperatures: span(basis), times: None });
-    let (coldest, warmest) = map.temperatures();
-    let rates = samples(basis, coldest, warmest);
     for (label, extent) in extents(study, basis) {
-        let Ok(times) = curve::ln_times(basis, &rates, extent) else { continue };
+        let Ok(times) = ln_times(basis, curve, extent) else { continue };
         let samples = times
             .iter()
             .map(|point| TimeSample {
@@ -107,6 +126,18 @@ pub fn time_map(study: &Study, evaluation: &Evaluation, held_view: Option<View>)
         map.lines.push(TimeLine { label, samples });
     }
     map
+}
+
+/// What of the time map needs no law.
+fn without_lines(study: &Study, evaluation: &Evaluation, held_view: Option<View>) -> TimeMap {
+    let measured = evaluation.basis.as_ref().map(span);
+    TimeMap {
+        flags: time_flags(study, evaluation),
+        measured: measured.map(|temperatures| MeasuredRegion { temperatures, times: None }),
+        temperature_unit: temperature_unit(study),
+        held_view,
+        ..TimeMap::default()
+    }
 }
 
 /// The temperatures between which the colours of a study run.
@@ -129,7 +160,7 @@ fn samples(basis: &Basis, coldest: f64, warmest: f64) -> Vec<CurvePoint> {
         let share = (1.0 / pair[0] - 1.0 / pair[1]) / (1.0 / coldest - 1.0 / warmest);
         if share > 0.0 {
             let count = (CURVE_POINTS as f64 * share).ceil() as usize + 2;
-            points.extend(curve::ln_rates(basis, Kelvin(pair[0]), Kelvin(pair[1]), count));
+            points.extend(ln_rates(basis, Kelvin(pair[0]), Kelvin(pair[1]), count));
         }
     }
     points

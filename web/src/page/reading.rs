@@ -1,10 +1,10 @@
 //! Reading a long text in slices, so that the page stays alive.
 
+use std::rc::Rc;
+use std::sync::atomic::{AtomicU64, Ordering};
+
 use kinetics_core::study::{Prepared, Study, hints};
 use kinetics_core::table::Reader;
-use leptos::prelude::*;
-use std::sync::atomic::{AtomicU64, Ordering};
-use std::time::Duration;
 
 /// A text up to so many bytes is read at once.
 const SHORT_BYTES: usize = 40_000;
@@ -16,7 +16,7 @@ static NUMBERS: AtomicU64 = AtomicU64::new(0);
 /// A study whose text is being read.
 pub struct Reading {
     /// The study.
-    pub study: Study,
+    pub study: Rc<Study>,
     /// Whether it is a new step of the history, and not one that was walked to.
     pub is_new_step: bool,
     /// Tells it from others.
@@ -26,7 +26,7 @@ pub struct Reading {
 
 impl Reading {
     /// Begins.
-    pub fn new(study: Study, is_new_step: bool) -> Self {
+    pub fn new(study: Rc<Study>, is_new_step: bool) -> Self {
         let reader = Reader::new(study.measured.text.clone(), hints(&study));
         let number = NUMBERS.fetch_add(1, Ordering::Relaxed);
         Self { study, is_new_step, number, reader }
@@ -43,12 +43,7 @@ impl Reading {
     }
 
     /// Reads what is left.
-    pub fn finish(self) -> (Study, Prepared) {
+    pub fn finish(self) -> (Rc<Study>, Prepared) {
         (self.study, Prepared { table: self.reader.finish() })
     }
-}
-
-/// Runs something after the browser had its turn.
-pub fn later(task: impl FnOnce() + 'static) {
-    set_timeout(task, Duration::ZERO);
 }

@@ -1,32 +1,41 @@
 //! Record: the account of the study, to print and to copy.
 
-use leptos::html::Pre;
-use leptos::prelude::*;
+use web_sys::Element;
 
+use super::once::once;
+use super::part::{Part, button, part};
 use super::sheet::Sheet;
+use super::timer::after;
 use crate::keep::{clipboard, frame};
 
 /// A longer account is shown in part; copying takes the whole.
 const MOST_SHOWN_BYTES: usize = 60_000;
 
 /// The section.
-pub fn section(sheet: Sheet) -> AnyView {
-    let node = NodeRef::<Pre>::new();
-    let text = Memo::new(move |_| shown(&sheet.evaluation().findings.record.text));
-    let copy = move |_| {
-        let whole = sheet.evaluation_now().findings.record.text.clone();
-        leptos::task::spawn_local(async move {
-            if clipboard::copy(&whole).await {
+pub fn section(sheet: Sheet) -> Part {
+    let text = once(sheet, |_, evaluation| shown(&evaluation.findings.record.text));
+    let account = part("pre")
+        .class("record")
+        .with("tabindex", "0")
+        .with("role", "region")
+        .with("aria-label", "The account as text")
+        .says(move || text());
+    let element = account.element::<Element>();
+    let copy = move || {
+        let element = element.clone();
+        let whole = sheet.evaluation().findings.record.text.clone();
+        after(async move { clipboard::copy(&whole).await }, move |is_copied| {
+            if is_copied {
                 sheet.tell("The record is copied.");
-            } else if let Some(element) = node.get_untracked() {
+            } else if let Some(element) = element {
                 clipboard::select(&element);
                 sheet.tell(
-                    "This frame forbids copying by a button: the record is selected, press Ctrl+C.",
+                    "Copying by a button is forbidden here: the record is selected, press Ctrl+C.",
                 );
             }
         });
     };
-    let print = move |_| {
+    let print = move || {
         frame::print();
         if frame::is_embedded() {
             sheet.tell(
@@ -35,29 +44,36 @@ pub fn section(sheet: Sheet) -> AnyView {
             );
         }
     };
-    view! {
-        <section aria-labelledby="record">
-            <h2 id="record">"Record"</h2>
-            <pre class="record" tabindex="0" role="region" aria-label="Record" node_ref=node>
-                {move || text.get()}
-            </pre>
-            <div class="actions">
-                <button type="button" on:click=copy>"Copy as text"</button>
-                <button type="button" on:click=print>"Print"</button>
-            </div>
-        </section>
-    }
-    .into_any()
+    part("section")
+        .with("aria-labelledby", "record")
+        .add(part("h2").with("id", "record").text("Record"))
+        .add(account)
+        .add(
+            part("div")
+                .class("actions")
+                .add(button("Copy as text", copy))
+                .add(button("Print", print)),
+        )
 }
 
 fn shown(text: &str) -> String {
     if text.len() <= MOST_SHOWN_BYTES {
         return text.to_owned();
     }
-    let end = text.char_indices().map(|(at, _)| at).take_while(|at| *at <= MOST_SHOWN_BYTES).last();
-    let part = text.get(..end.unwrap_or(0)).unwrap_or_default();
-    format!(
-        "{part}\n…\n(The whole account is {} characters long; copying takes all of it.)",
-        text.chars().count()
-    )
+    let end = (0..=MOST_SHOWN_BYTES).rev().find(|at| text.is_char_boundary(*at)).unwrap_or(0);
+    let part = text.get(..end).unwrap_or_default();
+    format!("{part}\n…\n(This is the beginning; copying takes the whole account.)")
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_long_account_is_shown_in_part() {
+        assert_eq!(shown("short"), "short");
+        let long = "µ".repeat(MOST_SHOWN_BYTES);
+        let part = shown(&long);
+        assert!(part.len() < MOST_SHOWN_BYTES + 100 && part.contains("copying takes the whole"));
+    }
 }

@@ -1,119 +1,170 @@
 //! The state of the page: one study is the truth. Its text is read into a table, and the core
 //! turns both into findings; the page shows them.
 
-use std::sync::Arc;
+use std::cell::{Cell, RefCell};
+use std::rc::Rc;
+use std::time::Duration;
 
 use kinetics_core::study::{Evaluation, Prepared, Study, evaluate_prepared, hints};
-use leptos::prelude::*;
 
 use super::example;
 use super::history::History;
-use super::reading::{self, Reading};
+use super::live::changed;
+use super::pictures::{Curve, curve, temperature_range};
+use super::reading::Reading;
+use super::timer::later;
+use crate::figure::temperature_colour::TemperatureRange;
+
+/// A longer table is evaluated after a pause, so that typing on is not held up.
+const MOST_ROWS_AT_ONCE: usize = 2_000;
+const PAUSE: Duration = Duration::from_millis(250);
 
 /// What is on the page, and the ways to change it.
 #[derive(Clone, Copy)]
-pub struct Sheet {
-    study: RwSignal<Study>,
-    /// The table of exactly this study's text.
-    prepared: RwSignal<Arc<Prepared>>,
-    evaluation: RwSignal<Arc<Evaluation>>,
-    history: StoredValue<History>,
-    /// Whether something can be undone, and redone.
-    pub can: RwSignal<(bool, bool)>,
+pub struct Sheet(&'static Content);
+
+struct Content {
+    shown: RefCell<Shown>,
+    history: RefCell<History>,
     /// A text that is being read: nothing on the page changes before its end.
-    reading: StoredValue<Option<Reading>>,
-    /// How far reading is, from 0 to 1.
-    pub progress: RwSignal<Option<f64>>,
-    /// The latest thing to tell, for the status line.
-    pub said: RwSignal<String>,
-    /// Counts the studies that took the place of all that was there.
-    pub opened: RwSignal<usize>,
+    reading: RefCell<Option<Reading>>,
+    progress: Cell<Option<f64>>,
+    /// Counts studies shown; a late evaluation of an earlier one is dropped.
+    studies: Cell<u64>,
+    is_working: Cell<bool>,
+    said: RefCell<String>,
+}
+
+/// A study with the table of exactly its text, and what follows from them.
+struct Shown {
+    study: Rc<Study>,
+    prepared: Rc<Prepared>,
+    evaluation: Rc<Evaluation>,
+    temperatures: TemperatureRange,
+    curve: Curve,
 }
 
 impl Sheet {
-    /// A page with a study on it.
+    /// A page with a study on it. It lives as long as the document.
     pub fn with(study: Study) -> Self {
-        let prepared = Arc::new(kinetics_core::study::prepare(&study));
-        let evaluation = Arc::new(evaluate_prepared(&study, &prepared));
-        Self {
-            study: RwSignal::new(study),
-            prepared: RwSignal::new(prepared),
-            evaluation: RwSignal::new(evaluation),
-            history: StoredValue::new(History::default()),
-            can: RwSignal::new((false, false)),
-            reading: StoredValue::new(None),
-            progress: RwSignal::new(None),
-            said: RwSignal::new(String::new()),
-            opened: RwSignal::new(0),
-        }
+        let prepared = kinetics_core::study::prepare(&study);
+        let evaluation = evaluate_prepared(&study, &prepared);
+        let shown = Shown {
+            temperatures: temperature_range(&evaluation),
+            curve: curve(&study, &evaluation),
+            study: Rc::new(study),
+            prepared: Rc::new(prepared),
+            evaluation: Rc::new(evaluation),
+        };
+        Self(Box::leak(Box::new(Content {
+            shown: RefCell::new(shown),
+            history: RefCell::default(),
+            reading: RefCell::default(),
+            progress: Cell::default(),
+            studies: Cell::default(),
+            is_working: Cell::default(),
+            said: RefCell::default(),
+        })))
     }
 
-    /// A part of the study; what depends on it follows.
-    pub fn study<T>(self, part: impl FnOnce(&Study) -> T) -> T {
-        self.study.with(part)
+    /// The study.
+    pub fn study(self) -> Rc<Study> {
+        Rc::clone(&self.0.shown.borrow().study)
     }
 
-    /// A part of the study, without following it.
-    pub fn study_now<T>(self, part: impl FnOnce(&Study) -> T) -> T {
-        self.study.with_untracked(part)
-    }
-
-    /// The table.
-    pub fn prepared(self) -> Arc<Prepared> {
-        self.prepared.get()
+    /// Its table.
+    pub fn prepared(self) -> Rc<Prepared> {
+        Rc::clone(&self.0.shown.borrow().prepared)
     }
 
     /// The findings and what they were made from.
-    pub fn evaluation(self) -> Arc<Evaluation> {
-        self.evaluation.get()
+    pub fn evaluation(self) -> Rc<Evaluation> {
+        Rc::clone(&self.0.shown.borrow().evaluation)
     }
 
-    /// The findings, without following them.
-    pub fn evaluation_now(self) -> Arc<Evaluation> {
-        self.evaluation.get_untracked()
+    /// The temperatures between which colours run.
+    pub fn temperatures(self) -> TemperatureRange {
+        self.0.shown.borrow().temperatures
+    }
+
+    /// The law over all temperatures that pictures show.
+    pub fn curve(self) -> Curve {
+        Curve::clone(&self.0.shown.borrow().curve)
+    }
+
+    /// Whether the findings are those of an earlier study, until a long table is evaluated.
+    pub fn is_working(self) -> bool {
+        self.0.is_working.get()
+    }
+
+    /// How far reading is, from 0 to 1, while a long text is read.
+    pub fn progress(self) -> Option<f64> {
+        self.0.progress.get()
+    }
+
+    /// The latest thing to tell.
+    pub fn said(self) -> String {
+        self.0.said.borrow().clone()
+    }
+
+    /// Whether something can be undone, and redone.
+    pub fn can(self) -> (bool, bool) {
+        self.0.history.borrow().can()
     }
 
     /// The text of a cell, to the letter.
     pub fn cell(self, row: usize, column: usize) -> String {
-        let prepared = self.prepared.get();
-        let span = prepared.table.rows.get(row).and_then(|row| row.cells.get(column));
-        let Some(span) = span.map(|cell| cell.span.clone()) else { return String::new() };
-        self.study.with(|study| study.measured.text.get(span).unwrap_or_default().to_owned())
+        let (study, prepared) = (self.study(), self.prepared());
+        let cell = prepared.table.rows.get(row).and_then(|row| row.cells.get(column));
+        let text = cell.and_then(|cell| study.measured.text.get(cell.span.clone()));
+        text.unwrap_or_default().to_owned()
     }
 
     /// The decimal sign in which quantities are typed and shown.
     pub fn decimal(self) -> char {
-        self.study.with(|study| study.display.decimal.map_or('.', |decimal| decimal.mark()))
+        self.study().display.decimal.map_or('.', |decimal| decimal.mark())
+    }
+
+    /// Whether the study is the invented example.
+    pub fn shows_example(self) -> bool {
+        example::is_shown(&self.study())
+    }
+
+    /// Says something in the status line.
+    pub fn tell(self, sentence: impl Into<String>) {
+        self.0.said.replace(sentence.into());
+        changed();
     }
 
     /// Changes the study. Changes of the same `step`, such as letters typed into one place, are
     /// undone at once; an empty `step` stands alone.
     pub fn change(self, step: &str, edit: impl FnOnce(&mut Study)) {
         let before = self.latest();
-        let mut after = before.clone();
+        let mut after = Study::clone(&before);
         edit(&mut after);
-        if after != before {
-            self.history.update_value(|history| history.record(before, step));
-            self.adopt(after, true);
+        if after != *before {
+            self.0.history.borrow_mut().record(before, step);
+            self.adopt(Rc::new(after), true);
         }
     }
 
     /// Ends a step: what is typed next is undone by itself.
     pub fn seal(self) {
-        self.history.update_value(History::seal);
+        self.0.history.borrow_mut().seal();
     }
 
     /// Puts a study in the place of all that is there; undo brings that back.
     pub fn open(self, study: Study) {
-        self.history.update_value(|history| history.record(self.latest(), ""));
-        self.adopt(study, true);
-        self.opened.update(|count| *count += 1);
+        let before = self.latest();
+        self.0.history.borrow_mut().record(before, "");
+        self.adopt(Rc::new(study), true);
     }
 
     /// Takes the last change back.
     pub fn undo(self) {
         let now = self.latest();
-        if let Some(study) = self.history.try_update_value(|h| h.undo(now)).flatten() {
+        let before = self.0.history.borrow_mut().undo(now);
+        if let Some(study) = before {
             self.adopt(study, false);
         }
     }
@@ -121,94 +172,99 @@ impl Sheet {
     /// Makes the last undone change again.
     pub fn redo(self) {
         let now = self.latest();
-        if let Some(study) = self.history.try_update_value(|h| h.redo(now)).flatten() {
+        let after = self.0.history.borrow_mut().redo(now);
+        if let Some(study) = after {
             self.adopt(study, false);
         }
     }
 
     /// Gives up reading; what was there before stays.
     pub fn stop_reading(self) {
-        let stopped = self.reading.try_update_value(Option::take).flatten();
-        self.progress.set(None);
+        let stopped = self.0.reading.take();
+        self.0.progress.set(None);
         if stopped.is_some_and(|reading| reading.is_new_step) {
-            self.history.update_value(History::forget_last);
+            self.0.history.borrow_mut().forget_last();
         }
         self.tell("Reading was stopped; what was there before is back.");
-        self.can.set(self.history.with_value(History::can));
-    }
-
-    /// Says something in the status line.
-    pub fn tell(self, sentence: impl Into<String>) {
-        self.said.set(sentence.into());
-    }
-
-    /// Whether the measured text is the invented example.
-    pub fn shows_example(self) -> bool {
-        self.study.with(example::is_shown)
     }
 
     /// The study as it will be once all is read.
-    fn latest(self) -> Study {
-        let pending = self
-            .reading
-            .with_value(|reading| reading.as_ref().map(|reading| reading.study.clone()));
-        pending.unwrap_or_else(|| self.study.get_untracked())
+    fn latest(self) -> Rc<Study> {
+        let reading = self.0.reading.borrow();
+        reading.as_ref().map_or_else(|| self.study(), |reading| Rc::clone(&reading.study))
     }
 
     /// Shows a study, after its text is read where that is a new one.
-    fn adopt(self, study: Study, is_new_step: bool) {
-        self.can.set(self.history.with_value(History::can));
-        let is_read = self.study.with_untracked(|shown| {
-            shown.measured.text == study.measured.text && hints(shown) == hints(&study)
-        });
-        if is_read {
-            self.reading.set_value(None);
-            self.progress.set(None);
-            self.show(study, self.prepared.get_untracked());
+    fn adopt(self, study: Rc<Study>, is_new_step: bool) {
+        changed();
+        self.0.reading.replace(None);
+        self.0.progress.set(None);
+        let shown = self.study();
+        if shown.measured.text == study.measured.text && hints(&shown) == hints(&study) {
+            let prepared = self.prepared();
+            self.show(study, prepared);
             return;
         }
         let reading = Reading::new(study, is_new_step);
         if reading.is_short() {
-            self.reading.set_value(None);
-            self.progress.set(None);
             let (study, prepared) = reading.finish();
-            self.show(study, Arc::new(prepared));
+            self.show(study, Rc::new(prepared));
             return;
         }
-        self.progress.set(Some(0.0));
         let number = reading.number;
-        self.reading.set_value(Some(reading));
-        reading::later(move || self.read_on(number));
+        self.0.progress.set(Some(0.0));
+        self.0.reading.replace(Some(reading));
+        later(Duration::ZERO, move || self.read_on(number));
     }
 
-    /// Reads one slice, and shows the study after the last.
+    /// Reads one slice, and shows the study after the last. A later change has its own slices.
     fn read_on(self, number: u64) {
-        let outcome = self.reading.try_update_value(|slot| {
-            // A later change has its own slices.
-            let reading = slot.as_mut().filter(|reading| reading.number == number)?;
-            match reading.slice() {
-                Some(progress) => Some(Ok(progress)),
-                None => slot.take().map(Err),
-            }
-        });
-        match outcome.flatten() {
-            None => {}
-            Some(Ok(progress)) => {
-                self.progress.set(Some(progress));
-                reading::later(move || self.read_on(number));
-            }
-            Some(Err(reading)) => {
-                self.progress.set(None);
-                let (study, prepared) = reading.finish();
-                self.show(study, Arc::new(prepared));
-            }
+        let Some(mut reading) = self.0.reading.take() else { return };
+        if reading.number != number {
+            self.0.reading.replace(Some(reading));
+            return;
+        }
+        changed();
+        let progress = reading.slice();
+        self.0.progress.set(progress);
+        if progress.is_some() {
+            self.0.reading.replace(Some(reading));
+            later(Duration::ZERO, move || self.read_on(number));
+        } else {
+            let (study, prepared) = reading.finish();
+            self.show(study, Rc::new(prepared));
         }
     }
 
-    fn show(self, study: Study, prepared: Arc<Prepared>) {
-        let evaluation = Arc::new(evaluate_prepared(&study, &prepared));
-        self.study.set(study);
-        self.prepared.set(prepared);
-        self.evaluation.set(evaluation);
+    fn show(self, study: Rc<Study>, prepared: Rc<Prepared>) {
+        let is_long = prepared.table.rows.len() > MOST_ROWS_AT_ONCE;
+        let number = self.0.studies.get() + 1;
+        self.0.studies.set(number);
+        self.0.is_working.set(is_long);
+        {
+            let mut shown = self.0.shown.borrow_mut();
+            shown.study = study;
+            shown.prepared = prepared;
+        }
+        if is_long {
+            later(PAUSE, move || self.evaluate(number));
+        } else {
+            self.evaluate(number);
+        }
+    }
+
+    /// Works out the findings, unless a later change will.
+    fn evaluate(self, number: u64) {
+        if self.0.studies.get() == number {
+            let evaluation = evaluate_prepared(&self.study(), &self.prepared());
+            {
+                let mut shown = self.0.shown.borrow_mut();
+                shown.temperatures = temperature_range(&evaluation);
+                shown.curve = curve(&shown.study, &evaluation);
+                shown.evaluation = Rc::new(evaluation);
+            }
+            self.0.is_working.set(false);
+            changed();
+        }
     }
 }

@@ -1,10 +1,13 @@
 //! What the reader's system asks for: light or dark, its own colours, a sharp screen, print.
 
-use leptos::prelude::*;
-use leptos::web_sys::{MediaQueryList, Window};
+use std::cell::Cell;
+use std::rc::Rc;
+
 use wasm_bindgen::JsCast;
 use wasm_bindgen::closure::Closure;
+use web_sys::{MediaQueryList, Window};
 
+use super::live::{State, enter};
 use crate::figure::palette::Palette;
 
 /// What pictures depend on besides the study.
@@ -17,6 +20,9 @@ pub struct Surroundings {
     pub pixel_ratio: f64,
 }
 
+/// What the page asks the reader's system about.
+const QUERIES: [&str; 2] = ["(prefers-color-scheme: dark)", "(forced-colors: active)"];
+
 impl Surroundings {
     /// The colours to draw in.
     pub fn palette(self) -> Palette {
@@ -28,47 +34,49 @@ impl Surroundings {
         }
     }
 
-    fn of(window: &Window, is_printing: bool) -> Self {
-        let asks = |query: &str| media(window, query).is_some_and(|list| list.matches());
+    fn now(is_printing: bool) -> Self {
+        let window = web_sys::window();
+        let asks = |query: &str| {
+            window.as_ref().and_then(|window| media(window, query)).is_some_and(|l| l.matches())
+        };
+        let ratio = window.as_ref().map_or(1.0, Window::device_pixel_ratio);
+        let [is_dark, has_own_colours] = QUERIES.map(asks);
         // A sheet of paper shows more than a screen does.
-        let pixel_ratio = window.device_pixel_ratio().max(if is_printing { 3.0 } else { 0.0 });
-        Self {
-            is_dark: asks("(prefers-color-scheme: dark)"),
-            has_own_colours: asks("(forced-colors: active)"),
-            is_printing,
-            pixel_ratio,
-        }
+        let pixel_ratio = if is_printing { ratio.max(3.0) } else { ratio };
+        Self { is_dark, has_own_colours, is_printing, pixel_ratio }
     }
 }
 
 /// The surroundings, and their changes as long as the page lives.
-pub fn watch() -> ReadSignal<Surroundings> {
-    let window = window();
-    let (surroundings, set) = signal(Surroundings::of(&window, false));
-    let look = move |is_printing: bool| {
-        let now = Surroundings::of(&leptos::prelude::window(), is_printing);
-        if surroundings.get_untracked() != now {
-            set.set(now);
-        }
+pub fn watch() -> State<Surroundings> {
+    let surroundings = State::new(Surroundings::now(false));
+    let Some(window) = web_sys::window() else { return surroundings };
+    let is_printing = Rc::new(Cell::new(false));
+    let listener = |printing: Option<bool>| {
+        let (surroundings, is_printing) = (surroundings.clone(), Rc::clone(&is_printing));
+        Closure::<dyn Fn()>::new(move || {
+            is_printing.set(printing.unwrap_or(is_printing.get()));
+            enter(|| surroundings.set(Surroundings::now(is_printing.get())));
+        })
+        .into_js_value()
     };
-    let again = Closure::<dyn Fn()>::new(move || look(false));
-    for query in ["(prefers-color-scheme: dark)", "(forced-colors: active)"] {
+    let again = listener(None);
+    for query in QUERIES {
         if let Some(list) = media(&window, query) {
-            list.set_onchange(Some(again.as_ref().unchecked_ref()));
+            list.set_onchange(Some(again.unchecked_ref()));
             // A list that nothing holds falls silent in some browsers.
             std::mem::forget(list);
         }
     }
-    let listen = |name: &str, closure: &Closure<dyn Fn()>| {
+    let events = [
+        ("resize", again),
+        ("beforeprint", listener(Some(true))),
+        ("afterprint", listener(Some(false))),
+    ];
+    for (name, listener) in events {
         // Refused only where there are no events at all.
-        let _ = window.add_event_listener_with_callback(name, closure.as_ref().unchecked_ref());
-    };
-    let printing = Closure::<dyn Fn()>::new(move || look(true));
-    listen("resize", &again);
-    listen("afterprint", &again);
-    listen("beforeprint", &printing);
-    again.forget();
-    printing.forget();
+        let _ = window.add_event_listener_with_callback(name, listener.unchecked_ref());
+    }
     surroundings
 }
 

@@ -1,53 +1,54 @@
 //! An answer: its headline large, its scatter beside it, and what it stands on below; a list as
 //! a table; a refusal with its remedy.
 
-use kinetics_core::answer::{Answer, capitalised};
+use kinetics_core::answer::Answer;
 use kinetics_core::question::Question;
 use kinetics_core::wording::typed;
-use leptos::prelude::*;
 
+use super::super::part::{Part, part};
 use super::super::pictures::quantities;
 use super::super::sheet::Sheet;
 
 /// The answer to the question at a place of the list.
-pub fn answer(sheet: Sheet, at: usize) -> AnyView {
-    let answer = Memo::new(move |_| sheet.evaluation().findings.answers.get(at).cloned());
-    let shown = move || {
-        let decimal = untrack(|| sheet.decimal());
-        answer.get().map(|answer| match (&answer.refused, &answer.rows) {
-            // Why there is no law, Found says at length.
-            (Some(refusal), _) if untrack(|| sheet.evaluation().basis.is_none()) => {
-                view! { <p class="refused remedy">{refusal.reason.clone()}</p> }.into_any()
-            }
-            (Some(_), _) => refused(&answer),
-            (None, Some(rows)) => table(&answer.question, rows, decimal),
-            (None, None) => alone(&answer),
-        })
+pub fn answer(sheet: Sheet, at: usize) -> Part {
+    let now = move || {
+        let evaluation = sheet.evaluation();
+        (evaluation.findings.answers.get(at).cloned(), evaluation.basis.is_some(), sheet.decimal())
     };
-    shown.into_any()
+    let content = part("div").with("aria-live", "polite").with("aria-atomic", "true");
+    content.filled(now, |(answer, has_law, decimal)| {
+        let Some(answer) = answer else { return Vec::new() };
+        match (&answer.refused, &answer.rows) {
+            // Why there is no law, Found says at length.
+            (Some(refusal), _) if !has_law => {
+                vec![part("p").class("refused remedy").text(&refusal.reason)]
+            }
+            (Some(_), _) => vec![refused(answer)],
+            (None, Some(rows)) => vec![table(&answer.question, rows, *decimal)],
+            (None, None) => alone(answer),
+        }
+    })
 }
 
-fn refused(answer: &Answer) -> AnyView {
-    let refusal = answer.refused.clone();
-    let (reason, needs) = refusal.map(|r| (r.reason, r.needs)).unwrap_or_default();
-    view! { <p class="refused">{reason} " " <span class="remedy">{needs}</span></p> }.into_any()
+fn refused(answer: &Answer) -> Part {
+    let (reason, needs) =
+        answer.refused.as_ref().map_or(("", ""), |r| (r.reason.as_str(), r.needs.as_str()));
+    let remedy = part("span").class("remedy").text(needs);
+    part("p").class("refused").text(reason).text(" ").add(remedy)
 }
 
-fn alone(answer: &Answer) -> AnyView {
-    let wording = answer.wording.clone();
-    view! {
-        <p class="headline">
-            <span class="big">{wording.headline}</span>
-            " "
-            <span class="scatter-words">{wording.scatter}</span>
-        </p>
-        <p class="stands">{grounds(answer)}</p>
-    }
-    .into_any()
+fn alone(answer: &Answer) -> Vec<Part> {
+    let wording = &answer.wording;
+    let headline = part("p")
+        .class("headline")
+        .add(part("span").class("big").text(&wording.headline))
+        .text(" ")
+        .add(part("span").class("scatter-words").text(&wording.scatter));
+    vec![headline, grounds(part("p").class("stands"), answer)]
 }
 
 /// "**far from the data** · 25 K below your coldest run · if another law holds: 32 to 67 h".
-fn grounds(answer: &Answer) -> AnyView {
+fn grounds(into: Part, answer: &Answer) -> Part {
     let name = answer.grounds.map(|grounds| grounds.name()).unwrap_or_default();
     let standing = answer.wording.standing.as_str();
     let rival = answer.wording.rival.as_str();
@@ -58,48 +59,32 @@ fn grounds(answer: &Answer) -> AnyView {
         .filter(|part| !part.is_empty())
         .map(|part| format!(" · {part}"))
         .collect();
-    view! { <strong>{name}</strong> {rest} }.into_any()
+    into.add(part("strong").text(name)).text(&rest)
 }
 
-fn table(code: &str, rows: &[Answer], decimal: char) -> AnyView {
+fn table(code: &str, rows: &[Answer], decimal: char) -> Part {
     let blanks = Question::of_code(code).map(|question| question.blanks).unwrap_or_default();
-    let heads: Vec<AnyView> = blanks
-        .iter()
-        .map(|blank| {
-            let name = capitalised(&blank.name.replace('_', " ")).to_lowercase();
-            view! { <th scope="col">{name}</th> }.into_any()
-        })
-        .collect();
-    let rows: Vec<AnyView> = rows
-        .iter()
-        .map(|row| {
-            let cells: Vec<AnyView> = blanks
-                .iter()
-                .map(|blank| {
-                    let filled = row.blanks.as_ref().map(|b| quantities(b, blank.name));
-                    let words = typed(&filled.unwrap_or_default(), decimal);
-                    view! { <td>{words}</td> }.into_any()
-                })
-                .collect();
-            let said = match &row.refused {
-                Some(_) => refused(row),
-                None => view! {
-                    <span class="big">{row.wording.headline.clone()}</span>
-                    <br/>
-                    <span class="small">{row.wording.scatter.clone()} " · " {grounds(row)}</span>
-                }
-                .into_any(),
-            };
-            view! { <tr>{cells}<td>{said}</td></tr> }.into_any()
-        })
-        .collect();
-    view! {
-        <div class="answers">
-            <table>
-                <thead><tr>{heads}<th scope="col">"answer"</th></tr></thead>
-                <tbody>{rows}</tbody>
-            </table>
-        </div>
-    }
-    .into_any()
+    let head = |name: &str| part("th").with("scope", "col").text(name);
+    let heads = part("tr")
+        .add_all(blanks.iter().map(|blank| head(&blank.name.replace('_', " "))))
+        .add(head("answer"));
+    let rows = rows.iter().map(|row| {
+        let cells = blanks.iter().map(|blank| {
+            let filled = row.blanks.as_ref().map(|b| quantities(b, blank.name));
+            part("td").text(&typed(&filled.unwrap_or_default(), decimal))
+        });
+        let said = match &row.refused {
+            Some(_) => part("td").add(refused(row)),
+            None => {
+                let scatter = part("span").class("small").text(&row.wording.scatter).text(" · ");
+                part("td")
+                    .add(part("span").class("big").text(&row.wording.headline))
+                    .add(part("br"))
+                    .add(grounds(scatter, row))
+            }
+        };
+        part("tr").add_all(cells).add(said)
+    });
+    let table = part("table").add(part("thead").add(heads)).add(part("tbody").add_all(rows));
+    part("div").class("answers").add(table)
 }

@@ -4,75 +4,62 @@ mod answer;
 mod question;
 mod time_map;
 
-use kinetics_core::question::{Piece, QUESTIONS, Question, example};
-use leptos::html::Select;
-use leptos::prelude::*;
-use leptos::web_sys::HtmlElement;
-use wasm_bindgen::JsCast;
+use std::time::Duration;
 
+use kinetics_core::question::{Piece, QUESTIONS, Question, example};
+use wasm_bindgen::JsCast;
+use web_sys::HtmlElement;
+
+use super::live::State;
+use super::menu::{Choice, lines, select_of};
+use super::part::{Part, document, part};
 use super::pictures::code;
 use super::sheet::Sheet;
 use super::surroundings::Surroundings;
+use super::timer::later;
 
 /// The section.
-pub fn section(sheet: Sheet, surroundings: ReadSignal<Surroundings>) -> AnyView {
+pub fn section(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
     // A question is known by its place and its kind; what stands in it follows the study.
-    let questions = Memo::new(move |_| {
-        sheet.study(|study| {
-            let codes = study.asked.iter().map(|asked| code(asked).to_owned());
-            codes.enumerate().collect::<Vec<(usize, String)>>()
-        })
-    });
-    view! {
-        <section aria-labelledby="asked">
-            <h2 id="asked">"Asked"</h2>
-            <div class="beside">
-                <div>
-                    <ol class="asked">
-                        <For each=move || questions.get() key=Clone::clone let:known>
-                            {question::question(sheet, known.0, &known.1)}
-                        </For>
-                    </ol>
-                    {ask(sheet)}
-                </div>
-                {time_map::figure(sheet, surroundings)}
-            </div>
-        </section>
-    }
-    .into_any()
+    let questions = move || {
+        let study = sheet.study();
+        let codes = study.asked.iter().map(|asked| code(asked).to_owned());
+        codes.enumerate().collect::<Vec<(usize, String)>>()
+    };
+    let list = part("ol")
+        .class("asked")
+        .list(questions, move |(at, code)| question::question(sheet, *at, code));
+    part("section")
+        .with("aria-labelledby", "asked")
+        .add(part("h2").with("id", "asked").text("Asked"))
+        .add(
+            part("div")
+                .class("beside")
+                .add(part("div").add(list).add(ask(sheet)))
+                .add(time_map::figure(sheet, surroundings)),
+        )
 }
 
 /// The menu of all sentences.
-fn ask(sheet: Sheet) -> AnyView {
-    let node = NodeRef::<Select>::new();
-    let options: Vec<AnyView> = QUESTIONS
-        .iter()
-        .map(|question| {
-            view! { <option value=question.code>{outline(question)}</option> }.into_any()
-        })
-        .collect();
-    let add = move |_| {
-        let Some(select) = node.get_untracked() else { return };
-        let chosen = Question::of_code(&select.value());
-        select.set_value("");
-        let Some(question) = chosen else { return };
-        let at = sheet.study_now(|study| study.asked.len());
-        sheet.change("", |study| study.asked.push(example(question)));
-        if let Some(first) = question.blanks.first() {
-            focus_later(question::blank_id(at, first.name));
-        }
-    };
-    view! {
-        <p class="ask">
-            <span class="menu" data-text="+ ask something else">
-                <select node_ref=node aria-label="Ask something else" on:change=add>
-                    <option value="">"+ ask something else"</option>
-                    {options}
-                </select>
-            </span>
-        </p>
-    }
-    .into_any()
+fn ask(sheet: Sheet) -> Part {
+    const INVITATION: &str = "+ ask something else";
+    let mut choices = vec![Choice::new("", INVITATION)];
+    choices.extend(QUESTIONS.iter().map(|question| Choice::new(question.code, outline(question))));
+    let select = part("select")
+        .with("aria-label", "Ask something else")
+        .add_all(lines(&choices))
+        .on("change", move |event| {
+            let Some(select) = select_of(event) else { return };
+            let chosen = Question::of_code(&select.value());
+            select.set_value("");
+            let Some(question) = chosen else { return };
+            let at = sheet.study().asked.len();
+            sheet.change("", |study| study.asked.push(example(question)));
+            if let Some(first) = question.blanks.first() {
+                focus_later(question::blank_id(at, first.name));
+            }
+        });
+    part("p").class("ask").add(part("span").class("menu").with("data-text", INVITATION).add(select))
 }
 
 /// The sentence with its blanks left open.
@@ -88,9 +75,9 @@ fn outline(question: &Question) -> String {
 }
 
 /// Puts the focus on an element that is about to be on the page.
-pub fn focus_later(id: String) {
-    super::reading::later(move || {
-        let element = document().get_element_by_id(&id);
+fn focus_later(id: String) {
+    later(Duration::ZERO, move || {
+        let element = document().and_then(|document| document.get_element_by_id(&id));
         if let Some(element) = element.and_then(|e| e.dyn_into::<HtmlElement>().ok()) {
             // Without the focus there is still the element.
             let _ = element.focus();

@@ -3,10 +3,11 @@
 use kinetics_core::question::{Blank, Piece, Question, parse_blank};
 use kinetics_core::study::Study;
 use kinetics_core::wording::typed;
-use leptos::prelude::*;
 use serde_json::Value;
 
-use super::super::blank::{Gap, blank};
+use super::super::amount::complaints;
+use super::super::blank::{Complaint, Gap, blank};
+use super::super::part::{Part, button, part};
 use super::super::pictures::quantities;
 use super::super::sheet::Sheet;
 use super::answer::answer;
@@ -18,65 +19,42 @@ pub fn blank_id(at: usize, name: &str) -> String {
 }
 
 /// A question as an item of the list.
-pub fn question(sheet: Sheet, at: usize, code: &str) -> AnyView {
-    let complaints: Vec<RwSignal<Option<String>>>;
-    let sentence: AnyView = match Question::of_code(code) {
+pub fn question(sheet: Sheet, at: usize, code: &str) -> Part {
+    let mut sentence = part("p").class("sentence");
+    let mut all: Vec<Complaint> = Vec::new();
+    match Question::of_code(code) {
         Some(question) => {
-            let mut own = Vec::new();
-            let pieces: Vec<AnyView> = question
-                .pieces()
-                .into_iter()
-                .map(|piece| match piece {
-                    Piece::Text(text) => text.into_any(),
+            for piece in question.pieces() {
+                sentence = match piece {
+                    Piece::Text(text) => sentence.text(text),
                     Piece::Blank(blank) => {
-                        let complaint = RwSignal::new(None);
-                        own.push(complaint);
-                        gap(sheet, at, blank, complaint)
+                        let complaint = Complaint::new(None);
+                        let gap = gap(sheet, at, blank, &complaint);
+                        all.push(complaint);
+                        sentence.add(gap)
                     }
-                })
-                .collect();
-            complaints = own;
-            pieces.into_any()
+                };
+            }
         }
-        None => {
-            complaints = Vec::new();
-            format!("A question of a later version: “{code}”.").into_any()
-        }
-    };
-    let complaint = move || {
-        complaints.iter().filter_map(|complaint| complaint.get()).collect::<Vec<_>>().join(" ")
-    };
-    view! {
-        <li>
-            <span class="flag" aria-hidden="true">{at + 1}</span>
-            <div>
-                <p class="sentence">
-                    {sentence}
-                    <span class="expected" role="status">{complaint}</span>
-                </p>
-                <div aria-live="polite" aria-atomic="true">{answer(sheet, at)}</div>
-                {arrange(sheet, at)}
-            </div>
-        </li>
+        None => sentence = sentence.text(&format!("A question of a later version: “{code}”.")),
     }
-    .into_any()
+    let all: Vec<&Complaint> = all.iter().collect();
+    let body = part("div")
+        .add(sentence.add(complaints(&all)))
+        .add(answer(sheet, at))
+        .add(arrange(sheet, at));
+    let flag = part("span").class("flag").with("aria-hidden", "true").text(&(at + 1).to_string());
+    part("li").add(flag).add(body)
 }
 
-fn gap(
-    sheet: Sheet,
-    at: usize,
-    gap: &'static Blank,
-    complaint: RwSignal<Option<String>>,
-) -> AnyView {
-    let shown = Signal::derive(move || {
-        sheet.study(|study| {
-            let filled = study.asked.get(at).map(|asked| quantities(asked, gap.name));
-            let decimal = study.display.decimal.map_or('.', |decimal| decimal.mark());
-            filled.map(|filled| typed(&filled, decimal)).unwrap_or_default()
-        })
-    });
+fn gap(sheet: Sheet, at: usize, gap: &'static Blank, complaint: &Complaint) -> Part {
+    let shown = move || {
+        let study = sheet.study();
+        let filled = study.asked.get(at).map(|asked| quantities(asked, gap.name));
+        filled.map(|filled| typed(&filled, sheet.decimal())).unwrap_or_default()
+    };
     let take = move |text: &str| {
-        let quantities = parse_blank(text, gap.kind, untrack(|| sheet.decimal()))?;
+        let quantities = parse_blank(text, gap.kind, sheet.decimal())?;
         let values: Vec<Value> =
             quantities.iter().filter_map(|q| serde_json::to_value(q).ok()).collect();
         let value = match <[Value; 1]>::try_from(values) {
@@ -92,19 +70,18 @@ fn gap(
     };
     blank(Gap {
         label: format!("Question {}: {}", at + 1, gap.name.replace('_', " ")),
-        shown,
+        shown: Box::new(shown),
         take: Box::new(take),
         leave: Box::new(move || sheet.seal()),
-        complaint,
+        complaint: complaint.clone(),
         id: blank_id(at, gap.name),
         hint: gap.example,
     })
 }
 
 /// Moves and removal.
-fn arrange(sheet: Sheet, at: usize) -> AnyView {
+fn arrange(sheet: Sheet, at: usize) -> Part {
     let number = at + 1;
-    let is_last = Memo::new(move |_| sheet.study(|study| study.asked.len()) <= at + 1);
     let exchange = move |other: usize, id: &str| {
         sheet.change("", |study: &mut Study| {
             if at.max(other) < study.asked.len() {
@@ -113,7 +90,12 @@ fn arrange(sheet: Sheet, at: usize) -> AnyView {
         });
         focus_later(format!("{id}-{other}"));
     };
-    let remove = move |_| {
+    let up = move || {
+        if let Some(above) = at.checked_sub(1) {
+            exchange(above, "up");
+        }
+    };
+    let remove = move || {
         sheet.change("", |study: &mut Study| {
             if at < study.asked.len() {
                 study.asked.remove(at);
@@ -121,30 +103,24 @@ fn arrange(sheet: Sheet, at: usize) -> AnyView {
         });
         sheet.tell(format!("Question {number} is removed. Undo brings it back."));
     };
-    view! {
-        <div class="arrange">
-            <button
-                type="button"
-                id=format!("up-{at}")
-                disabled=at == 0
-                aria-label=format!("Move question {number} up")
-                on:click=move |_| if let Some(above) = at.checked_sub(1) { exchange(above, "up") }
-            >
-                "move up"
-            </button>
-            <button
-                type="button"
-                id=format!("down-{at}")
-                disabled=move || is_last.get()
-                aria-label=format!("Move question {number} down")
-                on:click=move |_| exchange(at + 1, "down")
-            >
-                "move down"
-            </button>
-            <button type="button" aria-label=format!("Remove question {number}") on:click=remove>
-                "remove"
-            </button>
-        </div>
-    }
-    .into_any()
+    let named = |words: &str, id: &str, label: String, press: Box<dyn Fn()>| {
+        button(words, press).with("id", &format!("{id}-{at}")).with("aria-label", &label)
+    };
+    let is_last = move || sheet.study().asked.len() <= at + 1;
+    part("div")
+        .class("arrange")
+        .add(
+            named("move up", "up", format!("move up, question {number}"), Box::new(up))
+                .is("disabled", move || at == 0),
+        )
+        .add(
+            named(
+                "move down",
+                "down",
+                format!("move down, question {number}"),
+                Box::new(move || exchange(at + 1, "down")),
+            )
+            .is("disabled", is_last),
+        )
+        .add(named("remove", "remove", format!("remove, question {number}"), Box::new(remove)))
 }

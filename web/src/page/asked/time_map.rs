@@ -1,20 +1,24 @@
 //! The time map, with flags that can be dragged; the blanks of the sentences are the typed
 //! equivalent.
 
-use std::sync::Arc;
+use std::cell::RefCell;
+use std::rc::Rc;
 
 use kinetics_core::quantity::Quantity;
 use kinetics_core::question::{BlankKind, Question};
+use kinetics_core::study::{Evaluation, Study};
 use kinetics_core::units::{TemperatureUnit, TimeUnit};
-use leptos::html::Canvas;
-use leptos::prelude::*;
-use leptos::web_sys::PointerEvent;
+use wasm_bindgen::JsCast;
+use web_sys::{Element, Event, PointerEvent};
 
 use super::super::canvas::{self, Drawing};
+use super::super::live::State;
+use super::super::part::{Part, part};
 use super::super::picture_table::picture_table;
-use super::super::pictures::{self, code, quantities, temperature_range};
+use super::super::pictures::{self, code, quantities};
 use super::super::sheet::Sheet;
 use super::super::surroundings::Surroundings;
+use crate::figure::Picture;
 use crate::figure::time_map::{Place, TimeMap, View};
 
 /// A flag that follows the pointer.
@@ -32,88 +36,126 @@ enum Moves {
     Time(&'static str),
 }
 
-/// The map with its table.
-pub fn figure(sheet: Sheet, surroundings: ReadSignal<Surroundings>) -> AnyView {
-    let node = NodeRef::<Canvas>::new();
-    let drag = RwSignal::new(None::<Drag>);
-    let over_flag = RwSignal::new(false);
-    let held = Memo::new(move |_| drag.get().map(|drag| drag.view));
-    let map = Memo::new(move |_| {
-        let evaluation = sheet.evaluation();
-        sheet.study(|study| pictures::time_map(study, &evaluation, held.get()))
-    });
-    let drawing: Signal<Drawing> = Signal::derive(move || Arc::new(map.get()) as Drawing);
-    let temperatures = Signal::derive(move || temperature_range(&sheet.evaluation()));
-    let size = canvas::paint(node, drawing, temperatures, surroundings);
+/// The map as it is now; the same one as long as nothing changed.
+type Map = Rc<dyn Fn() -> Rc<TimeMap>>;
 
-    let at = |event: &PointerEvent| (f64::from(event.offset_x()), f64::from(event.offset_y()));
-    let under = move |event: &PointerEvent| {
-        let (x, y) = at(event);
-        map.with_untracked(|map| drag_at(sheet, map, size.get_untracked(), x, y))
+/// A map, and what it was drawn from.
+type Known = (Rc<Study>, Rc<Evaluation>, Option<View>, Rc<TimeMap>);
+
+/// What pointers do to the map.
+struct Hand {
+    sheet: Sheet,
+    map: Map,
+    size: State<(f64, f64)>,
+    drag: State<Option<Drag>>,
+    is_over_flag: State<bool>,
+}
+
+/// The map with its table.
+pub fn figure(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
+    let drag = State::new(None::<Drag>);
+    let is_over_flag = State::new(false);
+    let map = following(sheet, drag.clone());
+    let shown = Rc::clone(&map);
+    let drawing: Drawing = Rc::new(move || shown() as Rc<dyn Picture>);
+    let over = is_over_flag.clone();
+    let canvas = part("canvas").follows("class", move || {
+        Some(if over.get() { "map movable".to_owned() } else { "map".to_owned() })
+    });
+    let size = canvas::paint(&canvas, sheet, Rc::clone(&drawing), surroundings);
+    let hand = Rc::new(Hand { sheet, map, size, drag, is_over_flag });
+    let with = |act: fn(&Hand, &PointerEvent)| {
+        let hand = Rc::clone(&hand);
+        move |event: &Event| {
+            if let Some(event) = event.dyn_ref() {
+                act(&hand, event);
+            }
+        }
     };
-    let press = move |event: PointerEvent| {
-        let Some(found) = under(&event) else { return };
+    let canvas = canvas
+        .on("pointerdown", with(Hand::press))
+        .on("pointermove", with(Hand::follow))
+        .on("pointerup", with(Hand::release))
+        .on("pointercancel", with(Hand::release));
+    let caption = part("figcaption").text(
+        "Drag a flag, or type into its blank. Line: solid inside the data, dashed near, dotted \
+         far, hatched beyond.",
+    );
+    part("figure").class("picture").add(canvas).add(caption).add(picture_table(sheet, drawing))
+}
+
+/// The map of the study and its findings, held still while a flag is dragged.
+fn following(sheet: Sheet, drag: State<Option<Drag>>) -> Map {
+    let known: RefCell<Option<Known>> = RefCell::new(None);
+    Rc::new(move || {
+        let (study, evaluation) = (sheet.study(), sheet.evaluation());
+        let held = drag.get().map(|drag| drag.view);
+        if let Some((of, with, view, map)) = known.borrow().as_ref()
+            && Rc::ptr_eq(of, &study)
+            && Rc::ptr_eq(with, &evaluation)
+            && *view == held
+        {
+            return Rc::clone(map);
+        }
+        let map = Rc::new(pictures::time_map(&study, &evaluation, &sheet.curve(), held));
+        known.replace(Some((study, evaluation, held, Rc::clone(&map))));
+        map
+    })
+}
+
+impl Hand {
+    fn under(&self, event: &PointerEvent) -> Option<Drag> {
+        let (x, y) = (f64::from(event.offset_x()), f64::from(event.offset_y()));
+        drag_at(self.sheet, &(self.map)(), self.size.get(), x, y)
+    }
+
+    fn press(&self, event: &PointerEvent) {
+        let Some(found) = self.under(event) else { return };
         event.prevent_default();
-        if let Some(canvas) = node.get_untracked() {
+        let target = event.target().and_then(|target| target.dyn_into::<Element>().ok());
+        if let Some(canvas) = target {
             // Without capture the flag follows as long as the pointer is over the map.
             let _ = canvas.set_pointer_capture(event.pointer_id());
         }
-        drag.set(Some(found));
-    };
-    let follow = move |event: PointerEvent| match drag.get_untracked() {
-        None => over_flag.set(under(&event).is_some()),
-        Some(drag) => {
-            let (x, y) = at(&event);
-            let place = map.with_untracked(|map| map.place_at(size.get_untracked(), x, y));
-            move_flag(sheet, &drag, place);
-        }
-    };
-    let release = move |_: PointerEvent| {
-        if drag.get_untracked().is_some() {
-            drag.set(None);
-            sheet.seal();
-        }
-    };
-    view! {
-        <figure class="picture">
-            <canvas
-                class="map"
-                class:movable=move || over_flag.get()
-                node_ref=node
-                on:pointerdown=press
-                on:pointermove=follow
-                on:pointerup=release
-                on:pointercancel=release
-            ></canvas>
-            <figcaption>
-                "Drag a flag, or type into its blank. Line: solid inside the data, dashed near, \
-                 dotted far, hatched beyond."
-            </figcaption>
-            {picture_table(sheet, drawing)}
-        </figure>
+        self.drag.set(Some(found));
     }
-    .into_any()
+
+    fn follow(&self, event: &PointerEvent) {
+        match self.drag.get() {
+            None => self.is_over_flag.set(self.under(event).is_some()),
+            Some(drag) => {
+                let (x, y) = (f64::from(event.offset_x()), f64::from(event.offset_y()));
+                move_flag(self.sheet, &drag, (self.map)().place_at(self.size.get(), x, y));
+            }
+        }
+    }
+
+    fn release(&self, _: &PointerEvent) {
+        if self.drag.get().is_some() {
+            self.drag.set(None);
+            self.sheet.seal();
+        }
+    }
 }
 
 /// The flag under a pixel, if its question has one blank for it to move.
 fn drag_at(sheet: Sheet, map: &TimeMap, size: (f64, f64), x: f64, y: f64) -> Option<Drag> {
     let flag = map.flags.get(map.flag_at(size, x, y)?)?;
     let question = flag.number.checked_sub(1)?;
-    let moves = sheet.study_now(|study| {
-        let asked = study.asked.get(question)?;
-        let blanks = Question::of_code(code(asked))?.blanks;
-        let named = |kind: BlankKind, name: &str| {
-            let mut own = blanks.iter().filter(|blank| blank.kind == kind);
-            own.find(|blank| blank.name == name && quantities(asked, name).len() == 1)
-        };
-        let temperature = named(BlankKind::Temperature, "temperature");
-        let time = named(BlankKind::Time, "time");
-        match (temperature, time) {
-            (Some(blank), _) => Some(Moves::Temperature(blank.name)),
-            (None, Some(blank)) => Some(Moves::Time(blank.name)),
-            (None, None) => None,
-        }
-    })?;
+    let study = sheet.study();
+    let asked = study.asked.get(question)?;
+    let blanks = Question::of_code(code(asked))?.blanks;
+    let named = |kind: BlankKind, name: &str| {
+        let mut own = blanks.iter().filter(|blank| blank.kind == kind);
+        own.find(|blank| blank.name == name && quantities(asked, name).len() == 1)
+    };
+    let temperature = named(BlankKind::Temperature, "temperature");
+    let time = named(BlankKind::Time, "time");
+    let moves = match (temperature, time) {
+        (Some(blank), _) => Moves::Temperature(blank.name),
+        (None, Some(blank)) => Moves::Time(blank.name),
+        (None, None) => return None,
+    };
     Some(Drag { question, moves, view: map.view() })
 }
 

@@ -1,60 +1,64 @@
 //! The heads of the columns: what each holds and in which unit, as the reader decided or the
 //! user chose.
 
+use std::rc::Rc;
+
 use kinetics_core::study::{ColumnChoice, Study};
 use kinetics_core::table::{Column, Origin, Role};
 use kinetics_core::units::{RateUnit, TemperatureUnit};
-use leptos::prelude::*;
 
-use super::super::menu::{Choice, menu};
+use super::super::menu::{Choice, Offer, menu};
+use super::super::part::{Part, part};
 use super::super::sheet::Sheet;
 
 /// The head of a column.
-pub fn head(sheet: Sheet, at: usize, column: Memo<Option<Column>>) -> AnyView {
-    let name = move || column.with(|c| c.as_ref().map_or(String::new(), |c| c.name.clone()));
-    let of = move |part: fn(&Column) -> String| {
-        Signal::derive(move || column.with(|c| c.as_ref().map(part).unwrap_or_default()))
-    };
-    let roles = Signal::derive(move || column.with(|c| c.as_ref().map(roles).unwrap_or_default()));
-    let units = Signal::derive(move || column.with(|c| c.as_ref().map(units).unwrap_or_default()));
-    let has_units = move || units.with(|units| !units.is_empty());
-    let is_stated = move |origin: fn(&Column) -> Origin| {
-        let stated = column.with(|c| c.as_ref().is_some_and(|c| origin(c) == Origin::Stated));
-        if stated { "stated" } else { "read" }
-    };
-    let origin = move |origin: fn(&Column) -> Origin| {
-        column.with(|c| c.as_ref().map_or("", |c| came_from(origin(c))))
-    };
-    view! {
-        <th scope="col" title=name>
-            <span
-                class=move || format!("role {}", is_stated(|c| c.role_from))
-                title=move || origin(|c| c.role_from)
-            >
-                {menu(
-                    Signal::derive(move || format!("What column {} holds", at + 1)),
-                    roles,
-                    of(|column| column.role.code().to_owned()),
-                    move |code| sheet.change("", |study| choose_role(study, at, &code)),
-                )}
-            </span>
-            <span
-                class=move || format!("unit {}", is_stated(|c| c.unit_from))
-                title=move || origin(|c| c.unit_from)
-            >
-                <span class="factor">{of(factor)}</span>
-                <Show when=has_units fallback=|| "\u{a0}">
-                    {menu(
-                        Signal::derive(move || format!("Unit of column {}", at + 1)),
-                        units,
-                        of(|column| column.unit.clone().unwrap_or_default()),
-                        move |unit| sheet.change("", |study| choose_unit(study, at, unit)),
-                    )}
-                </Show>
-            </span>
-        </th>
-    }
-    .into_any()
+pub fn head(sheet: Sheet, at: usize, columns: Rc<dyn Fn() -> Rc<Vec<Column>>>) -> Part {
+    let column: Of = Rc::new(move || columns().get(at).cloned());
+    let name = Rc::clone(&column);
+    let role = menu(
+        &format!("What column {} holds", at + 1),
+        offer(&column, |column| (roles(column), column.role.code().to_owned())),
+        move |code| sheet.change("", |study| choose_role(study, at, code)),
+    );
+    let unit = menu(
+        &format!("Unit of column {}", at + 1),
+        offer(&column, |column| (units(column), column.unit.clone().unwrap_or_default())),
+        move |unit| sheet.change("", |study| choose_unit(study, at, unit)),
+    );
+    let factor_of = Rc::clone(&column);
+    let no_units = Rc::clone(&column);
+    let factor = move || factor_of().as_ref().map(factor).unwrap_or_default();
+    let no_units = move || no_units().is_none_or(|column| units(&column).is_empty());
+    part("th")
+        .with("scope", "col")
+        .follows("title", move || name().map(|column| column.name))
+        .add(marked("role", &column, |column| column.role_from).add(role))
+        .add(
+            marked("unit", &column, |column| column.unit_from)
+                .add(part("span").class("factor").says(factor))
+                .add(unit.is("hidden", no_units))
+                .text("\u{200b}"),
+        )
+}
+
+/// The column of a head, as it is now.
+type Of = Rc<dyn Fn() -> Option<Column>>;
+
+/// What a menu of the head offers.
+fn offer(column: &Of, of: fn(&Column) -> Offer) -> impl Fn() -> Offer + 'static {
+    let column = Rc::clone(column);
+    move || column().as_ref().map(of).unwrap_or_default()
+}
+
+/// A place of the head that tells whether what stands there was read or chosen.
+fn marked(name: &'static str, column: &Of, origin: fn(&Column) -> Origin) -> Part {
+    let (marked, told) = (Rc::clone(column), Rc::clone(column));
+    part("span")
+        .follows("class", move || {
+            let is_stated = marked().is_some_and(|column| origin(&column) == Origin::Stated);
+            Some(format!("{name} {}", if is_stated { "stated" } else { "read" }))
+        })
+        .follows("title", move || told().map(|column| came_from(origin(&column)).to_owned()))
 }
 
 fn came_from(origin: Origin) -> &'static str {
@@ -127,8 +131,8 @@ fn choose_role(study: &mut Study, at: usize, code: &str) {
     *choice = ColumnChoice { role, other: std::mem::take(&mut choice.other), ..Default::default() };
 }
 
-fn choose_unit(study: &mut Study, at: usize, unit: String) {
-    chosen(study, at).unit = Some(unit).filter(|unit| !unit.is_empty());
+fn choose_unit(study: &mut Study, at: usize, unit: &str) {
+    chosen(study, at).unit = Some(unit.to_owned()).filter(|unit| !unit.is_empty());
 }
 
 fn chosen(study: &mut Study, at: usize) -> &mut ColumnChoice {

@@ -1,23 +1,44 @@
 //! A known law as a sentence: an activation energy, and a rate constant at one temperature.
 
-use kinetics_core::problem::shortened;
 use kinetics_core::quantity::Quantity;
-use kinetics_core::question::{BlankKind, parse_blank};
 use kinetics_core::study::{Measured, StatedQuantity, Study};
-use kinetics_core::table::{Decimal, Form};
-use kinetics_core::text::{Reading, read_cell};
-use kinetics_core::units::UnitError;
-use kinetics_core::wording::{typed, typed_number};
-use leptos::prelude::*;
+use kinetics_core::table::Form;
 
-use super::super::blank::{Gap, blank};
+use super::super::amount::{Amount, amount, complaints, quantity, without_sd};
+use super::super::blank::Complaint;
 use super::super::menu::{Choice, menu};
+use super::super::part::{Part, part};
 use super::super::sheet::Sheet;
 
 /// The name under which a study lists an assumed activation energy.
-const ENERGY: &str = "activation_energy";
+const ASSUMED_ENERGY: &str = "activation_energy";
 
-/// A law to be changed to what is known: the example's, so that it can be seen at work.
+const ENERGY: Amount = Amount {
+    name: "Activation energy",
+    id: "known-energy",
+    hint: "90 ± 4 kJ/mol",
+    get: |study| study.measured.activation_energy.clone(),
+    set: |study, stated| study.measured.activation_energy = stated,
+    check: |quantity| quantity.joules_per_mole().map(drop),
+};
+const RATE: Amount = Amount {
+    name: "Rate constant",
+    id: "known-rate",
+    hint: "0.068 ± 0.003 1/h",
+    get: |study| study.measured.rate_constant.clone(),
+    set: |study, stated| study.measured.rate_constant = stated,
+    check: |quantity| quantity.rate_constant().map(drop),
+};
+const TEMPERATURE: Amount = Amount {
+    name: "Temperature of the rate constant",
+    id: "known-temperature",
+    hint: "63 °C",
+    get: |study| study.measured.temperature.clone().map(without_sd),
+    set: |study, stated| study.measured.temperature = stated.map(quantity),
+    check: |quantity| quantity.kelvin().map(drop),
+};
+
+/// A law to be changed to what is known; that of the example, so that it can be seen at work.
 pub fn begin(study: &mut Study) {
     super::take_text(study, String::new());
     let stated =
@@ -32,179 +53,37 @@ pub fn begin(study: &mut Study) {
 }
 
 /// The sentence with its blanks.
-pub fn sentence(sheet: Sheet) -> AnyView {
-    let complaints: [RwSignal<Option<String>>; 3] = std::array::from_fn(|_| RwSignal::new(None));
-    let energy = stated_blank(
-        sheet,
-        Known { name: "Activation energy", hint: "90 ± 4 kJ/mol", id: "known-energy" },
-        complaints[0],
-        |measured| &mut measured.activation_energy,
-        |quantity| quantity.joules_per_mole().map(drop),
-    );
-    let rate = stated_blank(
-        sheet,
-        Known { name: "Rate constant", hint: "0.068 ± 0.003 1/h", id: "known-rate" },
-        complaints[1],
-        |measured| &mut measured.rate_constant,
-        |quantity| quantity.rate_constant().map(drop),
-    );
-    let shown = Signal::derive(move || {
-        let stated = sheet.study(|study| study.measured.temperature.clone());
-        stated.map(|quantity| typed(&[quantity], sheet.decimal())).unwrap_or_default()
-    });
-    let take = move |text: &str| {
-        let decimal = untrack(|| sheet.decimal());
-        let temperature = match parse_blank(text, BlankKind::Temperature, decimal)?.as_slice() {
-            [quantity] => quantity.clone(),
-            _ => return Err(format!("Found “{}”, expected one temperature.", shortened(text))),
-        };
-        sheet.change("known temperature", |study| study.measured.temperature = Some(temperature));
-        Ok(())
-    };
-    let temperature = blank(Gap {
-        label: "Temperature of the rate constant".into(),
-        shown,
-        take: Box::new(take),
-        leave: Box::new(move || sheet.seal()),
-        complaint: complaints[2],
-        id: "known-temperature".into(),
-        hint: "63 °C",
-    });
-    let complaints = move || {
-        complaints.iter().filter_map(|complaint| complaint.get()).collect::<Vec<_>>().join(" ")
-    };
-    view! {
-        <p class="law-sentence">
-            "The activation energy, " {measured_or_assumed(sheet)} ", is " {energy}
-            ", and the rate constant " {rate} " at " {temperature} "."
-            <span class="expected">{complaints}</span>
-        </p>
-        <p class="quiet">
-            "What follows ± is one standard deviation; without both there are no intervals."
-        </p>
-    }
-    .into_any()
+pub fn sentence(sheet: Sheet) -> Vec<Part> {
+    let [energy, rate, temperature] = std::array::from_fn(|_| Complaint::new(None));
+    let law = part("p")
+        .class("law-sentence")
+        .text("The activation energy, ")
+        .add(measured_or_assumed(sheet))
+        .text(", is ")
+        .add(amount(sheet, ENERGY, &energy))
+        .text(", and the rate constant ")
+        .add(amount(sheet, RATE, &rate))
+        .text(" at ")
+        .add(amount(sheet, TEMPERATURE, &temperature))
+        .text(".")
+        .add(complaints(&[&energy, &rate, &temperature]));
+    let hint = "What follows ± is one standard deviation; without both there are no intervals.";
+    vec![law, part("p").class("quiet").text(hint)]
 }
 
-fn measured_or_assumed(sheet: Sheet) -> AnyView {
-    let choices = vec![Choice::new("", "measured"), Choice::new(ENERGY, "assumed")];
-    let is_assumed =
-        move || sheet.study(|study| study.measured.assumed.iter().any(|name| name == ENERGY));
-    let chosen =
-        Signal::derive(move || if is_assumed() { ENERGY.to_owned() } else { String::new() });
-    let label = "Whether the activation energy was measured".to_owned();
-    menu(label.into(), choices.into(), chosen, move |name| {
+fn measured_or_assumed(sheet: Sheet) -> Part {
+    let offer = move || {
+        let choices = vec![Choice::new("", "measured"), Choice::new(ASSUMED_ENERGY, "assumed")];
+        let assumed = &sheet.study().measured.assumed;
+        let is_assumed = assumed.iter().any(|name| name == ASSUMED_ENERGY);
+        (choices, if is_assumed { ASSUMED_ENERGY.to_owned() } else { String::new() })
+    };
+    menu("Whether the activation energy was measured", offer, move |name| {
         sheet.change("", |study| {
-            study.measured.assumed.retain(|known| known != ENERGY);
-            study.measured.assumed.extend(Some(name).filter(|name| !name.is_empty()));
+            study.measured.assumed.retain(|known| known != ASSUMED_ENERGY);
+            if !name.is_empty() {
+                study.measured.assumed.push(name.to_owned());
+            }
         });
     })
-}
-
-/// What a blank of the sentence is called.
-struct Known {
-    name: &'static str,
-    hint: &'static str,
-    id: &'static str,
-}
-
-fn stated_blank(
-    sheet: Sheet,
-    known: Known,
-    complaint: RwSignal<Option<String>>,
-    place: fn(&mut Measured) -> &mut Option<StatedQuantity>,
-    check: fn(&Quantity) -> Result<(), UnitError>,
-) -> AnyView {
-    let Known { name, hint, id } = known;
-    let shown = Signal::derive(move || {
-        // The place is named once, for writing; reading works on a copy.
-        let stated = sheet.study(|study| place(&mut study.measured.clone()).clone());
-        stated.map(|stated| words(&stated, sheet.decimal())).unwrap_or_default()
-    });
-    let take = move |text: &str| {
-        let decimal = untrack(|| sheet.decimal());
-        let stated = parse(text, decimal, check)
-            .map_err(|said| format!("{name}: {said}, for example {hint}."))?;
-        sheet.change(id, |study| *place(&mut study.measured) = Some(stated));
-        Ok(())
-    };
-    blank(Gap {
-        label: name.into(),
-        shown,
-        take: Box::new(take),
-        leave: Box::new(move || sheet.seal()),
-        complaint,
-        id: id.into(),
-        hint,
-    })
-}
-
-/// "90 ± 4 kJ/mol".
-fn words(stated: &StatedQuantity, decimal: char) -> String {
-    let value = typed_number(stated.value, decimal);
-    let sd = stated.sd.map(|sd| format!(" ± {}", typed_number(sd, decimal))).unwrap_or_default();
-    format!("{value}{sd} {}", stated.unit)
-}
-
-/// A number with an optional standard deviation and a unit.
-fn parse(
-    text: &str,
-    decimal: char,
-    check: fn(&Quantity) -> Result<(), UnitError>,
-) -> Result<StatedQuantity, String> {
-    let mark = if decimal == ',' { Decimal::Comma } else { Decimal::Point };
-    let found = || format!("found “{}”, expected a number and its unit", shortened(text));
-    // An error alone is no value.
-    if text.trim_start().starts_with('±') {
-        return Err(found());
-    }
-    // The unit begins at the first place from which on it is one.
-    let starts = text.char_indices().filter(|(_, sign)| !sign.is_ascii_digit()).map(|(at, _)| at);
-    let mut complaint = None;
-    for at in starts {
-        let (number, unit) = text.split_at(at);
-        let Reading::Number(number) = read_cell(number, mark) else { continue };
-        if number.unit.is_some() || unit.trim().is_empty() {
-            continue;
-        }
-        match check(&Quantity::new(number.value, unit.trim())) {
-            Ok(()) => {
-                let (value, sd) = (number.value, number.error);
-                return Ok(StatedQuantity { value, sd, unit: unit.trim().to_owned() });
-            }
-            Err(error) => complaint = Some(error.to_string()),
-        }
-    }
-    // The last complaint speaks of the shortest rest, which is the likeliest unit.
-    Err(complaint.unwrap_or_else(found))
-}
-
-#[cfg(test)]
-#[allow(clippy::unwrap_used)]
-mod tests {
-    use super::*;
-
-    fn energy(text: &str) -> Result<StatedQuantity, String> {
-        parse(text, '.', |quantity| quantity.joules_per_mole().map(drop))
-    }
-
-    #[test]
-    fn a_value_with_its_error_and_unit_is_read() {
-        let found = energy("90 ± 4 kJ/mol").unwrap();
-        assert_eq!((found.value, found.sd, found.unit.as_str()), (90.0, Some(4.0), "kJ/mol"));
-        let found = energy("21.5 kcal/mol").unwrap();
-        assert_eq!((found.value, found.sd, found.unit.as_str()), (21.5, None, "kcal/mol"));
-        let rate = |text: &str| parse(text, ',', |quantity| quantity.rate_constant().map(drop));
-        let found = rate("0,068 ± 0,003 1/h").unwrap();
-        assert_eq!((found.value, found.sd, found.unit.as_str()), (0.068, Some(0.003), "1/h"));
-        assert_eq!(rate("2e-3 L/(mol s)").unwrap().unit, "L/(mol s)");
-        assert_eq!(words(&found, ','), "0,068 ± 0,003 1/h");
-    }
-
-    #[test]
-    fn what_is_no_energy_is_said() {
-        for text in ["", "90", "much", "90 furlongs", "kJ/mol", "± 4 kJ/mol"] {
-            assert!(energy(text).is_err(), "{text}");
-        }
-    }
 }

@@ -3,19 +3,24 @@
 mod edit;
 mod head;
 mod known_law;
+mod more;
 mod notes;
 mod paste;
 mod row;
 mod rows;
 mod sentence;
 
-use kinetics_core::study::Study;
-use kinetics_core::table::Form;
-use leptos::prelude::*;
+use kinetics_core::study::{Measured, Study};
+use kinetics_core::table::{Form, Hints, read_table};
 
+use super::live::State;
+use super::part::{Part, button, part};
 use super::sheet::Sheet;
 use super::surroundings::Surroundings;
-use super::{example, file_button, law_picture};
+use super::{example, file_button::file_button, law_picture};
+
+/// So many characters of a text tell what it holds.
+const MOST_SAMPLED: usize = 20_000;
 
 /// What the left column holds.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -29,111 +34,110 @@ enum Shape {
 }
 
 /// The section.
-pub fn section(sheet: Sheet, surroundings: ReadSignal<Surroundings>) -> AnyView {
-    let wants_paste = RwSignal::new(false);
-    Effect::new(move |_| {
-        sheet.opened.track();
-        wants_paste.set(false);
-    });
-    let shape = Memo::new(move |_| {
-        sheet.study(|study| match study.measured.form {
+pub fn section(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
+    let wants_paste = State::new(false);
+    let shape = move || {
+        let study = sheet.study();
+        match study.measured.form {
             Form::KnownLaw => Shape::KnownLaw,
             _ if study.measured.text.trim().is_empty() => Shape::Nothing,
             _ => Shape::Table,
-        })
-    });
-    let is_example = Memo::new(move |_| sheet.shows_example());
-    let body = move || match shape.get() {
+        }
+    };
+    let (asking, around) = (wants_paste.clone(), surroundings.clone());
+    let body = part("div").filled(shape, move |shape| match shape {
         Shape::Nothing => paste::first(sheet),
-        Shape::Table => view! {
-            {move || wants_paste.get().then(|| paste::again(sheet, wants_paste))}
-            {rows::table(sheet, surroundings)}
-            {sentence::reading(sheet)}
-            {notes::notes(sheet)}
+        Shape::Table => {
+            let (asked, ask) = (asking.clone(), asking.clone());
+            let again = move || paste::area(sheet, Some(ask.clone()));
+            vec![
+                part("div").when(move || asked.get(), again),
+                rows::table(sheet, around.clone()),
+                sentence::reading(sheet),
+                more::more(sheet),
+                notes::notes(sheet),
+            ]
         }
-        .into_any(),
         Shape::KnownLaw => known_law::sentence(sheet),
-    };
-    let actions = move || {
-        let is_shape = shape.get();
-        view! {
-            <Show when=move || is_shape == Shape::Table && !is_example.get()>
-                <button type="button" on:click=move |_| wants_paste.update(|wants| *wants = !*wants)>
-                    "Paste something else"
-                </button>
-            </Show>
-            <Show when=move || is_shape == Shape::KnownLaw>
-                <button type="button" on:click=move |_| sheet.change("", start_again)>
-                    "Paste measurements"
-                </button>
-            </Show>
-            {file_button::file_button(sheet, "Choose a file", "")}
-            <Show when=move || is_shape == Shape::Nothing>
-                <button type="button" on:click=move |_| sheet.change("", rows::begin_typing)>
-                    "Type into an empty table"
-                </button>
-            </Show>
-            <Show when=move || is_shape != Shape::KnownLaw>
-                <button type="button" on:click=move |_| sheet.change("", known_law::begin)>
-                    "State a known law"
-                </button>
-            </Show>
-            <Show when=move || is_shape == Shape::Nothing>
-                <button type="button" on:click=move |_| sheet.open(example::study())>
-                    "Show the example"
-                </button>
-            </Show>
+    });
+    let key = move || (shape(), sheet.shows_example());
+    let actions = part("div")
+        .class("actions")
+        .filled(key, move |(shape, is_example)| actions(sheet, *shape, *is_example, &wants_paste));
+    let left = part("div")
+        .when(move || sheet.shows_example(), move || welcome(sheet))
+        .when(move || sheet.progress().is_some(), move || progress(sheet))
+        .when(
+            move || sheet.is_working(),
+            || {
+                part("p")
+                    .class("progress")
+                    .with("role", "status")
+                    .text("Working out what follows …")
+            },
+        )
+        .add(body)
+        .add(actions);
+    part("section")
+        .with("aria-labelledby", "measured")
+        .add(part("h2").with("id", "measured").text("Measured"))
+        .add(part("div").class("beside").add(left).add(law_picture::figure(sheet, surroundings)))
+}
+
+/// What can be done below the table.
+fn actions(sheet: Sheet, shape: Shape, is_example: bool, wants_paste: &State<bool>) -> Vec<Part> {
+    let mut actions = Vec::new();
+    let wants_paste = wants_paste.clone();
+    match shape {
+        Shape::Table if !is_example => {
+            let toggle = move || wants_paste.set(!wants_paste.get());
+            actions.push(button("Paste something else", toggle));
         }
-    };
-    view! {
-        <section aria-labelledby="measured">
-            <h2 id="measured">"Measured"</h2>
-            <div class="beside">
-                <div>
-                    <Show when=move || is_example.get()>{welcome(sheet)}</Show>
-                    {progress(sheet)}
-                    {body}
-                    <div class="actions">{actions}</div>
-                </div>
-                {law_picture::figure(sheet, surroundings)}
-            </div>
-        </section>
+        Shape::KnownLaw => {
+            let clear = move || sheet.change("", start_again);
+            actions.push(button("Paste measurements", clear));
+        }
+        Shape::Table | Shape::Nothing => {}
     }
-    .into_any()
+    actions.push(file_button(sheet, "Choose a file"));
+    if shape == Shape::Nothing {
+        let begin = move || sheet.change("", rows::begin_typing);
+        actions.push(button("Type into an empty table", begin));
+    }
+    if shape != Shape::KnownLaw {
+        let begin = move || sheet.change("", known_law::begin);
+        actions.push(button("State a known law", begin));
+    }
+    if shape == Shape::Nothing {
+        actions.push(button("Show the example", move || sheet.open(example::study())));
+    }
+    actions
 }
 
 /// Above the invented example.
-fn welcome(sheet: Sheet) -> AnyView {
-    view! {
-        <div class="welcome">
-            <p>
-                "An invented example, already worked out: a small maker of glazes and hardeners \
-                 timed one hardener at six temperatures. Change any number or blank and see."
-            </p>
-            <button type="button" class="main" on:click=move |_| sheet.change("", start_again)>
-                "Start with your own data"
-            </button>
-        </div>
-    }
-    .into_any()
+fn welcome(sheet: Sheet) -> Part {
+    let start = button("Start with your own data", move || sheet.change("", start_again));
+    part("div")
+        .class("welcome")
+        .add(part("p").text(
+            "An invented example, already worked out: a small maker of glazes and hardeners timed \
+             one hardener at six temperatures. Change any number or blank and see.",
+        ))
+        .add(start.class("main"))
 }
 
 /// How far a long text is read.
-fn progress(sheet: Sheet) -> AnyView {
-    view! {
-        <Show when=move || sheet.progress.get().is_some()>
-            <div class="progress" role="status">
-                <span>"Reading …"</span>
-                <progress
-                    aria-label="How much is read"
-                    max="1"
-                    value=move || sheet.progress.get().unwrap_or(0.0).to_string()
-                ></progress>
-                <button type="button" on:click=move |_| sheet.stop_reading()>"Stop"</button>
-            </div>
-        </Show>
-    }
-    .into_any()
+fn progress(sheet: Sheet) -> Part {
+    let bar = part("progress")
+        .with("aria-label", "How much is read")
+        .with("max", "1")
+        .follows("value", move || sheet.progress().map(|share| share.to_string()));
+    part("div")
+        .class("progress")
+        .with("role", "status")
+        .add(part("span").text("Reading …"))
+        .add(bar)
+        .add(button("Stop", move || sheet.stop_reading()))
 }
 
 /// Clears what was measured and leaves the questions.
@@ -147,7 +151,15 @@ pub fn take_text(study: &mut Study, text: String) {
     if example::is_shown(study) {
         study.title.clear();
     }
-    study.measured = kinetics_core::study::Measured { text, ..Default::default() };
+    let form = form_of(&text);
+    study.measured = Measured { form, text, ..Measured::default() };
     study.assumed.order = None;
     study.assumed.scatter = None;
+}
+
+/// What the beginning of a text suggests that it holds.
+fn form_of(text: &str) -> Form {
+    let end = text.char_indices().map(|(at, _)| at).nth(MOST_SAMPLED).unwrap_or(text.len());
+    let sample = text.get(..end).unwrap_or_default();
+    read_table(sample, &Hints::default()).form.unwrap_or_default()
 }

@@ -1,43 +1,47 @@
 //! Under the table: what was decided on the user's behalf, and what could not be used.
 
-use leptos::prelude::*;
-
+use super::super::once::once;
+use super::super::part::{Part, part};
 use super::super::sheet::Sheet;
 
 /// More than this in a list is counted, not shown.
 const MOST: usize = 40;
 
+/// Sentences, and how many there are in all.
+type Sentences = (Vec<String>, usize);
+
 /// The lists.
-pub fn notes(sheet: Sheet) -> AnyView {
-    let problems = Memo::new(move |_| {
-        let evaluation = sheet.evaluation();
-        let problems = &evaluation.findings.problems;
-        let shown = problems.iter().take(MOST).map(|problem| problem.sentence.clone());
-        (problems.len(), shown.collect::<Vec<String>>())
+pub fn notes(sheet: Sheet) -> Part {
+    let choices = once(sheet, |_, evaluation| {
+        some(evaluation.findings.read.choices.iter().map(String::as_str))
     });
-    let choices = Memo::new(move |_| sheet.evaluation().findings.read.choices.clone());
-    let list = |(count, shown): (usize, Vec<String>)| {
-        let mut items: Vec<AnyView> =
-            shown.into_iter().map(|said| view! { <li>{said}</li> }.into_any()).collect();
-        if count > MOST {
-            items.push(view! { <li>{format!("and {} more.", count - MOST)}</li> }.into_any());
-        }
-        items
-    };
-    let heading = move || match problems.with(|problems| problems.0) {
+    let problems = once(sheet, |_, evaluation| {
+        some(evaluation.findings.problems.iter().map(|problem| problem.sentence.as_str()))
+    });
+    let count = problems.clone();
+    let heading = move || match count().1 {
         1 => "One thing could not be used".to_owned(),
         count => format!("{count} things could not be used"),
     };
-    view! {
-        <ul class="choices">
-            {move || list(choices.with(|all| (all.len(), all.iter().take(MOST).cloned().collect())))}
-        </ul>
-        <Show when=move || problems.with(|problems| problems.0 > 0)>
-            <details class="not-used" open=true>
-                <summary>{heading}</summary>
-                <ul>{move || list(problems.get())}</ul>
-            </details>
-        </Show>
+    let is_clean = problems.clone();
+    let not_used = part("details")
+        .class("not-used")
+        .with("open", "")
+        .is("hidden", move || is_clean().1 == 0)
+        .add(part("summary").says(heading))
+        .add(part("ul").filled(move || problems(), items));
+    part("div").add(part("ul").class("choices").filled(move || choices(), items)).add(not_used)
+}
+
+fn some<'a>(sentences: impl ExactSizeIterator<Item = &'a str>) -> Sentences {
+    let count = sentences.len();
+    (sentences.take(MOST).map(str::to_owned).collect(), count)
+}
+
+fn items((sentences, count): &Sentences) -> Vec<Part> {
+    let mut items: Vec<Part> = sentences.iter().map(|sentence| part("li").text(sentence)).collect();
+    if *count > MOST {
+        items.push(part("li").text(&format!("and {} more.", count - MOST)));
     }
-    .into_any()
+    items
 }

@@ -1,64 +1,60 @@
 //! The place to paste into.
 
-use leptos::prelude::*;
+use wasm_bindgen::JsCast;
+use web_sys::ClipboardEvent;
 
 use super::super::arrivals;
+use super::super::live::State;
+use super::super::part::{Part, button, part, value_of};
 use super::super::sheet::Sheet;
 
 /// What a paste may look like.
 const SAMPLE: &str = "T/°C\tk, 1/h\ts(k)\n50\t0.0184\t0.0009\n60\t0.0547\t0.0027\n…";
 
 /// Where nothing is measured yet.
-pub fn first(sheet: Sheet) -> AnyView {
-    view! {
-        <div class="welcome">
-            <p>
-                "Paste a table of temperatures and rate constants, or drop a file here. \
-                 Headings with units are understood; so are decimal commas."
-            </p>
-        </div>
-        {area(sheet, || ())}
-    }
-    .into_any()
+pub fn first(sheet: Sheet) -> Vec<Part> {
+    let invitation = part("div").class("welcome").add(part("p").text(
+        "Paste a table of temperatures and rate constants, or drop a file here. Headings with \
+         units are understood; so are decimal commas.",
+    ));
+    vec![invitation, area(sheet, None)]
 }
 
-/// Beside a table that is there; undo brings that back.
-pub fn again(sheet: Sheet, wanted: RwSignal<bool>) -> AnyView {
-    area(sheet, move || wanted.set(false))
-}
-
-fn area(sheet: Sheet, done: impl Fn() + Copy + Send + Sync + 'static) -> AnyView {
-    let text = RwSignal::new(String::new());
-    let read = move || {
-        let typed = text.get_untracked();
-        if !typed.trim().is_empty() {
-            arrivals::take_text(sheet, typed);
-            done();
+/// The area. Beside a table that is there, `wanted` says whether it is shown; undo brings the
+/// table back.
+pub fn area(sheet: Sheet, wanted: Option<State<bool>>) -> Part {
+    let typed = State::new(String::new());
+    let take = move |text: String| {
+        arrivals::take_text(sheet, text);
+        if let Some(wanted) = &wanted {
+            wanted.set(false);
         }
     };
-    view! {
-        <div class="paste">
-            <label class="unseen" for="paste">"Table of what was measured"</label>
-            <textarea
-                id="paste"
-                spellcheck="false"
-                autocomplete="off"
-                placeholder=SAMPLE
-                prop:value=move || text.get()
-                on:input=move |event| text.set(event_target_value(&event))
-                on:paste=move |event| {
-                    if let Some(pasted) = arrivals::text_of_paste(&event) {
-                        event.prevent_default();
-                        event.stop_propagation();
-                        arrivals::take_text(sheet, pasted);
-                        done();
-                    }
-                }
-            ></textarea>
-            <Show when=move || !text.with(|text| text.trim().is_empty())>
-                <button type="button" class="main" on:click=move |_| read()>"Read this table"</button>
-            </Show>
-        </div>
-    }
-    .into_any()
+    let take = std::rc::Rc::new(take);
+    let (take_paste, take_typed) = (std::rc::Rc::clone(&take), take);
+    let (content, writing) = (typed.clone(), typed.clone());
+    let area = part("textarea")
+        .with("id", "paste")
+        .with("spellcheck", "false")
+        .with("autocomplete", "off")
+        .with("placeholder", SAMPLE)
+        .holds(move || content.get())
+        .on("input", move |event| writing.set(value_of(event)))
+        .on("paste", move |event| {
+            let paste = event.dyn_ref::<ClipboardEvent>();
+            if let Some(pasted) = paste.and_then(arrivals::text_of_paste) {
+                event.prevent_default();
+                take_paste(pasted);
+            }
+        });
+    let is_typed = typed.clone();
+    let read = move || {
+        let (typed, take) = (typed.clone(), std::rc::Rc::clone(&take_typed));
+        button("Read this table", move || take(typed.get())).class("main")
+    };
+    part("div")
+        .class("paste")
+        .add(part("label").class("unseen").with("for", "paste").text("Table of what was measured"))
+        .add(area)
+        .when(move || !is_typed.get().trim().is_empty(), read)
 }

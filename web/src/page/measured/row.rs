@@ -1,15 +1,20 @@
 //! One line of the table: the cells of a row, or what is to say about it.
 
 use std::collections::BTreeSet;
+use std::rc::Rc;
 
 use kinetics_core::answer::capitalised;
 use kinetics_core::problem::Problem;
 use kinetics_core::quantity::Quantity;
 use kinetics_core::study::Excluded;
 use kinetics_core::table::{Content, Role, Table};
-use leptos::prelude::*;
+use wasm_bindgen::JsCast;
+use web_sys::{HtmlInputElement, KeyboardEvent};
 
-use super::super::blank::{Gap, blank};
+use super::super::blank::{Complaint, Gap, blank};
+use super::super::live::State;
+use super::super::part::{Part, drawn, part, value_of};
+use super::super::sheet::Sheet;
 use super::edit::with_cell;
 use super::rows::Rows;
 use crate::figure::geometry::Point;
@@ -44,7 +49,7 @@ pub fn lines(table: &Table, problems: &[Problem], left_out: BTreeSet<usize>) -> 
 }
 
 /// A line as a row of the page's table.
-pub fn row(rows: Rows, line: Line) -> AnyView {
+pub fn row(rows: &Rc<Rows>, line: Line) -> Part {
     match line {
         Line::Cells(at) => cells(rows, at as usize),
         Line::Problems(at) => problems(rows, at as usize),
@@ -53,43 +58,56 @@ pub fn row(rows: Rows, line: Line) -> AnyView {
 }
 
 /// The line of the text in which a row stands.
-fn line_of(rows: Rows, at: usize) -> Option<usize> {
-    rows.sheet.prepared().table.rows.get(at).map(|row| row.line)
+fn line_of(sheet: Sheet, at: usize) -> Option<usize> {
+    sheet.prepared().table.rows.get(at).map(|row| row.line)
 }
 
-fn cells(rows: Rows, at: usize) -> AnyView {
+fn is_left_out(sheet: Sheet, at: usize) -> bool {
+    let line = line_of(sheet, at);
+    sheet.study().measured.excluded.iter().any(|entry| Some(entry.row) == line)
+}
+
+fn cells(rows: &Rc<Rows>, at: usize) -> Part {
     let sheet = rows.sheet;
-    let line = Memo::new(move |_| line_of(rows, at));
-    let is_out = Memo::new(move |_| {
-        let line = line.get();
-        line.is_some_and(|line| sheet.study(|s| s.measured.excluded.iter().any(|e| e.row == line)))
-    });
-    let cells = move || {
-        (0..rows.columns.get()).map(|column| cell(rows, at, column, line)).collect::<Vec<_>>()
+    let look = move || {
+        Some(match line_of(sheet, at) {
+            None => "next".to_owned(),
+            Some(_) if is_left_out(sheet, at) => "out".to_owned(),
+            Some(_) => String::new(),
+        })
     };
-    view! {
-        <tr class:out=move || is_out.get() class:next=move || line.get().is_none()>
-            <td class="mark">{move || match line.get() {
-                Some(line) => use_mark(rows, at, line, is_out),
-                None => view! { <span aria-hidden="true">"+"</span> }.into_any(),
-            }}</td>
-            {cells}
-        </tr>
-    }
-    .into_any()
+    let of_cells = Rc::clone(rows);
+    part("tr").follows("class", look).list(rows.places(), move |place| match place.checked_sub(1) {
+        Some(column) => cell(&of_cells, at, column),
+        None => mark(&of_cells, at),
+    })
+}
+
+/// The first cell of a row.
+fn mark(rows: &Rc<Rows>, at: usize) -> Part {
+    let (sheet, rows) = (rows.sheet, Rc::clone(rows));
+    part("td").class("mark").filled(
+        move || line_of(sheet, at),
+        move |line| {
+            vec![match line {
+                Some(line) => use_mark(&rows, at, *line),
+                None => part("span").with("aria-hidden", "true").text("+"),
+            }]
+        },
+    )
 }
 
 /// The mark of a row: coloured and shaped by its temperature, full while the row is used.
-fn use_mark(rows: Rows, at: usize, line: usize, is_out: Memo<bool>) -> AnyView {
+fn use_mark(rows: &Rc<Rows>, at: usize, line: usize) -> Part {
     let sheet = rows.sheet;
-    let kelvin = Memo::new(move |_| temperature(rows, at));
+    let (coloured, shaped) = (Rc::clone(rows), Rc::clone(rows));
     let colour = move || {
-        let role = kelvin.get().map_or(scene::Role::Quiet, scene::Role::Temperature);
-        rows.palette.get().mark(role).css
+        let role = temperature(sheet, at).map_or(scene::Role::Quiet, scene::Role::Temperature);
+        coloured.palette().mark(role).css
     };
     let outline = move || {
-        let shape = kelvin.get().map_or(Shape::Circle, Shape::OfTemperature);
-        path(rows.palette.get().shape(shape))
+        let shape = temperature(sheet, at).map_or(Shape::Circle, Shape::OfTemperature);
+        Some(path(shaped.palette().shape(shape)))
     };
     let toggle = move |is_used: bool| {
         sheet.change("", |study| {
@@ -101,28 +119,32 @@ fn use_mark(rows: Rows, at: usize, line: usize, is_out: Memo<bool>) -> AnyView {
             }
         });
     };
-    view! {
-        <label class="use" title="Leave this row out, or take it back in">
-            <input
-                type="checkbox"
-                aria-label=move || format!("use row {line}, {}", sheet.cell(at, 0))
-                prop:checked=move || !is_out.get()
-                on:change=move |event| toggle(event_target_checked(&event))
-            />
-            <svg viewBox="-6 -6 12 12" aria-hidden="true" style:color=colour>
-                <path d=outline />
-            </svg>
-        </label>
-    }
-    .into_any()
+    let tick = part("input")
+        .with("type", "checkbox")
+        .follows("aria-label", move || Some(format!("use row {line}, {}", sheet.cell(at, 0))))
+        .ticked(move || !is_left_out(sheet, at))
+        .on("change", move |event| {
+            let target = event.target().and_then(|t| t.dyn_into::<HtmlInputElement>().ok());
+            toggle(target.is_some_and(|input| input.checked()));
+        });
+    let drawing = drawn("svg")
+        .with("viewBox", "-6 -6 12 12")
+        .with("aria-hidden", "true")
+        .styled("color", colour)
+        .add(drawn("path").follows("d", outline));
+    part("label")
+        .class("use")
+        .with("title", "Leave this row out, or take it back in")
+        .add(tick)
+        .add(drawing)
 }
 
 /// The temperature of a row in kelvin, where it can be told.
-fn temperature(rows: Rows, at: usize) -> Option<f64> {
-    let prepared = rows.sheet.prepared();
+fn temperature(sheet: Sheet, at: usize) -> Option<f64> {
+    let prepared = sheet.prepared();
     let row = prepared.table.rows.get(at)?;
-    let runs = rows.sheet.evaluation();
-    let runs = &runs.rates.runs;
+    let evaluation = sheet.evaluation();
+    let runs = &evaluation.rates.runs;
     if let Ok(found) = runs.binary_search_by_key(&row.line, |run| run.row) {
         return runs.get(found).map(|run| run.observation.temperature.0);
     }
@@ -147,92 +169,114 @@ fn path(shape: Shape) -> String {
     }
 }
 
-fn cell(rows: Rows, at: usize, column: usize, line: Memo<Option<usize>>) -> AnyView {
-    let sheet = rows.sheet;
-    let draft = RwSignal::new(None::<String>);
-    let text = move || draft.get().unwrap_or_else(|| sheet.cell(at, column));
-    let look = Memo::new(move |_| {
-        let prepared = sheet.prepared();
-        let content = prepared.table.rows.get(at).and_then(|row| row.cells.get(column));
-        let is_words =
-            prepared.table.columns.get(column).is_some_and(|column| !column.role.is_numeric());
-        let has_problem = line.get().is_some_and(|line| {
-            let place = (Some(line), Some(column + 1));
-            rows.problems.with(|problems| {
-                problems.binary_search_by_key(&place, |p| (p.row, p.column)).is_ok()
-            })
-        });
-        match content.map(|cell| &cell.content) {
-            Some(Content::Bad) => "bad",
-            _ if has_problem => "bad",
-            Some(Content::Marked { .. } | Content::Below(_) | Content::NotDetermined) => "unused",
-            _ if is_words => "words",
-            _ => "",
-        }
+/// How a cell looks: `bad`, `unused`, `words`, or as any number.
+fn look(rows: &Rows, at: usize, column: usize) -> &'static str {
+    let prepared = rows.sheet.prepared();
+    let content = prepared.table.rows.get(at).and_then(|row| row.cells.get(column));
+    let is_words =
+        prepared.table.columns.get(column).is_some_and(|column| !column.role.is_numeric());
+    let has_problem = line_of(rows.sheet, at).is_some_and(|line| {
+        let place = (Some(line), Some(column + 1));
+        (rows.problems)().binary_search_by_key(&place, |p| (p.row, p.column)).is_ok()
     });
-    let keep = move |typed: &str| {
-        let prepared = untrack(|| sheet.prepared());
-        sheet.change(&format!("cell {at} {column}"), |study| {
-            study.measured.text =
-                with_cell(&study.measured.text, &prepared.table, at, column, typed);
-        });
-    };
-    // A long table is read again only once the cell is left.
-    let typed = move |typed: String| {
-        if !rows.are_many.get_untracked() {
-            keep(&typed);
-        }
-        draft.set(Some(typed));
-    };
-    let leave = move || {
-        if let Some(typed) = draft.get_untracked() {
-            if typed.trim() != untrack(|| sheet.cell(at, column)) {
-                keep(&typed);
-            }
-            draft.set(None);
-        }
-        sheet.seal();
-    };
-    let label = move || {
-        let name = sheet.prepared().table.columns.get(column).map(|column| column.name.clone());
-        let row = line.get().map_or("next row".to_owned(), |line| format!("row {line}"));
-        format!("{}, {row}", name.unwrap_or_else(|| format!("column {}", column + 1)))
-    };
-    view! {
-        <td class=move || look.get()>
-            <input
-                type="text"
-                inputmode=move || if look.get() == "words" { "text" } else { "decimal" }
-                autocomplete="off"
-                spellcheck="false"
-                aria-label=label
-                aria-invalid=move || (look.get() == "bad").then_some("true")
-                prop:value=text
-                on:input=move |event| typed(event_target_value(&event))
-                on:blur=move |_| leave()
-                on:keydown=move |event| if event.key() == "Enter" { leave() }
-            />
-        </td>
+    match content.map(|cell| &cell.content) {
+        Some(Content::Bad) => "bad",
+        _ if has_problem => "bad",
+        Some(Content::Marked { .. } | Content::Below(_) | Content::NotDetermined) => "unused",
+        _ if is_words => "words",
+        _ => "",
     }
-    .into_any()
 }
 
-fn problems(rows: Rows, at: usize) -> AnyView {
-    let sentences = move || {
-        let line = line_of(rows, at);
-        rows.problems.with(|problems| {
-            let own = problems.iter().filter(|problem| problem.row == line);
-            own.map(|problem| in_place(&problem.sentence)).collect::<Vec<_>>().join(" ")
-        })
+/// A cell in which one types.
+struct Typing {
+    rows: Rc<Rows>,
+    at: usize,
+    column: usize,
+    draft: State<Option<String>>,
+}
+
+fn cell(rows: &Rc<Rows>, at: usize, column: usize) -> Part {
+    let sheet = rows.sheet;
+    let typing = Rc::new(Typing { rows: Rc::clone(rows), at, column, draft: State::new(None) });
+    let (looks, kind, invalid) = (Rc::clone(rows), Rc::clone(rows), Rc::clone(rows));
+    let label = move || {
+        let prepared = sheet.prepared();
+        let name = prepared.table.columns.get(column).map(|column| column.name.clone());
+        let row = line_of(sheet, at).map_or("next row".to_owned(), |line| format!("row {line}"));
+        Some(format!("{}, {row}", name.unwrap_or_else(|| format!("column {}", column + 1))))
     };
-    let span = move || rows.columns.get().to_string();
-    view! {
-        <tr class="note">
-            <td class="mark"></td>
-            <td colspan=span title=sentences>{sentences}</td>
-        </tr>
+    let mode = move || {
+        let mode = if look(&kind, at, column) == "words" { "text" } else { "decimal" };
+        Some(mode.to_owned())
+    };
+    let (text, write, leave, enter) =
+        (Rc::clone(&typing), Rc::clone(&typing), Rc::clone(&typing), typing);
+    let input = part("input")
+        .with("type", "text")
+        .with("autocomplete", "off")
+        .with("spellcheck", "false")
+        .follows("inputmode", mode)
+        .follows("aria-label", label)
+        .follows("aria-invalid", move || {
+            (look(&invalid, at, column) == "bad").then(|| "true".to_owned())
+        })
+        .holds(move || text.draft.get().unwrap_or_else(|| sheet.cell(at, column)))
+        .on("input", move |event| write.typed(value_of(event)))
+        .on("blur", move |_| leave.left())
+        .on("keydown", move |event| {
+            if event.dyn_ref::<KeyboardEvent>().is_some_and(|key| key.key() == "Enter") {
+                enter.left();
+            }
+        });
+    part("td").follows("class", move || Some(look(&looks, at, column).to_owned())).add(input)
+}
+
+impl Typing {
+    fn typed(&self, typed: String) {
+        // A long table is read again only once the cell is left.
+        if !self.rows.are_many() {
+            self.keep(&typed);
+        }
+        self.draft.set(Some(typed));
     }
-    .into_any()
+
+    fn left(&self) {
+        if let Some(typed) = self.draft.get() {
+            if typed.trim() != self.rows.sheet.cell(self.at, self.column) {
+                self.keep(&typed);
+            }
+            self.draft.set(None);
+        }
+        self.rows.sheet.seal();
+    }
+
+    fn keep(&self, typed: &str) {
+        let Self { rows, at, column, .. } = self;
+        let prepared = rows.sheet.prepared();
+        rows.sheet.change(&format!("cell {at} {column}"), |study| {
+            let text = &study.measured.text;
+            study.measured.text = with_cell(text, &prepared.table, *at, *column, typed);
+        });
+    }
+}
+
+/// The cell of a note, as wide as all columns.
+fn note(rows: &Rc<Rows>, class: &str, words: Part) -> Part {
+    let columns = Rc::clone(&rows.columns);
+    let words = words.follows("colspan", move || Some(columns().len().to_string()));
+    part("tr").class(class).add(part("td").class("mark")).add(words)
+}
+
+fn problems(rows: &Rc<Rows>, at: usize) -> Part {
+    let (sheet, problems) = (rows.sheet, Rc::clone(&rows.problems));
+    let sentences = move || {
+        let line = line_of(sheet, at);
+        let problems = problems();
+        let own = problems.iter().filter(|problem| problem.row == line);
+        own.map(|problem| in_place(&problem.sentence)).collect::<Vec<_>>().join(" ")
+    };
+    note(rows, "note", part("td").says(sentences))
 }
 
 /// The sentence without its place, where that can be seen.
@@ -241,41 +285,32 @@ fn in_place(sentence: &str) -> String {
     rest.map_or_else(|| sentence.to_owned(), |(_, rest)| capitalised(rest))
 }
 
-fn left_out(rows: Rows, at: usize) -> AnyView {
+fn left_out(rows: &Rc<Rows>, at: usize) -> Part {
     let sheet = rows.sheet;
-    let line = Memo::new(move |_| line_of(rows, at).unwrap_or_default());
-    let shown = Signal::derive(move || {
-        let line = line.get();
-        sheet.study(|study| {
-            let entry = study.measured.excluded.iter().find(|entry| entry.row == line);
-            entry.map(|entry| entry.reason.clone()).unwrap_or_default()
-        })
-    });
+    let shown = move || {
+        let (study, line) = (sheet.study(), line_of(sheet, at));
+        let entry = study.measured.excluded.iter().find(|entry| Some(entry.row) == line);
+        entry.map(|entry| entry.reason.clone()).unwrap_or_default()
+    };
     let take = move |typed: &str| {
-        let line = line.get_untracked();
-        sheet.change(&format!("reason {line}"), |study| {
-            let entry = study.measured.excluded.iter_mut().find(|entry| entry.row == line);
-            if let Some(entry) = entry {
+        let line = line_of(sheet, at);
+        sheet.change(&format!("reason {at}"), |study| {
+            let mut entries = study.measured.excluded.iter_mut();
+            if let Some(entry) = entries.find(|entry| Some(entry.row) == line) {
                 typed.clone_into(&mut entry.reason);
             }
         });
         Ok(())
     };
+    let line = line_of(sheet, at).unwrap_or_default();
     let reason = blank(Gap {
-        label: format!("Why row {} is left out", line.get_untracked()),
-        shown,
+        label: format!("Why row {line} is left out"),
+        shown: Box::new(shown),
         take: Box::new(take),
         leave: Box::new(move || sheet.seal()),
-        complaint: RwSignal::new(None),
+        complaint: Complaint::new(None),
         id: format!("reason-{at}"),
         hint: "why?",
     });
-    let span = move || rows.columns.get().to_string();
-    view! {
-        <tr class="note left-out-because">
-            <td class="mark"></td>
-            <td colspan=span>"left out because " {reason}</td>
-        </tr>
-    }
-    .into_any()
+    note(rows, "note left-out-because", part("td").text("left out because ").add(reason))
 }

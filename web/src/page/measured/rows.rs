@@ -1,19 +1,22 @@
 //! The table: only the rows in view are on the page, so that a hundred thousand scroll as well
 //! as six.
 
-use std::sync::Arc;
+use std::rc::Rc;
 
 use kinetics_core::problem::Problem;
 use kinetics_core::study::Study;
-use kinetics_core::table::{Column, Hints, Table, read_table};
-use leptos::html::Div;
-use leptos::prelude::*;
+use kinetics_core::table::{Column, read_table};
+use wasm_bindgen::JsCast;
+use web_sys::Element;
 
-use super::super::pictures::temperature_range;
+use super::super::live::State;
+use super::super::once::once;
+use super::super::part::{Part, part};
 use super::super::sheet::Sheet;
 use super::super::surroundings::Surroundings;
 use super::head::head;
-use super::row::{self, Line, row};
+use super::row::{self, row};
+use crate::figure::palette::Palette;
 
 /// From so many rows on, lines are of one height and only those in view exist.
 const MANY: usize = 300;
@@ -21,6 +24,8 @@ const MANY: usize = 300;
 const LINE_HEIGHT: f64 = 35.0;
 /// Lines kept above and below those in view.
 const MARGIN: usize = 12;
+/// A longer text is no mere heading.
+const LONGEST_HEADING: usize = 1_000;
 /// The heading of a table that is typed.
 const TYPED_HEADING: &str = "T/°C\tk, 1/h\ts(k)\n";
 
@@ -30,122 +35,129 @@ pub fn begin_typing(study: &mut Study) {
 }
 
 /// What rows need to know of the sheet.
-#[derive(Clone, Copy)]
 pub struct Rows {
     /// The sheet.
     pub sheet: Sheet,
+    /// What pictures and marks depend on besides.
+    pub surroundings: State<Surroundings>,
     /// Everything wrong with cells, by line and column.
-    pub problems: Memo<Arc<Vec<Problem>>>,
-    /// How many columns there are.
-    pub columns: Memo<usize>,
-    /// Colours and shapes for temperatures.
-    pub palette: Memo<crate::figure::palette::Palette>,
+    pub problems: Rc<dyn Fn() -> Rc<Vec<Problem>>>,
+    /// The columns.
+    pub columns: Rc<dyn Fn() -> Rc<Vec<Column>>>,
+}
+
+impl Rows {
     /// Whether there are so many rows that lines keep one height.
-    pub are_many: Memo<bool>,
+    pub fn are_many(&self) -> bool {
+        self.sheet.prepared().table.rows.len() >= MANY
+    }
+
+    /// The places of a row: 0 for its mark, then one for each column.
+    pub fn places(&self) -> impl Fn() -> Vec<usize> + 'static {
+        let columns = Rc::clone(&self.columns);
+        move || (0..=columns().len()).collect()
+    }
+
+    /// Colours and shapes for temperatures.
+    pub fn palette(&self) -> Palette {
+        self.surroundings.get().palette().with_temperatures(self.sheet.temperatures())
+    }
 }
 
 /// The table with its heads.
-pub fn table(sheet: Sheet, surroundings: ReadSignal<Surroundings>) -> AnyView {
-    let heads = Memo::new(move |_| columns_of(sheet));
-    let problems = Memo::new(move |_| Arc::new(in_cells(&sheet.evaluation().findings.problems)));
-    let rows = Rows {
+pub fn table(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
+    let rows = Rc::new(Rows {
         sheet,
-        problems,
-        columns: Memo::new(move |_| heads.with(Vec::len)),
-        palette: Memo::new(move |_| {
-            let range = temperature_range(&sheet.evaluation());
-            surroundings.get().palette().with_temperatures(range)
-        }),
-        are_many: Memo::new(move |_| sheet.prepared().table.rows.len() >= MANY),
-    };
-    let lines = Memo::new(move |_| {
-        let left_out = sheet.study(|s| s.measured.excluded.iter().map(|e| e.row).collect());
-        Arc::new(row::lines(&sheet.prepared().table, &problems.get(), left_out))
+        surroundings,
+        problems: once(sheet, |_, evaluation| Rc::new(in_cells(&evaluation.findings.problems))),
+        columns: once(sheet, move |_, _| Rc::new(columns_of(sheet))),
+    });
+    let problems = Rc::clone(&rows.problems);
+    let lines = once(sheet, move |study, _| {
+        let left_out = study.measured.excluded.iter().map(|entry| entry.row).collect();
+        Rc::new(row::lines(&sheet.prepared().table, &problems(), left_out))
     });
 
-    let node = NodeRef::<Div>::new();
-    let (scrolled, set_scrolled) = signal((0.0, 800.0));
-    let look = move || {
-        if let Some(element) = node.get_untracked() {
-            let seen = (f64::from(element.scroll_top()), f64::from(element.client_height()));
-            set_scrolled.set(seen);
-        }
-    };
-    let view = Memo::new(move |_| {
-        let count = lines.with(|lines| lines.len());
-        if !rows.are_many.get() {
+    // From the top of what is seen, and how much is seen, in CSS pixels.
+    let seen = State::new((0.0, 800.0));
+    let looking = seen.clone();
+    let (of_view, of_lines) = (Rc::clone(&rows), Rc::clone(&lines));
+    let view = Rc::new(move || {
+        let count = of_lines().len();
+        if !of_view.are_many() {
             return (0, count);
         }
-        let (top, height) = scrolled.get();
+        let (top, height) = seen.get();
         let first = (top / LINE_HEIGHT) as usize;
         let last = ((top + height) / LINE_HEIGHT) as usize + 1;
         (first.saturating_sub(MARGIN).min(count), (last + MARGIN).min(count))
     });
+    let (first, last) = (Rc::clone(&view), Rc::clone(&view));
+    let (all, length) = (Rc::clone(&lines), Rc::clone(&lines));
     let in_view = move || {
-        let (first, last) = view.get();
-        lines.with(|lines| lines.get(first..last).unwrap_or_default().to_vec())
+        let (first, last) = view();
+        lines().get(first..last).unwrap_or_default().to_vec()
     };
-    let gap = move |lines: usize| format!("{}px", lines as f64 * LINE_HEIGHT);
-    let above = move || gap(view.get().0);
-    let below = move || gap(lines.with(|lines| lines.len()) - view.get().1);
-    let span = move || (rows.columns.get() + 1).to_string();
-    let heads_row = move || {
-        (0..rows.columns.get())
-            .map(|at| head(sheet, at, Memo::new(move |_| heads.with(|h| h.get(at).cloned()))))
-            .collect::<Vec<_>>()
-    };
-    view! {
-        <div
-            class="rows"
-            class:many=move || rows.are_many.get()
-            node_ref=node
-            tabindex=move || rows.are_many.get().then_some("0")
-            role="region"
-            aria-label="Table of what was measured"
-            on:scroll=move |_| look()
-        >
-            <table
-                class="measured"
-                aria-rowcount=move || (lines.with(|lines| lines.len()) + 1).to_string()
-                style:min-width=move || format!("{}px", 34 + 92 * rows.columns.get())
-            >
-                <thead>
-                    <tr>
-                        <th class="mark"><span class="unseen">"used"</span></th>
-                        {heads_row}
-                    </tr>
-                </thead>
-                <tbody>
-                    <tr class="gap" aria-hidden="true">
-                        <td colspan=span style:height=above></td>
-                    </tr>
-                    <For each=in_view key=|line: &Line| *line let:line>
-                        {row(rows, line)}
-                    </For>
-                    <tr class="gap" aria-hidden="true">
-                        <td colspan=span style:height=below></td>
-                    </tr>
-                </tbody>
-            </table>
-        </div>
-    }
-    .into_any()
+    let gap = |lines: usize| format!("{}px", lines as f64 * LINE_HEIGHT);
+    let above = move || gap(first().0);
+    let below = move || gap(all().len() - last().1);
+
+    let heads = heads(&rows);
+    let (count, wide, many) = (Rc::clone(&rows), Rc::clone(&rows), Rc::clone(&rows));
+    let table = part("table")
+        .class("measured")
+        .follows("aria-rowcount", move || Some((length().len() + 1).to_string()))
+        .styled("min-width", move || format!("{}px", 34 + 92 * (count.columns)().len()))
+        .add(part("thead").add(heads))
+        .add(space(&rows, above))
+        .add(part("tbody").list(in_view, move |line| row(&wide, *line)))
+        .add(space(&many, below));
+    part("div")
+        .follows("class", {
+            let rows = Rc::clone(&many);
+            move || Some(if rows.are_many() { "rows many".into() } else { "rows".into() })
+        })
+        .follows("tabindex", move || many.are_many().then(|| "0".to_owned()))
+        .with("role", "region")
+        .with("aria-label", "Table of what was measured")
+        .on("scroll", move |event| {
+            let target = event.target().and_then(|target| target.dyn_into::<Element>().ok());
+            if let Some(element) = target {
+                let height = f64::from(element.client_height());
+                looking.set((f64::from(element.scroll_top()), height));
+            }
+        })
+        .add(table)
+}
+
+/// A head for the marks and one for each column.
+fn heads(rows: &Rc<Rows>) -> Part {
+    let columns = Rc::clone(&rows.columns);
+    let sheet = rows.sheet;
+    part("tr").list(rows.places(), move |place| match place.checked_sub(1) {
+        Some(at) => head(sheet, at, Rc::clone(&columns)),
+        None => part("th").class("mark").add(part("span").class("unseen").text("used")),
+    })
+}
+
+/// Room for the rows that are not in view.
+fn space(rows: &Rc<Rows>, height: impl Fn() -> String + 'static) -> Part {
+    let columns = Rc::clone(&rows.columns);
+    let cell = part("td")
+        .follows("colspan", move || Some((columns().len() + 1).to_string()))
+        .styled("height", height);
+    part("tbody").class("space").with("aria-hidden", "true").add(part("tr").add(cell))
 }
 
 /// The columns of the table; of one that is being begun, those of its heading.
 fn columns_of(sheet: Sheet) -> Vec<Column> {
-    let prepared = sheet.prepared();
-    if !prepared.table.columns.is_empty() {
+    let (study, prepared) = (sheet.study(), sheet.prepared());
+    if !prepared.table.columns.is_empty() || study.measured.text.len() > LONGEST_HEADING {
         return prepared.table.columns.clone();
     }
-    let (text, hints) = sheet.study(|study| {
-        (study.measured.text.clone(), Hints { form: None, ..kinetics_core::study::hints(study) })
-    });
     // The reader wants a row before it speaks of columns.
-    let sampled = format!("{}\n50\t0.02\t0.001\n", text.trim_end());
-    let table: Table =
-        if text.len() > 1000 { return Vec::new() } else { read_table(&sampled, &hints) };
-    table.columns
+    let sampled = format!("{}\n50\t0.02\t0.001\n", study.measured.text.trim_end());
+    read_table(&sampled, &kinetics_core::study::hints(&study)).columns
 }
 
 /// Problems with a place, in the order of the text.
