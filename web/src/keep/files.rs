@@ -1,6 +1,7 @@
 //! Files: reading those that are chosen or dropped, and offering the study as one.
 
 use js_sys::{Array, Uint8Array};
+use wasm_bindgen::closure::Closure;
 use wasm_bindgen::{JsCast, JsValue};
 use wasm_bindgen_futures::JsFuture;
 use web_sys::{
@@ -61,12 +62,9 @@ fn try_download(name: &str, text: &str) -> Option<()> {
     link.set_download(name);
     link.click();
     // The download has its own hold on the blob once it began.
-    later(move || {
-        let _ = Url::revoke_object_url(&address);
-    });
+    let revoke = Closure::once_into_js(move || Url::revoke_object_url(&address));
+    web_sys::window()?
+        .set_timeout_with_callback_and_timeout_and_arguments_0(revoke.unchecked_ref(), 20_000)
+        .ok()?;
     Some(())
-}
-
-fn later(task: impl FnOnce() + 'static) {
-    leptos::prelude::set_timeout(task, std::time::Duration::from_secs(20));
 }
