@@ -9,9 +9,9 @@ use crate::units::RateUnit;
 /// A number with its unit, and the limits of its interval without.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Shown {
-    /// "90.4 kJ/mol".
+    /// "90 kJ/mol".
     pub value: String,
-    /// ("85.1", "94.8"), where there is an interval.
+    /// ("85", "95"), where there is an interval.
     pub limits: Option<(String, String)>,
 }
 
@@ -34,7 +34,7 @@ pub fn bare(value: f64, range: Option<(f64, f64)>, display: &Display) -> Shown {
     Shown::new(value, range, 1.0, "", display.decimal)
 }
 
-/// A molar energy with its limits in J/mol: "90.4 kJ/mol".
+/// A molar energy with its limits in J/mol: "90 kJ/mol".
 pub fn energy(energy: JoulesPerMole, range: Option<(f64, f64)>, display: &Display) -> Shown {
     let scale = 1.0 / display.energy.joules_per_mole();
     Shown::new(energy.0, range, scale, display.energy.symbol(), display.decimal)
@@ -124,8 +124,8 @@ mod tests {
     fn units_of_the_study_are_used() {
         let display = Display::default();
         let found = energy(JoulesPerMole(90_412.0), Some((85_110.0, 94_790.0)), &display);
-        assert_eq!(found.value, "90.4\u{a0}kJ/mol");
-        assert_eq!(found.limits.unwrap(), ("85.1".into(), "94.8".into()));
+        assert_eq!(found.value, "90\u{a0}kJ/mol");
+        assert_eq!(found.limits.unwrap(), ("85".into(), "95".into()));
         let calories = Display { energy: EnergyUnit::KilocaloriePerMole, ..display };
         assert_eq!(energy(JoulesPerMole(41_840.0), None, &calories).value, "10\u{a0}kcal/mol");
         let hours = RateUnit::parse("1/h").unwrap();
