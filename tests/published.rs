@@ -14,6 +14,8 @@ mod known_rates;
 mod linear_fit;
 #[path = "published/linear_laws.rs"]
 mod linear_laws;
+#[path = "published/nonlinear_fit.rs"]
+mod nonlinear_fit;
 #[path = "published/rate_constants.rs"]
 mod rate_constants;
 #[path = "published/rules.rs"]

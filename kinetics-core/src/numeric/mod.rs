@@ -3,4 +3,5 @@
 pub mod distributions;
 pub mod errors_in_both;
 pub mod least_squares;
+pub mod nonlinear;
 pub mod roots;
