@@ -265,6 +265,10 @@ impl Basis {
                 format!("At {order} it takes for ever until all of it is gone."),
                 "Ask for less than 100 %, for example 99.9 %.",
             ),
+            ExtentError::Unreachable => Refusal::new(
+                "The reaction stops before so much of it is gone.",
+                "Ask for a smaller part.",
+            ),
             ExtentError::NeedsInitialConcentration => Refusal::new(
                 format!("At {order} the time depends on the initial concentration."),
                 "State the initial concentration below the table of what was measured.",

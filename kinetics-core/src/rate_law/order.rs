@@ -1,4 +1,4 @@
-//! How the rate depends on composition: order n in one reactant.
+//! Order n in one reactant.
 //!
 //! −dc/dt = k cⁿ, so that with θ = ∫k dt
 //! c^(1−n) = c0^(1−n) − (1−n)θ, and c = c0·exp(−θ) at n = 1
@@ -19,6 +19,9 @@ pub enum ExtentError {
     /// X = 1 is never reached at order 1 and above.
     #[error("a reaction of order 1 or above never uses up all of it")]
     NeverComplete,
+    /// More than there is of the other reactant, or than the equilibrium allows.
+    #[error("the reaction stops before so much of it is gone")]
+    Unreachable,
     /// Order ≠ 1 and no initial concentration.
     #[error("at this order the time depends on the initial concentration")]
     NeedsInitialConcentration,
