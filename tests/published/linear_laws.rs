@@ -16,9 +16,12 @@ const REFERENCE: &str = include_str!("../reference/linear_laws.json");
 /// Sums, exponentials and least squares: sixteen digits, of which the textbooks' uncentred
 /// designs lose up to six.
 const CLOSED: f64 = 1e-9;
-/// Quantiles and what is read off them: the core leaves out components of the mixture below
-/// 1e-9, of which there are some hundred at most, and its Student t keeps ten digits.
+/// Quantiles and what is read off them: the core's Student t keeps ten digits.
 const QUANTILES: f64 = 1e-7;
+/// Quantiles of averaged intervals: the core's panels may miss 1e-5 of a probability, which at
+/// the limits of a 95 % interval is half a thousandth of a standard error, itself a tenth of the
+/// value at most.
+const AVERAGED: f64 = 5e-5;
 /// AICc with a run-to-run scatter: the core searches ln τ down to steps of 1e-4, which leaves
 /// the square of that in the likelihood.
 const LIKELIHOOD: f64 = 1e-7;
@@ -32,6 +35,13 @@ struct Case {
     expected: Value,
     evaluation: Evaluation,
     findings: Value,
+}
+
+impl Case {
+    fn quantiles(&self) -> f64 {
+        let averaged = self.findings["law"]["scatter"] == "as-stated-plus-run-to-run";
+        if averaged { AVERAGED } else { QUANTILES }
+    }
 }
 
 fn cases() -> Vec<Case> {
@@ -105,7 +115,7 @@ checks! {
     fn limits_of_the_law() {
         let mut tally = Tally::default();
         for case in cases() {
-            tally.map(&case.name, &case.findings, &case.expected["quantiles"], QUANTILES);
+            tally.map(&case.name, &case.findings, &case.expected["quantiles"], case.quantiles());
         }
         tally.end(130);
     }
@@ -118,7 +128,7 @@ checks! {
             for (i, expected) in case.expected["answers"].as_array().unwrap().iter().enumerate() {
                 let answer = &case.findings["answers"][i];
                 let place = format!("{}, {}", case.name, answer["question"]);
-                tally.map(&place, answer, expected, QUANTILES);
+                tally.map(&place, answer, expected, case.quantiles());
             }
         }
         tally.end(600);
@@ -191,22 +201,5 @@ checks! {
             compared += 1;
         }
         assert!(compared >= 2, "only {compared} sentences were compared");
-    }
-
-    /// The ladder of τ is fine enough: with fifteen times its steps and a tail of 1e-9 in place of
-    /// 1e-4, limits of the activation energy move by less than a hundredth of the half-width.
-    fn the_ladder_is_fine_enough() {
-        let mut compared = 0;
-        for case in cases() {
-            let Some(fine) = case.expected.get("fine_ladder") else { continue };
-            let energy = &case.findings["law"]["activation_energy"];
-            let (low, high) = (fine["low"].as_f64().unwrap(), fine["high"].as_f64().unwrap());
-            for (key, limit) in [("low", low), ("high", high)] {
-                let moved = (energy[key].as_f64().unwrap() - limit).abs() / (0.5 * (high - low));
-                assert!(moved < 0.01, "{} {key}: {moved}", case.name);
-                compared += 1;
-            }
-        }
-        assert!(compared >= 10);
     }
 }

@@ -82,7 +82,7 @@ class Law:
 class Fit:
     """A law fitted under a scatter: the estimate, and the mixture that gives its intervals."""
 
-    def __init__(self, law, data, scatter, step=0.06, last=1e-4):
+    def __init__(self, law, data, scatter):
         self.law, self.scatter = law, scatter
         self.t = numpy.array(data["celsius"]) + 273.15
         self.y = numpy.log(data["k"]) + math.log(data["per_second"])
@@ -104,7 +104,7 @@ class Fit:
             self.weights = 1.0 / self.s**2
             self.components = [(1.0, self.model.params, self.covariance, 0.0)]
         else:
-            self.average(step, last)
+            self.average()
         self.params = self.model.params
         self.reference = self.weights.sum() / (self.weights / self.t).sum()
 
@@ -118,8 +118,8 @@ class Fit:
         model, _ = self.weighted(tau)
         return float((model.resid**2 / (self.s**2 + tau**2)).sum())
 
-    def average(self, step, last):
-        """Masses from F(Q(τ)) on a ladder of τ (Iyer, Wang & Mathew 2004; Viechtbauer 2007)."""
+    def average(self, step=0.003, last=1e-9):
+        """Masses from F(Q(τ)) on a fine ladder of τ (Iyer, Wang & Mathew 2004; Viechtbauer 2007)."""
         nodes = [0.0]
         larger = [stats.chi2.cdf(self.misfit(0.0), self.nu)]
         while larger[-1] >= last:
@@ -381,9 +381,6 @@ def study(name, law, data, scatter, diagnose=False):
     }
     if diagnose:
         found["diagnostics"] = diagnostics(fit, data)
-    if fit.scatter == "as-stated-plus-run-to-run":
-        fine = Fit(law, data, scatter, step=0.004, last=1e-9)
-        found["fine_ladder"] = dict(zip(("low", "high"), fine.interval(fine.law.energy(fit.reference))))
     return found
 
 

@@ -43,6 +43,11 @@ pub fn chi_squared_cdf(x: f64, degrees_of_freedom: f64) -> f64 {
     ChiSquared::new(degrees_of_freedom).map_or(f64::NAN, |c| c.cdf(x.max(0.0)))
 }
 
+/// Density of chi-squared with `degrees_of_freedom` > 0.
+pub fn chi_squared_density(x: f64, degrees_of_freedom: f64) -> f64 {
+    ChiSquared::new(degrees_of_freedom).map_or(f64::NAN, |c| c.pdf(x.max(0.0)))
+}
+
 /// Probability that chi-squared with `degrees_of_freedom` > 0 exceeds `x`.
 pub fn chi_squared_tail(x: f64, degrees_of_freedom: f64) -> f64 {
     ChiSquared::new(degrees_of_freedom).map_or(f64::NAN, |c| c.sf(x.max(0.0)))

@@ -66,18 +66,17 @@ pub fn secant_crossing(
 }
 
 /// Like [`crossing`] for a smooth function that also tells its slope: Newton steps, with a
-/// bisection wherever a step would leave the bracket or gain less than half of it.
+/// bisection wherever a step would leave the bracket, from `start` on.
 ///
 /// `function` returns value and slope. Stops when a step no longer changes the sixteenth digit
-/// of the bracket's first width or of the root.
+/// of the bracket's first width or the last two bits of the root.
 pub fn smooth_crossing(
     function: impl Fn(f64) -> (f64, f64),
     target: f64,
-    low: f64,
-    high: f64,
+    (low, start, high): (f64, f64, f64),
 ) -> f64 {
     let (mut below, mut above) = (low, high);
-    let mut at = 0.5 * (low + high);
+    let mut at = start;
     let finest = 1e-16 * (high - low);
     for _ in 0..200 {
         let (value, slope) = function(at);
@@ -87,12 +86,11 @@ pub fn smooth_crossing(
             above = at;
         }
         let newton = at - (value - target) / slope;
-        let next = if newton > below && newton < above { newton } else { 0.5 * (below + above) };
-        let step = (next - at).abs();
-        at = next;
-        if step <= finest + 4.0 * f64::EPSILON * at.abs() {
-            break;
+        // Before the look at the bracket: at the root, Newton stays on its end.
+        if (newton - at).abs() <= finest + 4.0 * f64::EPSILON * at.abs() {
+            return newton;
         }
+        at = if newton > below && newton < above { newton } else { 0.5 * (below + above) };
     }
     at
 }
@@ -107,17 +105,31 @@ mod tests {
         assert!((root - 2.0_f64.cbrt()).abs() < 1e-15);
     }
 
+    /// From above the root Newton ends on the bracket's upper end; bisecting from there would take
+    /// as many calls as there are bits.
+    #[test]
+    fn newton_ends_where_it_has_arrived() {
+        let calls = std::cell::Cell::new(0);
+        let function = |x: f64| {
+            calls.set(calls.get() + 1);
+            (-(-x).exp_m1(), (-x).exp())
+        };
+        let root = smooth_crossing(function, 0.5, (0.0, 1.0, 1000.0));
+        assert!((root - std::f64::consts::LN_2).abs() < 1e-15 && calls.get() < 12, "{calls:?}");
+    }
+
     #[test]
     fn newton_and_bisection_meet() {
         // Steep on one side and flat on the other, where plain Newton jumps away.
         let value = |x: f64| x.tanh();
         let with_slope = |x: f64| (x.tanh(), 1.0 - x.tanh().powi(2));
         for target in [-0.999_99, -0.3, 0.0, 0.5, 0.999] {
-            let smooth = smooth_crossing(with_slope, target, -40.0, 60.0);
+            let smooth = smooth_crossing(with_slope, target, (-40.0, 10.0, 60.0));
             assert!((smooth - crossing(value, target, -40.0, 60.0)).abs() < 1e-9, "{target}");
         }
         assert!(
-            (smooth_crossing(|x| (x * x * x, 3.0 * x * x), 2.0, 0.0, 4.0) - 2.0_f64.cbrt()).abs()
+            (smooth_crossing(|x| (x * x * x, 3.0 * x * x), 2.0, (0.0, 2.0, 4.0)) - 2.0_f64.cbrt())
+                .abs()
                 < 1e-14
         );
     }

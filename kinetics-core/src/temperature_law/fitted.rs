@@ -9,7 +9,8 @@
 
 use nalgebra::DMatrix;
 
-use super::{Contrast, TemperatureLaw};
+use super::{Contrast, Settings, TemperatureLaw};
+use crate::measurements::Observation;
 use crate::numeric::distributions::{
     normal_cdf, normal_density, normal_quantile, student_t_cdf, student_t_density,
     student_t_quantile,
@@ -103,6 +104,10 @@ pub struct FittedLaw {
     pub weights: Vec<f64>,
     /// Diagonal of the hat matrix, one a run.
     pub leverages: Vec<f64>,
+    /// The runs it was fitted to; none for a known law.
+    pub runs: Vec<Observation>,
+    /// How it was fitted.
+    pub settings: Settings,
 }
 
 impl FittedLaw {
@@ -139,6 +144,8 @@ impl FittedLaw {
             residuals: Vec::new(),
             weights: Vec::new(),
             leverages: Vec::new(),
+            runs: Vec::new(),
+            settings: Settings::default(),
         }
     }
 
@@ -182,14 +189,16 @@ impl FittedLaw {
         if low == high {
             return Some(low);
         }
-        // The mixture's quantile lies between the smallest and largest of its components'.
+        // The mixture's quantile lies between the smallest and largest of its components', and
+        // near their mean.
         let distribution = |value: f64| {
             spread.iter().fold((0.0, 0.0), |(below, density), s| {
                 let (own_below, own_density) = s.distribution(self.kernel, value);
                 (below + own_below, density + own_density)
             })
         };
-        Some(smooth_crossing(distribution, probability, low, high))
+        let start = spread.iter().map(|s| s.weight * (s.location + s.scale * standard)).sum();
+        Some(smooth_crossing(distribution, probability, (low, start, high)))
     }
 
     /// The probability that the target stays below `value`; none where no scatter is known.

@@ -16,6 +16,7 @@
 //! temperature are compared whichever law is chosen. Centring keeps β₁ and β₂ nearly
 //! uncorrelated (Schwaab & Pinto, Chem. Eng. Sci. 2007, 62, 2750).
 
+mod averaged;
 mod diagnostics;
 mod fitted;
 mod inverse;

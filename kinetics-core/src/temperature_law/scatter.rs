@@ -2,11 +2,8 @@
 //!
 //! *From the residuals*: ordinary least squares on ln k, s² = RSS/ν, Student's t.
 //! *As stated*: weights 1/s², covariance (XᵀWX)⁻¹, normal.
-//! *As stated plus run-to-run*: Var(ln kᵢ) = sᵢ² + τ² with τ unknown. Q(τ) = Σ w r² is
-//! chi-squared with ν degrees of freedom at the true τ, which turns every τ into the
-//! probability that the true one is larger (a Q-profile: Viechtbauer, Stat. Med. 2007, 26,
-//! 37; a generalised pivotal quantity: Iyer, Wang & Mathew, J. Am. Stat. Assoc. 2004, 99,
-//! 1060). The normal distributions of a target at each τ are averaged with these masses.
+//! *As stated plus run-to-run*: Var(ln kᵢ) = sᵢ² + τ² with τ unknown, averaged over what the
+//! data say of it (`averaged.rs`).
 
 use nalgebra::DMatrix;
 use serde::{Deserialize, Serialize};
@@ -14,9 +11,8 @@ use thiserror::Error;
 
 use super::{Component, FittedLaw, Kernel, MAX_PARAMETERS, TemperatureLaw};
 use crate::measurements::Observation;
-use crate::numeric::distributions::{chi_squared_cdf, chi_squared_tail};
+use crate::numeric::distributions::chi_squared_tail;
 use crate::numeric::least_squares::{self, LeastSquaresError, LinearFit};
-use crate::numeric::roots::crossing;
 use crate::quantity::Kelvin;
 
 /// Which scatter is asked for.
@@ -114,10 +110,11 @@ pub fn fit(
     observations: &[Observation],
     settings: impl Into<Settings>,
 ) -> Result<FittedLaw, LawError> {
-    let Settings { scatter, thermometer_sd_kelvin } = settings.into();
+    let settings = settings.into();
+    let Settings { scatter, thermometer_sd_kelvin } = settings;
     let problem = Problem::new(law, observations)?;
     let stated = problem.stated_sd(observations);
-    match (scatter, stated) {
+    let fitted = match (scatter, stated) {
         (ScatterChoice::FromResiduals, _) | (ScatterChoice::Automatic, Err(_)) => {
             problem.on_residuals()
         }
@@ -130,7 +127,8 @@ pub fn fit(
                 problem.as_stated_plus_run_to_run(&sd)
             }
         }
-    }
+    }?;
+    Ok(FittedLaw { runs: observations.to_vec(), settings, ..fitted })
 }
 
 /// One law, one set of runs: what every scatter choice shares.
@@ -138,7 +136,7 @@ pub(super) struct Problem {
     pub(super) law: TemperatureLaw,
     pub(super) temperatures: Vec<Kelvin>,
     pub(super) ln_rates: Vec<f64>,
-    degrees_of_freedom: usize,
+    pub(super) degrees_of_freedom: usize,
 }
 
 impl Problem {
@@ -189,7 +187,7 @@ impl Problem {
         })
     }
 
-    fn fitted(&self, reference: Kelvin, weights: Vec<f64>, fit: LinearFit) -> FittedLaw {
+    pub(super) fn fitted(&self, reference: Kelvin, weights: Vec<f64>, fit: LinearFit) -> FittedLaw {
         FittedLaw {
             law: self.law,
             reference,
@@ -204,6 +202,8 @@ impl Problem {
             residuals: fit.residuals,
             weights,
             leverages: fit.leverages,
+            runs: Vec::new(),
+            settings: Settings::default(),
         }
     }
 
@@ -257,99 +257,17 @@ impl Problem {
         }
     }
 
-    fn as_stated_plus_run_to_run(&self, sd: &[f64]) -> Result<FittedLaw, LawError> {
-        let degrees = self.degrees_of_freedom as f64;
-        let provisional = self.reference(&weights(sd, 0.0));
-        let misfit = |reference: Kelvin, tau: f64| -> Result<f64, LawError> {
-            Ok(self.solve(reference, &weights(sd, tau))?.weighted_sum_of_squares)
-        };
-        let smallest = sd.iter().copied().fold(f64::INFINITY, f64::min);
-
-        // The estimate: the τ at which Q meets its expectation ν, or none.
-        let as_stated = misfit(provisional, 0.0)?;
-        let mut tau = 0.0;
-        if as_stated > degrees {
-            let mut above = smallest;
-            while misfit(provisional, above)? > degrees {
-                above *= 2.0;
-            }
-            let falling = |tau: f64| misfit(provisional, tau).map_or(0.0, |q| -q);
-            tau = crossing(falling, -degrees, 0.0, above);
-        }
-        let final_weights = weights(sd, tau);
-        let reference = self.reference(&final_weights);
-        let fit = self.solve(reference, &final_weights)?;
-
-        Ok(FittedLaw {
-            scatter: Scatter::AsStatedPlusRunToRun,
-            components: self.mixture(reference, sd, smallest)?,
-            run_to_run_sd: Some(tau),
-            chi_squared: self.chi_squared(as_stated),
-            ..self.fitted(reference, final_weights, fit)
-        })
-    }
-
-    /// The normal distributions at a ladder of τ, each with the probability that the true τ
-    /// lies about there.
-    fn mixture(
-        &self,
-        reference: Kelvin,
-        sd: &[f64],
-        smallest: f64,
-    ) -> Result<Vec<Component>, LawError> {
-        let degrees = self.degrees_of_freedom as f64;
-        let mut nodes: Vec<(f64, f64, LinearFit)> = Vec::new();
-        let mut tau = 0.0;
-        loop {
-            let fit = self.solve(reference, &weights(sd, tau))?;
-            // The probability that the true scatter is smaller than this τ is 1 − F.
-            let larger = chi_squared_cdf(fit.weighted_sum_of_squares, degrees);
-            nodes.push((tau, larger, fit));
-            if larger < LAST_NODE_PROBABILITY || nodes.len() > MOST_NODES {
-                break;
-            }
-            tau = if tau == 0.0 { FIRST_NODE * smallest } else { tau * NODE_RATIO };
-        }
-
-        let mut masses = vec![0.0; nodes.len()];
-        masses[0] = 1.0 - nodes[0].1;
-        for j in 0..nodes.len() - 1 {
-            let between = nodes[j].1 - nodes[j + 1].1;
-            masses[j] += 0.5 * between;
-            masses[j + 1] += 0.5 * between;
-        }
-        let last = nodes.len() - 1;
-        masses[last] += nodes[last].1;
-        Ok(nodes
-            .iter()
-            .zip(masses)
-            .filter(|(_, mass)| *mass > NEGLIGIBLE_MASS)
-            .map(|((tau, _, fit), mass)| component(mass, *tau, fit))
-            .collect())
-    }
-
-    fn chi_squared(&self, misfit: f64) -> Option<(f64, f64)> {
+    pub(super) fn chi_squared(&self, misfit: f64) -> Option<(f64, f64)> {
         let degrees = self.degrees_of_freedom as f64;
         (degrees > 0.0).then(|| (misfit, chi_squared_tail(misfit, degrees)))
     }
 }
 
-/// First τ above zero, as a share of the smallest stated error.
-const FIRST_NODE: f64 = 0.01;
-/// exp(0.06), the step of the ladder.
-const NODE_RATIO: f64 = 1.061_836_546_545_359_6;
-/// The ladder ends where the true τ is larger with less than this probability.
-const LAST_NODE_PROBABILITY: f64 = 1e-4;
-/// Fourteen decades: a bound for data whose Q never falls.
-const MOST_NODES: usize = 540;
-/// Components lighter than this change no printed digit.
-const NEGLIGIBLE_MASS: f64 = 1e-9;
-
 pub(super) fn weights(sd: &[f64], tau: f64) -> Vec<f64> {
     sd.iter().map(|s| 1.0 / (s * s + tau * tau)).collect()
 }
 
-fn component(weight: f64, tau: f64, fit: &LinearFit) -> Component {
+pub(super) fn component(weight: f64, tau: f64, fit: &LinearFit) -> Component {
     debug_assert!(fit.coefficients.len() <= MAX_PARAMETERS);
     Component {
         weight,
@@ -397,32 +315,6 @@ mod tests {
         let x = 1.0 / 323.15 - 1.0 / 333.15;
         let sd = 0.05 * 2.0_f64.sqrt() / x * crate::constants::MOLAR_GAS_CONSTANT;
         assert!(((high - low) / (2.0 * normal_quantile(0.975) * sd) - 1.0).abs() < 1e-9);
-    }
-
-    /// With equal errors so small that they do not matter, the averaged interval must become
-    /// least squares with t; what remains is the ladder's step.
-    #[test]
-    fn averaged_interval_becomes_student_t() {
-        let t = energy_interval(
-            &fit(TemperatureLaw::Arrhenius, &runs(None), ScatterChoice::Automatic).unwrap(),
-        );
-        let fitted =
-            fit(TemperatureLaw::Arrhenius, &runs(Some(1e-6)), ScatterChoice::Automatic).unwrap();
-        let averaged = energy_interval(&fitted);
-        assert_eq!(fitted.scatter, Scatter::AsStatedPlusRunToRun);
-        assert!((averaged.0 / t.0 - 1.0).abs() < 1e-3, "{averaged:?} {t:?}");
-        assert!((averaged.1 / t.1 - 1.0).abs() < 1e-3, "{averaged:?} {t:?}");
-        let total: f64 = fitted.components.iter().map(|c| c.weight).sum();
-        assert!((total - 1.0).abs() < 1e-6);
-    }
-
-    #[test]
-    fn generous_stated_errors_leave_no_run_to_run_scatter() {
-        let fitted =
-            fit(TemperatureLaw::Arrhenius, &runs(Some(0.5)), ScatterChoice::Automatic).unwrap();
-        assert_eq!(fitted.run_to_run_sd, Some(0.0));
-        let (_, p) = fitted.chi_squared.unwrap();
-        assert!(p > 0.5);
     }
 
     #[test]

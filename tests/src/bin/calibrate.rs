@@ -1,4 +1,4 @@
-//! Writes the table of simulated coverage: `cargo run --release -p checks --bin calibrate`,
+//! Writes the table of simulated coverage: `cargo run --profile bench -p checks --bin calibrate`,
 //! optionally with a number of replicates a cell (10 000 unless told).
 //!
 //! Every cell has its own fixed seed, so that the same build writes the same table.
@@ -65,7 +65,7 @@ fn main() -> std::io::Result<()> {
 fn table(cells: &[(usize, Cell)], results: &[Vec<Outcome>], replicates: usize) -> String {
     let mut text = format!(
         "# Do the intervals cover what they claim?\n\n\
-         Written by `cargo run --release -p checks --bin calibrate`; {replicates} simulated studies \
+         Written by `cargo run --profile bench -p checks --bin calibrate`; {replicates} simulated studies \
          a cell, fixed seeds. Runs evenly from 50 to 80 °C, Ea = 85 kJ/mol, typical stated error 5 % \
          of k. τ is the true run-to-run scatter in units of the typical stated error. Each entry: \
          share of 95 % intervals (or 95 % bounds) that cover the truth, and mean width ÷ that of an \
