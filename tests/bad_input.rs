@@ -10,7 +10,8 @@ use std::fmt::Write;
 use std::fs;
 use std::path::PathBuf;
 
-use kinetics_core::table::{Cell, Column, Content, Hints, Role, Table, read_table};
+use kinetics_core::measurements::{AboutSignals, progress};
+use kinetics_core::table::{Cell, Column, Content, Form, Hints, Role, Table, read_table};
 
 /// Rows of an account; the rest is only counted.
 const ROWS: usize = 8;
@@ -98,7 +99,34 @@ fn account(table: &Table) -> String {
     for (line, note) in table.notes.iter().take(6) {
         let _ = writeln!(account, "note {line}: {note}");
     }
+    if table.form == Some(Form::Progress) {
+        runs(table, &mut account);
+    }
     account
+}
+
+/// What the rows of progress data are taken for.
+fn runs(table: &Table, account: &mut String) {
+    let read = progress(table, &[], AboutSignals::default());
+    for run in &read.runs {
+        let _ = writeln!(
+            account,
+            "run “{}” at {} K from row {}: {} points",
+            run.name,
+            number(run.temperature.0),
+            run.row,
+            run.points.len()
+        );
+    }
+    for problem in read.problems.iter().take(12) {
+        let _ = writeln!(account, "run refused: {problem}");
+    }
+    for left_out in read.left_out.iter().take(12) {
+        let _ = writeln!(account, "row {} left out: {}", left_out.row, left_out.reason);
+    }
+    for choice in &read.choices {
+        let _ = writeln!(account, "choice: {choice}");
+    }
 }
 
 fn described(column: &Column) -> String {

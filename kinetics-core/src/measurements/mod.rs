@@ -1,7 +1,10 @@
 //! What was observed, typed: runs with a temperature and what tells their rate.
 
+mod cells;
+mod progress;
 mod rates;
 
+pub use progress::{AboutSignals, Point, ProgressRun, ProgressRuns, progress};
 pub use rates::{LeftOut, Measurand, Rates, Run, rates};
 
 use crate::quantity::Kelvin;

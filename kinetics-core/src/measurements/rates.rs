@@ -2,20 +2,11 @@
 //! heat rates.
 
 use super::Observation;
+use super::cells::{TemperatureColumn, number, shown, temperature_name, to_sd};
 use crate::problem::{Position, Problem};
 use crate::quantity::Kelvin;
 use crate::table::{Cell, Column, Content, ErrorKind, Role, Row, Table};
 use crate::units::{HeatRateUnit, RateUnit, TemperatureUnit, TimeUnit};
-
-/// What a stated error is multiplied by to be a standard deviation.
-fn to_sd(kind: ErrorKind) -> f64 {
-    // The normal distribution's 0.975 point: stated half-widths rarely say their ν.
-    const NORMAL_975: f64 = 1.959_963_984_540_054;
-    match kind {
-        ErrorKind::Sd | ErrorKind::StandardError => 1.0,
-        ErrorKind::HalfWidth95 => 1.0 / NORMAL_975,
-    }
-}
 
 /// What was measured at each temperature; each tells ln k up to a constant.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
@@ -128,8 +119,7 @@ pub fn rates(
 struct Layout<'t> {
     columns: &'t [Column],
     measurand: Measurand,
-    temperature: usize,
-    temperature_unit: TemperatureUnit,
+    temperature: TemperatureColumn,
     /// Columns of what was measured, each with the column of its error.
     values: Vec<(usize, Option<usize>)>,
     label: Option<usize>,
@@ -142,9 +132,7 @@ impl<'t> Layout<'t> {
         if table.rows.is_empty() {
             return None;
         }
-        let temperature = columns
-            .iter()
-            .position(|c| matches!(c.role, Role::Temperature | Role::InverseTemperature));
+        let temperature = TemperatureColumn::of(columns);
         let values: Vec<(usize, Option<usize>)> = columns
             .iter()
             .enumerate()
@@ -168,16 +156,11 @@ impl<'t> Layout<'t> {
         }
         let temperature = temperature?;
         let first = values.first()?.0;
-        let temperature_unit = columns[temperature]
-            .unit
-            .as_deref()
-            .and_then(|unit| TemperatureUnit::parse(unit).ok())
-            .unwrap_or(TemperatureUnit::Kelvin);
         let unit = columns[first].unit.as_deref().and_then(|unit| RateUnit::parse(unit).ok());
         rates.unit = unit;
-        rates.temperature_unit = Some(temperature_unit);
+        rates.temperature_unit = Some(temperature.unit);
         let label = columns.iter().position(|c| matches!(c.role, Role::Label | Role::Run));
-        Some(Self { columns, measurand, temperature, temperature_unit, values, label, unit })
+        Some(Self { columns, measurand, temperature, values, label, unit })
     }
 
     fn read(&self, row: &Row, error_is: Option<ErrorKind>, rates: &mut Rates) {
@@ -185,7 +168,14 @@ impl<'t> Layout<'t> {
             rates.left_out.push(LeftOut { row: row.line, reason: reason.into() });
             return;
         }
-        let Some(temperature) = self.temperature(row, rates) else { return };
+        let temperature = match self.temperature.kelvin(row, self.columns) {
+            None => return,
+            Some(Err(problem)) => {
+                rates.problems.push(problem);
+                return;
+            }
+            Some(Ok(temperature)) => temperature,
+        };
         for &(column, sd_column) in &self.values {
             let Some((value, in_cell)) = number(row, column) else { continue };
             let ln_rate = match self.ln_rate(column, value) {
@@ -227,30 +217,9 @@ impl<'t> Layout<'t> {
         }
     }
 
-    fn temperature(&self, row: &Row, rates: &mut Rates) -> Option<Kelvin> {
-        let (value, _) = number(row, self.temperature)?;
-        let inverse = self.columns[self.temperature].role == Role::InverseTemperature;
-        let kelvin = if inverse { 1.0 / value } else { self.temperature_unit.to_kelvin(value) };
-        if kelvin > 0.0 && kelvin.is_finite() {
-            return Some(Kelvin(kelvin));
-        }
-        let (found, expected) = if inverse {
-            (shown(value), "1/T above zero")
-        } else {
-            (format!("{} {}", shown(value), self.temperature_unit), "a temperature above 0 K")
-        };
-        rates.problems.push(Problem::new(
-            &self.position(row, self.temperature),
-            &found,
-            expected,
-            "the row is left out",
-        ));
-        None
-    }
-
     /// Why a row that can be read gives no run, if so: it is marked, or its value is none.
     fn reason_to_leave_out(&self, row: &Row) -> Option<&'static str> {
-        let cells = std::iter::once(self.temperature).chain(self.values.iter().map(|v| v.0));
+        let cells = std::iter::once(self.temperature.at).chain(self.values.iter().map(|v| v.0));
         let contents: Vec<&Content> =
             cells.filter_map(|at| row.cells.get(at)).map(|cell| &cell.content).collect();
         if contents.iter().any(|c| matches!(c, Content::Marked { .. })) {
@@ -337,12 +306,7 @@ impl<'t> Layout<'t> {
 
     fn name(&self, row: &Row, temperature: Kelvin) -> String {
         let label = self.label.and_then(|at| row.cells.get(at)).and_then(Cell::label);
-        label.unwrap_or_else(|| {
-            let value = self.temperature_unit.from_kelvin(temperature.0);
-            // Ten digits hide what a conversion of units leaves behind.
-            let rounded = libm::round(value * 1e6) / 1e6;
-            format!("{} {}", shown(rounded), self.temperature_unit)
-        })
+        label.unwrap_or_else(|| temperature_name(temperature, self.temperature.unit))
     }
 
     fn position(&self, row: &Row, column: usize) -> Position<'t> {
@@ -350,16 +314,8 @@ impl<'t> Layout<'t> {
     }
 }
 
-fn number(row: &Row, column: usize) -> Option<(f64, Option<f64>)> {
-    row.cells.get(column)?.number()
-}
-
 fn positive(value: f64) -> Option<f64> {
     (value > 0.0 && value.is_finite()).then_some(value)
-}
-
-fn shown(value: f64) -> String {
-    value.to_string().replace('-', "\u{2212}")
 }
 
 #[cfg(test)]

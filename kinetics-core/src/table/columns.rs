@@ -18,6 +18,17 @@ pub(super) struct Columns {
     pub choices: Vec<Choice>,
 }
 
+impl Columns {
+    /// Whether a line with a temperature alone can be the title of a run.
+    pub fn take_run_titles(&self) -> bool {
+        let says_temperature = |column: &Column| {
+            matches!(column.role, Role::Temperature | Role::InverseTemperature)
+                || column.run_temperature.is_some()
+        };
+        self.form == Some(Form::Progress) && !self.columns.iter().any(says_temperature)
+    }
+}
+
 /// Decides roles, units and multipliers of all columns.
 pub(super) fn decide(
     layout: &Layout,

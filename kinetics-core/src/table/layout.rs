@@ -5,6 +5,7 @@ use super::header;
 use super::sample::{Sample, attempts_number};
 use super::{Choice, Decimal, Hints, Role, Separator};
 use crate::problem::{Position, Problem, shortened};
+use crate::quantity::Quantity;
 use crate::text::lines::{MOST_FIELDS, Record};
 use crate::text::number::looks_numeric;
 
@@ -96,18 +97,16 @@ impl Layout {
         Kind::Note
     }
 
-    /// Whether a line holds nothing but a temperature, in a table that has no column of them.
-    pub fn is_run_title(&self, text: &str, record: &Record) -> bool {
+    /// The temperature that a line holds and nothing else, in a table that has no column of them.
+    pub fn run_title(&self, text: &str, record: &Record) -> Option<Quantity> {
         if record.filled() != 1 || self.columns < 2 || record.line < self.first_line {
-            return false;
+            return None;
         }
-        let alone = record.fields.iter().find(|span| !span.is_empty() && span.len() <= 40);
-        let alone =
-            alone.and_then(|span| text.get(span.clone())).is_some_and(header::is_temperature);
+        let alone = record.fields.iter().find(|span| !span.is_empty() && span.len() <= 40)?;
+        let temperature = header::temperature_alone(text.get(alone.clone())?)?;
         let first = self.headers.first().map_or("", String::as_str);
-        alone
-            && header::read(first, self.units.first().map_or("", String::as_str)).role
-                != Some(Role::Temperature)
+        let role = header::read(first, self.units.first().map_or("", String::as_str)).role;
+        (role != Some(Role::Temperature)).then_some(temperature)
     }
 
     /// Whether a line between rows is the header of another table.
@@ -131,6 +130,9 @@ impl Layout {
         self.headers = vec![String::new(); self.columns];
         self.units = vec![String::new(); self.columns];
         let before = sample.records.get(..first).unwrap_or_default();
+        // The title of the first run may stand between the header and its rows.
+        let titles = before.iter().rev().take_while(|record| sample.is_run_title(record)).count();
+        let (before, titles) = before.split_at(before.len() - titles);
         let mut rest = before;
         if let Some((last, others)) = before.split_last()
             && let Some(cells) = self.header_cells(sample.text, last)
@@ -160,7 +162,7 @@ impl Layout {
                 }
             }
         }
-        for record in rest {
+        for record in rest.iter().chain(titles) {
             self.notes
                 .push((record.line, shortened(sample.text.get(record.span.clone()).unwrap_or(""))));
         }
@@ -187,6 +189,9 @@ impl Layout {
         }
         let filled = cells.iter().filter(|cell| !cell.is_empty()).count();
         let alone = self.columns > 1 && filled == 1;
+        if alone && cells.iter().any(|cell| header::temperature_alone(cell).is_some()) {
+            return None; // the title of a run
+        }
         // A single field above several columns is a title, unless it reads as a header.
         let fits =
             filled > 1 || !alone || cells.iter().any(|cell| header::read(cell, "").unit.is_some());

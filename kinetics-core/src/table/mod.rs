@@ -203,6 +203,9 @@ pub struct Table {
     pub units_line: Option<usize>,
     /// Lines that are neither header nor row, with their text.
     pub notes: Vec<(usize, String)>,
+    /// Lines that hold nothing but the temperature of the run below them; progress data without
+    /// a column of temperatures only.
+    pub run_titles: Vec<(usize, Quantity)>,
     /// Everything decided on the user's behalf.
     pub choices: Vec<Choice>,
 }

@@ -7,6 +7,7 @@ use std::collections::HashMap;
 
 use super::columns::{self, Columns};
 use super::convert::Converter;
+use super::header;
 use super::layout::{Kind, Layout};
 use super::refusals;
 use super::said;
@@ -15,6 +16,7 @@ use super::tally::Lines;
 use super::values::{TimeShape, Values};
 use super::{Cell, Choice, Content, Decimal, Hints, Role, Row, Separator, Table};
 use crate::problem::{Problem, shortened};
+use crate::quantity::Quantity;
 use crate::text::decimal::{Evidence, Votes, evidence};
 use crate::text::lines::{MOST_FIELDS, Record, Records};
 
@@ -32,6 +34,7 @@ pub struct Reader<'text> {
     records: Records,
     rows: Vec<Row>,
     notes: Vec<(usize, String)>,
+    run_titles: Vec<(usize, Quantity)>,
     problems: Vec<Problem>,
     votes: Vec<Votes>,
     /// The first cell of each column that either decimal mark explains.
@@ -72,6 +75,7 @@ impl<'text> Reader<'text> {
             hints,
             records,
             rows: Vec::new(),
+            run_titles: titles_above(&notes),
             notes,
             problems,
             votes,
@@ -121,6 +125,16 @@ impl<'text> Reader<'text> {
     pub fn finish(mut self) -> Table {
         while self.read_rows(10_000) {}
         let Some(mut decided) = self.decided.take() else { return self.empty() };
+        if decided.columns.take_run_titles() {
+            let is_title = |line: usize| self.run_titles.iter().any(|title| title.0 == line);
+            self.notes.retain(|(line, _)| !is_title(*line));
+        } else {
+            for (line, temperature) in std::mem::take(&mut self.run_titles) {
+                if line >= self.layout.first_line {
+                    self.refuse(refusals::run_title(line, &temperature));
+                }
+            }
+        }
         if decided.shapes.contains(&TimeShape::Stamps) {
             self.count_from_start(&decided);
         }
@@ -140,6 +154,7 @@ impl<'text> Reader<'text> {
                 tally.choices(at, column, &mut choices);
             }
         }
+        choices.extend(said::run_titles(&self.run_titles));
         choices.extend(self.note_choice());
         let mut problems = self.problems;
         problems.append(&mut decided.columns.problems);
@@ -163,6 +178,7 @@ impl<'text> Reader<'text> {
             header_lines: self.layout.header_lines,
             units_line: self.layout.units_line,
             notes: self.notes,
+            run_titles: self.run_titles,
             choices,
         }
     }
@@ -178,6 +194,7 @@ impl<'text> Reader<'text> {
             header_lines: Vec::new(),
             units_line: None,
             notes: self.notes,
+            run_titles: Vec::new(),
             choices: Vec::new(),
         }
     }
@@ -196,8 +213,10 @@ impl<'text> Reader<'text> {
             return true;
         }
         self.join_excess(&mut record);
-        if self.layout.is_run_title(&self.text, &record) {
-            self.refuse(refusals::run_title(&self.text, &record));
+        if let Some(temperature) = self.layout.run_title(&self.text, &record) {
+            if self.run_titles.len() < MOST_NOTES {
+                self.run_titles.push((record.line, temperature));
+            }
             return true;
         }
         match self.layout.kind(&self.text, &record) {
@@ -320,6 +339,7 @@ impl<'text> Reader<'text> {
                     Some(Content::Number { value, .. }) => value.to_string(),
                     _ => String::new(),
                 })
+                .chain(self.run_titles.iter().rfind(|t| t.0 < row.line).map(|t| t.0.to_string()))
                 .collect::<Vec<_>>()
                 .join("\t")
         };
@@ -359,6 +379,14 @@ impl<'text> Reader<'text> {
             column: None,
         })
     }
+}
+
+/// Temperatures that stand alone on a line above the first row.
+fn titles_above(notes: &[(usize, String)]) -> Vec<(usize, Quantity)> {
+    notes
+        .iter()
+        .filter_map(|(line, text)| Some((*line, header::temperature_alone(text)?)))
+        .collect()
 }
 
 #[cfg(test)]

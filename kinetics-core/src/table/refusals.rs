@@ -1,6 +1,7 @@
 //! Problems of whole lines.
 
 use crate::problem::{Position, Problem, shortened};
+use crate::quantity::Quantity;
 use crate::text::lines::{LONGEST_LINE, MOST_FIELDS, Record};
 
 fn line_of<'text>(text: &'text str, record: &Record) -> &'text str {
@@ -34,14 +35,14 @@ pub(super) fn other_table(text: &str, record: &Record) -> Problem {
     Problem::said(&Position::row(record.line), line, "one table with one header", &message)
 }
 
-/// A temperature alone on a line, above the rows of its run.
-pub(super) fn run_title(text: &str, record: &Record) -> Problem {
-    let line = shortened(line_of(text, record));
+/// A temperature alone on a line, where the rows below are no run.
+pub(super) fn run_title(line: usize, temperature: &Quantity) -> Problem {
+    let found = temperature.to_string();
     let message = format!(
-        "“{line}” stands alone on its line and is not read as the temperature of the rows below; give them a column of \
-         temperatures, or each temperature a column of its own."
+        "“{found}” stands alone on its line and is not read as the temperature of the rows below; give them a column of \
+         temperatures."
     );
-    Problem::said(&Position::row(record.line), &line, "a column of temperatures", &message)
+    Problem::said(&Position::row(line), &found, "a column of temperatures", &message)
 }
 
 /// A filled field behind the last column.

@@ -1,9 +1,11 @@
 //! Sentences about how a whole column was read.
 
 use super::columns::shown;
+use super::tally::Lines;
 use super::values::TimeShape;
 use super::{Choice, Column, Decimal, Separator};
 use crate::problem::shortened;
+use crate::quantity::Quantity;
 use crate::text::decimal::Votes;
 use crate::text::{Reading, read_cell};
 
@@ -66,6 +68,23 @@ fn read_as(cell: &str, decimal: Decimal) -> String {
         Reading::Number(number) => shown(number.value),
         _ => "no number".to_string(),
     }
+}
+
+/// Temperatures that stand alone on a line.
+pub(super) fn run_titles(titles: &[(usize, Quantity)]) -> Option<Choice> {
+    let mut lines = Lines::default();
+    for (line, temperature) in titles {
+        lines.count(*line, &temperature.to_string());
+    }
+    let named = match lines.count {
+        0 => return None,
+        1 => "names the temperature of the run below it",
+        _ => "name the temperatures of the runs below them",
+    };
+    let rows = lines.rows().replacen("row", "Row", 1);
+    let example = titles.first().map(|title| title.1.to_string())?;
+    let sentence = format!("{rows} {named} (“{example}”).");
+    Some(Choice { sentence, column: None })
 }
 
 /// How times of a clock were read.

@@ -68,7 +68,14 @@ impl<'text> Sample<'text> {
         let numbers = numeric.iter().filter(|number| **number).count();
         let filled = record.filled();
         numbers > 0
+            && !self.is_run_title(record)
             && (numbers * 2 >= filled || (filled == self.usual && (numbers > 1 || self.lenient)))
+    }
+
+    /// A temperature alone on its line, where most lines hold more.
+    pub fn is_run_title(&self, record: &Record) -> bool {
+        let line = || self.text.get(record.span.clone()).unwrap_or("").trim();
+        record.filled() == 1 && self.usual > 1 && header::temperature_alone(line()).is_some()
     }
 
     /// Index of the first record that belongs to the rows.

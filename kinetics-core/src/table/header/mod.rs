@@ -117,9 +117,10 @@ pub(super) fn is_unit_cell(cell: &str) -> bool {
     matches!(bare.as_str(), "" | "-" | "1" | "–") || measure(&bare).is_some()
 }
 
-/// Whether a text is a temperature and no more: `50 °C`, `T = 323 K`.
-pub(super) fn is_temperature(text: &str) -> bool {
-    special::temperature(&cleaned(text)).is_some_and(|(_, rest)| rest.is_empty())
+/// A temperature and nothing beside it: the title of a run.
+pub(super) fn temperature_alone(text: &str) -> Option<Quantity> {
+    let (temperature, rest) = special::temperature(&cleaned(text))?;
+    rest.is_empty().then_some(temperature)
 }
 
 /// One kind of space, minus and multiplication sign; what a wrong character set
