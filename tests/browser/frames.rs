@@ -19,7 +19,7 @@ fn the_page_starts_in_a_sandboxed_frame() {
 }
 
 /// A host page that embeds the file by its text, under a policy of its own.
-fn embedded_by_text(name: &str, policy: &str) -> std::path::PathBuf {
+pub fn embedded_by_text(name: &str, policy: &str) -> std::path::PathBuf {
     let text = std::fs::read_to_string(built_page()).unwrap();
     let text = text.replace('&', "&amp;").replace('"', "&quot;");
     let policy = if policy.is_empty() {

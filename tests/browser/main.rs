@@ -21,5 +21,6 @@ mod page;
 mod frames;
 mod handling;
 mod hostile;
+mod links;
 mod starting;
 mod worksheet;

@@ -82,8 +82,13 @@ impl Page {
 
     /// Steps into the first frame of the page.
     pub async fn enter_frame(&self) {
-        self.element("iframe").await;
-        self.client.enter_frame(0).await.unwrap();
+        self.enter_frame_of(0).await;
+    }
+
+    /// Steps into a frame of the page, counted from 0.
+    pub async fn enter_frame_of(&self, number: u16) {
+        self.element(&format!("iframe:nth-of-type({})", number + 1)).await;
+        self.client.enter_frame(number).await.unwrap();
     }
 
     /// Steps back out of a frame.

@@ -1,4 +1,4 @@
-//! Files: reading those that are chosen or dropped, and offering the study as one.
+//! Files: reading those that are chosen or dropped, and offering texts and pictures as such.
 
 use js_sys::{Array, Uint8Array};
 use wasm_bindgen::closure::Closure;
@@ -44,27 +44,35 @@ fn decoded(bytes: &Uint8Array) -> Option<String> {
     (!text.contains('\0')).then_some(text)
 }
 
-/// Offers a text as a file. A sandboxed frame may drop it without a word.
-pub fn download(name: &str, text: &str) {
+/// Offers a text as a file of a kind such as `text/csv`. A sandboxed frame may drop it without a
+/// word.
+pub fn download(name: &str, kind: &str, text: &str) {
     // Where a browser cannot, the text can still be copied.
-    let _ = try_download(name, text);
+    let _ = try_download(name, kind, text);
 }
 
-fn try_download(name: &str, text: &str) -> Option<()> {
-    let document = web_sys::window()?.document()?;
+fn try_download(name: &str, kind: &str, text: &str) -> Option<()> {
     let options = BlobPropertyBag::new();
-    options.set_type("application/json");
+    options.set_type(kind);
     let parts = Array::of1(&JsValue::from_str(text));
     let blob = Blob::new_with_str_sequence_and_options(&parts, &options).ok()?;
     let address = Url::create_object_url_with_blob(&blob).ok()?;
-    let link = document.create_element("a").ok()?.dyn_into::<HtmlAnchorElement>().ok()?;
-    link.set_href(&address);
-    link.set_download(name);
-    link.click();
+    follow(name, &address);
     // The download has its own hold on the blob once it began.
     let revoke = Closure::once_into_js(move || Url::revoke_object_url(&address));
     web_sys::window()?
         .set_timeout_with_callback_and_timeout_and_arguments_0(revoke.unchecked_ref(), 20_000)
         .ok()?;
     Some(())
+}
+
+/// Offers what an address holds as a file; likewise.
+pub fn follow(name: &str, address: &str) {
+    let document = web_sys::window().and_then(|window| window.document());
+    let link = document.and_then(|document| document.create_element("a").ok());
+    if let Some(link) = link.and_then(|link| link.dyn_into::<HtmlAnchorElement>().ok()) {
+        link.set_href(address);
+        link.set_download(name);
+        link.click();
+    }
 }

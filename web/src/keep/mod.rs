@@ -3,5 +3,6 @@
 
 pub mod clipboard;
 pub mod files;
+pub mod fragment;
 pub mod frame;
 pub mod storage;

@@ -13,6 +13,9 @@ use crate::keep::files;
 
 /// A text from anywhere: a saved study is opened, anything else is read as a table.
 pub fn take_text(sheet: Sheet, text: String) {
+    if sheet.is_locked() {
+        return;
+    }
     if text.trim_start().starts_with('{') {
         match Study::from_json(&text) {
             Ok(study) => {

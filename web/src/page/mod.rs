@@ -21,7 +21,9 @@ mod amount;
 mod arrivals;
 mod blank;
 mod canvas;
+mod carry;
 mod file_button;
+mod link;
 mod menu;
 mod picture_table;
 mod pictures;
@@ -37,31 +39,63 @@ mod measured;
 mod record;
 
 use keeping::Keeping;
+use kinetics_core::study::Study;
 use part::{Part, document, part};
 use sheet::Sheet;
+use timer::after;
 use wasm_bindgen::JsCast;
 use web_sys::{Element, Event, HtmlElement, KeyboardEvent};
 
+use crate::keep::fragment::Fragment;
 use crate::keep::frame;
 
-/// Fills an element with the page, for as long as the document lives.
+/// Fills an element with the page, for as long as the document lives. A study in the page's
+/// address is unpacked first.
 pub fn fill(place: Element) {
-    let (sheet, keeping) = Keeping::begin();
+    let fragment = Fragment::now();
+    match fragment.packed.clone() {
+        Some(packed) => {
+            after(link::study(packed), move |study| build(place, &fragment, Some(study)))
+        }
+        None => build(place, &fragment, None),
+    }
+}
+
+fn build(place: Element, fragment: &Fragment, linked: Option<Result<Study, String>>) {
+    let (linked, complaint) = match linked {
+        Some(Ok(study)) => (Some(study), None),
+        Some(Err(complaint)) => (None, Some(complaint)),
+        None => (None, None),
+    };
+    let (sheet, keeping) = Keeping::begin(linked);
+    sheet.appear(fragment.view, fragment.is_locked);
+    if let Some(complaint) = complaint {
+        sheet.tell(format!("{complaint} The page opened as usual."));
+    }
+    link::listen(sheet, &keeping);
     let surroundings = surroundings::watch();
     if let Some(body) = document().and_then(|document| document.body()) {
         let body = arrivals::listen(Part::of(body.into()), sheet);
         drop(body.on("keydown", move |event| undo_by_key(sheet, event)));
     }
     let busy = move || sheet.is_working().then(|| "true".to_owned());
+    // What is locked can be read and taken along, not changed.
+    let changeable = part("fieldset")
+        .class("slot")
+        .is("disabled", move || sheet.is_locked())
+        .add(measured::section(sheet, surroundings.clone()))
+        .add(found::section(sheet))
+        .add(asked::section(sheet, surroundings));
     let main = part("main")
         .follows("aria-busy", busy)
         .follows("class", move || sheet.is_working().then(|| "working".to_owned()))
-        .add(measured::section(sheet, surroundings.clone()))
-        .add(found::section(sheet))
-        .add(asked::section(sheet, surroundings))
+        .add(changeable)
         .add(record::section(sheet));
     frame::report_height(&place);
-    drop(Part::of(place).add(header::header(sheet, &keeping)).add(main).add(footer()));
+    let page = Part::of(place)
+        .follows("data-view", move || Some(sheet.view().code().to_owned()))
+        .is("data-locked", move || sheet.is_locked());
+    drop(page.add(header::header(sheet, &keeping)).add(main).add(footer()));
 }
 
 fn footer() -> Part {

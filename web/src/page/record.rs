@@ -1,12 +1,10 @@
 //! Record: the account of the study, to print and to copy.
 
-use web_sys::Element;
-
+use super::carry::Carrier;
 use super::once::once;
 use super::part::{Part, button, part};
 use super::sheet::Sheet;
-use super::timer::after;
-use crate::keep::{clipboard, frame};
+use crate::keep::frame;
 
 /// A longer account is shown in part; copying takes the whole.
 const MOST_SHOWN_BYTES: usize = 60_000;
@@ -20,27 +18,22 @@ pub fn section(sheet: Sheet) -> Part {
         .with("role", "region")
         .with("aria-label", "The account as text")
         .says(move || text());
-    let element = account.element::<Element>();
+    let carrier = Carrier::new(sheet, "record-text");
+    let (words, table) = (carrier.clone(), carrier.clone());
     let copy = move || {
-        let element = element.clone();
-        let whole = sheet.evaluation().findings.record.text.clone();
-        after(async move { clipboard::copy(&whole).await }, move |is_copied| {
-            if is_copied {
-                sheet.tell("The record is copied.");
-            } else if let Some(element) = element {
-                clipboard::select(&element);
-                sheet.tell(
-                    "Copying by a button is forbidden here: the record is selected, press Ctrl+C.",
-                );
-            }
-        });
+        let text = sheet.evaluation().findings.record.text.clone();
+        words.copy(text, None, "The record is copied.".to_owned());
+    };
+    let copy_html = move || {
+        let html = sheet.evaluation().findings.record.html.clone();
+        table.copy(html.clone(), Some(html), "The record is copied as a table.".to_owned());
     };
     let print = move || {
         frame::print();
         if frame::is_embedded() {
             sheet.tell(
                 "If no print window appears, the page around this frame forbids it: copy the \
-                 record as text.",
+                 record, or print the page at its own address.",
             );
         }
     };
@@ -51,9 +44,11 @@ pub fn section(sheet: Sheet) -> Part {
         .add(
             part("div")
                 .class("actions")
+                .add(button("Print", print))
                 .add(button("Copy as text", copy))
-                .add(button("Print", print)),
+                .add(button("Copy as HTML table", copy_html)),
         )
+        .add(carrier.panel())
 }
 
 fn shown(text: &str) -> String {

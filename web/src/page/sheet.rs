@@ -14,6 +14,7 @@ use super::pictures::{Curve, curve, temperature_range};
 use super::reading::Reading;
 use super::timer::later;
 use crate::figure::temperature_colour::TemperatureRange;
+use crate::keep::fragment::View;
 
 /// A longer table is evaluated after a pause, so that typing on is not held up.
 const MOST_ROWS_AT_ONCE: usize = 2_000;
@@ -33,6 +34,8 @@ struct Content {
     studies: Cell<u64>,
     is_working: Cell<bool>,
     said: RefCell<String>,
+    /// What is to be seen, and whether nothing can be changed.
+    appearance: Cell<(View, bool)>,
 }
 
 /// A study with the table of exactly its text, and what follows from them.
@@ -64,6 +67,7 @@ impl Sheet {
             studies: Cell::default(),
             is_working: Cell::default(),
             said: RefCell::default(),
+            appearance: Cell::default(),
         })))
     }
 
@@ -125,6 +129,22 @@ impl Sheet {
         self.study().display.decimal.map_or('.', |decimal| decimal.mark())
     }
 
+    /// What is to be seen.
+    pub fn view(self) -> View {
+        self.0.appearance.get().0
+    }
+
+    /// Whether the reader may only look.
+    pub fn is_locked(self) -> bool {
+        self.0.appearance.get().1
+    }
+
+    /// Shows this much, to be changed or not.
+    pub fn appear(self, view: View, is_locked: bool) {
+        self.0.appearance.set((view, is_locked));
+        changed();
+    }
+
     /// Whether the study is the invented example.
     pub fn shows_example(self) -> bool {
         example::is_shown(&self.study())
@@ -139,6 +159,9 @@ impl Sheet {
     /// Changes the study. Changes of the same `step`, such as letters typed into one place, are
     /// undone at once; an empty `step` stands alone.
     pub fn change(self, step: &str, edit: impl FnOnce(&mut Study)) {
+        if self.is_locked() {
+            return;
+        }
         let before = self.latest();
         let mut after = Study::clone(&before);
         edit(&mut after);
@@ -162,6 +185,9 @@ impl Sheet {
 
     /// Takes the last change back.
     pub fn undo(self) {
+        if self.is_locked() {
+            return;
+        }
         let now = self.latest();
         let before = self.0.history.borrow_mut().undo(now);
         if let Some(study) = before {
@@ -171,6 +197,9 @@ impl Sheet {
 
     /// Makes the last undone change again.
     pub fn redo(self) {
+        if self.is_locked() {
+            return;
+        }
         let now = self.latest();
         let after = self.0.history.borrow_mut().redo(now);
         if let Some(study) = after {

@@ -77,10 +77,9 @@ pub fn figure(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
         .on("pointermove", with(Hand::follow))
         .on("pointerup", with(Hand::release))
         .on("pointercancel", with(Hand::release));
-    let caption = part("figcaption").text(
-        "Drag a flag, or type into its blank. Line: solid inside the data, dashed near, dotted \
-         far, hatched beyond.",
-    );
+    let caption = part("figcaption")
+        .add(part("span").class("changes").text("Drag a flag, or type into its blank. "))
+        .text("Line: solid inside the data, dashed near, dotted far, hatched beyond.");
     part("figure").class("picture").add(canvas).add(caption).add(picture_table(sheet, drawing))
 }
 
@@ -141,6 +140,9 @@ impl Hand {
 /// The flag under a pixel, if its question has one blank for it to move.
 fn drag_at(sheet: Sheet, map: &TimeMap, size: (f64, f64), x: f64, y: f64) -> Option<Drag> {
     let flag = map.flags.get(map.flag_at(size, x, y)?)?;
+    if sheet.is_locked() {
+        return None;
+    }
     let question = flag.number.checked_sub(1)?;
     let study = sheet.study();
     let asked = study.asked.get(question)?;
