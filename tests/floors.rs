@@ -28,7 +28,7 @@ const FLOORS: [&[&str]; 8] = [
 ];
 
 /// Neighbours on a floor: the second may import the first.
-const ARROWS: [(&str, &str); 17] = [
+const ARROWS: [(&str, &str); 18] = [
     ("problem", "units"),
     ("problem", "quantity"),
     ("units", "quantity"),
@@ -44,6 +44,7 @@ const ARROWS: [(&str, &str); 17] = [
     ("grounds", "curve"),
     ("grounds", "remark"),
     ("answer", "question"),
+    ("next_measurement", "question"),
     ("answer", "curve"),
     ("answer", "remark"),
 ];

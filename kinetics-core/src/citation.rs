@@ -44,6 +44,9 @@ citations! {
         "confidence and prediction intervals of a line, F test of a further term";
     /// Influence.
     INFLUENCE = "R. D. Cook", 1977, "Technometrics 19, 15", "the influence of single runs";
+    /// Where to measure next.
+    SEQUENTIAL_DESIGN = "V. G. Dovì, A. P. Reverberi and L. Acevedo-Duarte", 1994,
+        "Ind. Eng. Chem. Res. 33, 62", "the next measurement that narrows an answer most";
     /// Constants.
     CONSTANTS = "CODATA", 2022, "recommended values, exact since the 2019 SI", "R, k_B and h";
 }

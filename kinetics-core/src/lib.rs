@@ -35,6 +35,7 @@ pub mod temperature_law;
 pub mod answer;
 pub mod curve;
 pub mod grounds;
+pub mod next_measurement;
 pub mod question;
 pub mod remark;
 

@@ -125,6 +125,31 @@ test("values are those of the law behind the data", () => {
   assert.ok(stand.low < stand.value);
 });
 
+test("the next measurement is planned for another question", () => {
+  const range = { lowest: celsius(40), highest: celsius(60) };
+  const next = (more) => ({ question: "next-measurement", for: 0, ...range, ...more });
+  const [, free, patient, none] = evaluate(
+    study({
+      asked: [
+        ASKED[0],
+        next(),
+        next({ relative_error: percent(5), within: { value: 5, unit: "d" } }),
+        next({ for: 9 }),
+      ],
+    }),
+  ).answers;
+  assert.equal(free.unit, "K");
+  close(free.value, 313.15);
+  const { now, after, curve } = free.detail;
+  assert.ok(1 < after && after < now);
+  assert.equal(curve.length, 21);
+  close(curve[0].temperature, 313.15);
+  close(curve[0].duration, -Math.log(0.9) / rate(313.15));
+  close(curve[0].after, after);
+  assert.ok(patient.value > free.value && patient.detail.duration < 5 * 86400);
+  assert.match(none.refused.reason, /no question 10/);
+});
+
 test("a question that cannot be answered is refused in words", () => {
   const { refused, value, low, high } = evaluate(study({ asked: ASKED })).answers[5];
   assert.deepEqual([value, low, high], [null, null, null]);

@@ -1,6 +1,6 @@
 //! How long it may stand, and how long it needs: times of which one side counts.
 
-use super::{Blank, BlankKind, Blanks, Question, ranges};
+use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{
     Answer, Basis, Refusal, Side, WhyNoInterval, Wording, no_bound, sentence, whom,
 };
@@ -12,28 +12,40 @@ pub(super) const LONGEST_STAND: Question = Question {
     code: "longest-stand",
     sentence: "How long may it stand at [temperature] and keep [keep]?",
     blanks: &[
-        Blank { name: "temperature", kind: BlankKind::Temperature, example: "40 °C" },
-        Blank { name: "keep", kind: BlankKind::Part, example: "98 %" },
+        Blank {
+            name: "temperature",
+            kind: BlankKind::Temperature,
+            example: "40 °C",
+            optional: false,
+        },
+        Blank { name: "keep", kind: BlankKind::Part, example: "98 %", optional: false },
     ],
     answer: |blanks, basis| {
         let time = Allowance::of(blanks, basis, 1.0 - blanks.part("keep", basis)?)?;
         time.answer(LONGEST_STAND.code, Side::Lower, basis)
     },
     range: ranges::time,
+    aim: aims::bound,
 };
 
 pub(super) const COMPLETION_TIME: Question = Question {
     code: "completion-time",
     sentence: "How long at [temperature] to be sure that [gone] has reacted?",
     blanks: &[
-        Blank { name: "temperature", kind: BlankKind::Temperature, example: "70 °C" },
-        Blank { name: "gone", kind: BlankKind::Part, example: "99 %" },
+        Blank {
+            name: "temperature",
+            kind: BlankKind::Temperature,
+            example: "70 °C",
+            optional: false,
+        },
+        Blank { name: "gone", kind: BlankKind::Part, example: "99 %", optional: false },
     ],
     answer: |blanks, basis| {
         let time = Allowance::of(blanks, basis, blanks.part("gone", basis)?)?;
         time.answer(COMPLETION_TIME.code, Side::Upper, basis)
     },
     range: ranges::time,
+    aim: aims::bound,
 };
 
 /// A time to an extent, before one of its sides is chosen.

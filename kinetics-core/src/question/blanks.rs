@@ -2,7 +2,8 @@
 
 use serde_json::{Map, Value};
 
-use super::{MOST_ROWS, Question, quantity_value};
+use super::subject::Subject;
+use super::{Blank, MOST_ROWS, Question};
 use crate::answer::{Basis, Refusal, capitalised};
 use crate::problem::shortened;
 use crate::quantity::{Kelvin, Quantity, Seconds};
@@ -17,6 +18,8 @@ pub enum BlankKind {
     Part,
     /// A time.
     Time,
+    /// Another question of the study: counted from 1 in sentences, from 0 in the study.
+    Question,
 }
 
 impl BlankKind {
@@ -26,13 +29,14 @@ impl BlankKind {
             Self::Temperature => "a temperature such as 25 °C, or several: 5, 25, 40 °C",
             Self::Part => "a part such as 5 %, or a concentration such as 0.1 mol/L",
             Self::Time => "a time such as 8 h, or several: 1, 7, 30 d",
+            Self::Question => "the number of a question, such as 1",
         }
     }
 
     fn default_unit(self) -> Option<&'static str> {
         match self {
             Self::Part => Some("%"),
-            Self::Temperature | Self::Time => None,
+            Self::Temperature | Self::Time | Self::Question => None,
         }
     }
 
@@ -41,27 +45,83 @@ impl BlankKind {
             Self::Temperature => quantity.kelvin().map(drop),
             Self::Part => quantity.concentration().map(drop),
             Self::Time => quantity.seconds().map(drop),
+            Self::Question => {
+                let known = question_number(quantity.value).is_some() && quantity.unit.is_empty();
+                return if known { Ok(()) } else { Err(complaint(quantity, self)) };
+            }
         };
         outcome.map_err(|error| error.to_string())
     }
+
+    /// What a study holds in a blank of this kind, one entry or a list, as quantities; a
+    /// question's number counts from 1. What does not fit is left out.
+    pub fn quantities(self, filled: &Value) -> Vec<Quantity> {
+        entries(filled).0.iter().filter_map(|entry| self.quantity(entry)).collect()
+    }
+
+    /// What a study holds for one quantity in a blank of this kind.
+    pub fn value(self, quantity: &Quantity) -> Value {
+        match self {
+            Self::Question => {
+                question_number(quantity.value).map_or(Value::Null, |n| (n - 1).into())
+            }
+            _ => serde_json::to_value(quantity).unwrap_or(Value::Null),
+        }
+    }
+
+    fn quantity(self, entry: &Value) -> Option<Quantity> {
+        match self {
+            Self::Question => {
+                let from_zero = entry.as_u64().filter(|index| *index < MOST_QUESTIONS)?;
+                Some(Quantity::new((from_zero + 1) as f64, ""))
+            }
+            _ => serde_json::from_value(entry.clone()).ok(),
+        }
+    }
+}
+
+/// Numbers of questions lie below this, so that they are exact as f64.
+const MOST_QUESTIONS: u64 = 1 << 32;
+
+/// A number of a question, from 1.
+fn question_number(value: f64) -> Option<u64> {
+    let whole = value >= 1.0 && value <= MOST_QUESTIONS as f64 && value.fract() == 0.0;
+    whole.then_some(value as u64)
+}
+
+/// The entries of a blank, and whether it holds a list.
+fn entries(filled: &Value) -> (&[Value], bool) {
+    match filled {
+        Value::Array(several) => (several.as_slice(), true),
+        single => (std::slice::from_ref(single), false),
+    }
+}
+
+fn complaint(found: impl std::fmt::Display, kind: BlankKind) -> String {
+    let found = found.to_string();
+    format!("Found “{}”, expected {}.", shortened(found.trim()), kind.expected())
 }
 
 /// Filled blanks of one question, one value each.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Blanks {
-    values: Vec<(&'static str, Quantity)>,
+    values: Vec<(&'static Blank, Quantity)>,
     /// Whether a blank held a list, so that the answer is a table.
     pub from_list: bool,
     /// Whose bound a one-sided question speaks of.
     pub bound: Target,
+    /// The other question that this one is about, where it has such a blank.
+    pub(super) subject: Option<Box<Subject>>,
 }
 
 impl Blanks {
+    /// What stands in a blank; none where it is left empty.
+    pub(super) fn filled(&self, name: &str) -> Option<&Quantity> {
+        self.values.iter().find(|(blank, _)| blank.name == name).map(|(_, quantity)| quantity)
+    }
+
     fn quantity(&self, name: &str) -> Result<&Quantity, Refusal> {
-        self.values
-            .iter()
-            .find(|(n, _)| *n == name)
-            .map(|(_, q)| q)
+        self.filled(name)
             .ok_or_else(|| Refusal::new(format!("The blank “{name}” is empty."), "Fill it in."))
     }
 
@@ -118,7 +178,27 @@ impl Blanks {
 
     /// The blanks as a study states them.
     pub fn to_map(&self) -> Map<String, Value> {
-        self.values.iter().map(|(name, q)| ((*name).into(), quantity_value(q))).collect()
+        let entry = |(blank, quantity): &(&Blank, Quantity)| {
+            (blank.name.into(), blank.kind.value(quantity))
+        };
+        self.values.iter().map(entry).collect()
+    }
+
+    /// These blanks with the other question that they name.
+    pub(super) fn about(self, subject: Subject) -> Self {
+        Self { subject: Some(Box::new(subject)), ..self }
+    }
+
+    /// The number from 1 of the question that stands in a blank.
+    ///
+    /// # Errors
+    /// A missing blank, or no such number.
+    pub(super) fn question(&self, name: &str) -> Result<usize, Refusal> {
+        let number = question_number(self.quantity(name)?.value);
+        number.and_then(|number| usize::try_from(number).ok()).ok_or_else(|| {
+            let expected = BlankKind::Question.expected();
+            Refusal::new("The blank holds no question.", format!("Write {expected}."))
+        })
     }
 }
 
@@ -145,18 +225,20 @@ pub(super) fn read(
     asked: &Map<String, Value>,
 ) -> Result<Vec<Blanks>, Refusal> {
     let bound = bound(asked)?;
-    let mut combinations = vec![Blanks { values: Vec::new(), from_list: false, bound }];
+    let mut combinations =
+        vec![Blanks { values: Vec::new(), from_list: false, bound, subject: None }];
     for blank in question.blanks {
-        let given = asked.get(blank.name).filter(|v| !v.is_null()).ok_or_else(|| {
-            Refusal::new(
-                format!("The blank “{}” is empty.", blank.name),
-                format!("Write {}.", blank.kind.expected()),
-            )
-        })?;
-        let (entries, is_list) = match given {
-            Value::Array(several) => (several.as_slice(), true),
-            single => (std::slice::from_ref(single), false),
+        let given = match asked.get(blank.name).filter(|v| !v.is_null()) {
+            Some(given) => given,
+            None if blank.optional => continue,
+            None => {
+                return Err(Refusal::new(
+                    format!("The blank “{}” is empty.", blank.name),
+                    format!("Write {}.", blank.kind.expected()),
+                ));
+            }
         };
+        let (entries, is_list) = entries(given);
         if combinations.len().saturating_mul(entries.len()) > MOST_ROWS {
             return Err(Refusal::new(
                 format!("The lists make more than {MOST_ROWS} combinations."),
@@ -166,7 +248,7 @@ pub(super) fn read(
         let quantities = entries
             .iter()
             .map(|entry| {
-                serde_json::from_value::<Quantity>(entry.clone()).map_err(|_| {
+                blank.kind.quantity(entry).ok_or_else(|| {
                     Refusal::new(
                         format!(
                             "The blank “{}” holds {}.",
@@ -183,7 +265,7 @@ pub(super) fn read(
             .flat_map(|so_far| {
                 quantities.iter().map(|quantity| {
                     let mut next = so_far.clone();
-                    next.values.push((blank.name, quantity.clone()));
+                    next.values.push((blank, quantity.clone()));
                     next.from_list |= is_list;
                     next
                 })
@@ -203,8 +285,7 @@ pub(super) fn read(
 /// # Errors
 /// What was found and what is expected, as a sentence.
 pub fn parse_blank(text: &str, kind: BlankKind, decimal: char) -> Result<Vec<Quantity>, String> {
-    let complaint =
-        |found: &str| format!("Found “{}”, expected {}.", shortened(found.trim()), kind.expected());
+    let complaint = |found: &str| complaint(found, kind);
     let mut entries: Vec<(f64, String)> = Vec::new();
     for piece in split_list(text, decimal) {
         let (number, unit) = split_number(piece, decimal).ok_or_else(|| complaint(piece))?;
@@ -224,7 +305,7 @@ pub fn parse_blank(text: &str, kind: BlankKind, decimal: char) -> Result<Vec<Qua
         return Err(complaint(text));
     }
     for quantity in &quantities {
-        if quantity.unit.is_empty() {
+        if quantity.unit.is_empty() && kind != BlankKind::Question {
             return Err(complaint(text));
         }
         kind.check(quantity)?;
@@ -293,6 +374,19 @@ mod tests {
         assert_eq!(read("\u{2212}18 °C", BlankKind::Temperature, '.'), [celsius(-18.0)]);
         assert_eq!(read("1e-3 h", BlankKind::Time, '.'), [(1e-3, "h".to_owned())]);
         assert_eq!(read("5", BlankKind::Part, '.'), [(5.0, "%".to_owned())]);
+    }
+
+    #[test]
+    fn questions_count_from_one_in_sentences_and_from_zero_in_studies() {
+        let kind = BlankKind::Question;
+        let several = parse_blank("1, 3", kind, '.').unwrap();
+        let kept: Vec<Value> = several.iter().map(|q| kind.value(q)).collect();
+        assert_eq!(kept, [0, 2]);
+        assert_eq!(kind.quantities(&Value::Array(kept)), several);
+        assert!(kind.quantities(&serde_json::json!([-1, 0.5, "1", null])).is_empty());
+        for text in ["0", "1.5", "-1", "1 h", "first", "1e300"] {
+            assert!(parse_blank(text, kind, '.').is_err(), "{text}");
+        }
     }
 
     #[test]

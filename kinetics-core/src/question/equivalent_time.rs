@@ -1,6 +1,6 @@
 //! What time at one temperature does the same as a time at another: t₁ = t₂·k(T₂)/k(T₁).
 
-use super::{Blank, BlankKind, Blanks, Question, ranges};
+use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::quantity::Seconds;
 use crate::wording::{Figures, duration, duration_with_range};
@@ -9,12 +9,23 @@ pub(super) const QUESTION: Question = Question {
     code: "equivalent-time",
     sentence: "What time at [temperature] equals [time] at [other_temperature]?",
     blanks: &[
-        Blank { name: "temperature", kind: BlankKind::Temperature, example: "55 °C" },
-        Blank { name: "time", kind: BlankKind::Time, example: "2 yr" },
-        Blank { name: "other_temperature", kind: BlankKind::Temperature, example: "25 °C" },
+        Blank {
+            name: "temperature",
+            kind: BlankKind::Temperature,
+            example: "55 °C",
+            optional: false,
+        },
+        Blank { name: "time", kind: BlankKind::Time, example: "2 yr", optional: false },
+        Blank {
+            name: "other_temperature",
+            kind: BlankKind::Temperature,
+            example: "25 °C",
+            optional: false,
+        },
     ],
     answer,
     range: ranges::time,
+    aim: |blanks, basis| aims::ratio(blanks, basis, "other_temperature", "temperature"),
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {

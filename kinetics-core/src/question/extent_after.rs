@@ -1,6 +1,6 @@
 //! How much is gone after a time: X from θ = k(T)·t.
 
-use super::{Blank, BlankKind, Blanks, Question, ranges};
+use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::wording::{Figures, significant};
 
@@ -8,11 +8,17 @@ pub(super) const QUESTION: Question = Question {
     code: "extent-after",
     sentence: "After [time] at [temperature], how much is gone?",
     blanks: &[
-        Blank { name: "time", kind: BlankKind::Time, example: "24 h" },
-        Blank { name: "temperature", kind: BlankKind::Temperature, example: "40 °C" },
+        Blank { name: "time", kind: BlankKind::Time, example: "24 h", optional: false },
+        Blank {
+            name: "temperature",
+            kind: BlankKind::Temperature,
+            example: "40 °C",
+            optional: false,
+        },
     ],
     answer,
     range: ranges::percent,
+    aim: aims::rate,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {

@@ -3,22 +3,26 @@
 //! A question is one file here and one line in [`QUESTIONS`]; page, study file and record take
 //! everything from there.
 
+mod aims;
 mod allowance;
 mod blanks;
 mod equivalent_time;
 mod extent_after;
+mod next_measurement;
 mod ranges;
 mod rate_at;
 mod speed_up;
+mod subject;
 mod temperature_for;
 mod time_to_extent;
 
 pub use blanks::{BlankKind, Blanks, parse_blank};
+pub use subject::{exchange, remove};
 
 use serde_json::{Map, Value};
 
 use crate::answer::{Answer, Basis, Refusal, Side, sentence};
-use crate::quantity::Quantity;
+use crate::next_measurement::Aim;
 use crate::temperature_law::FittedLaw;
 
 /// A kind of question.
@@ -34,10 +38,12 @@ pub struct Question {
     pub answer: fn(&Blanks, &Basis) -> Result<Answer, Refusal>,
     /// Two of its numbers as a range in words: "32 to 67 h".
     pub range: fn(f64, f64, &Basis) -> String,
+    /// What a further measurement would narrow for it.
+    pub aim: fn(&Blanks, &Basis) -> Result<Aim, Refusal>,
 }
 
 /// A gap in a question's sentence.
-#[derive(Debug, Clone, Copy)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub struct Blank {
     /// Its key in a study.
     pub name: &'static str,
@@ -45,10 +51,12 @@ pub struct Blank {
     pub kind: BlankKind,
     /// What a new question starts with, as one would type it.
     pub example: &'static str,
+    /// Whether it may be left empty.
+    pub optional: bool,
 }
 
 /// Every question, in the order of the menu.
-pub const QUESTIONS: [Question; 9] = [
+pub const QUESTIONS: [Question; 10] = [
     time_to_extent::QUESTION,
     allowance::LONGEST_STAND,
     allowance::COMPLETION_TIME,
@@ -58,6 +66,7 @@ pub const QUESTIONS: [Question; 9] = [
     speed_up::QUESTION,
     equivalent_time::QUESTION,
     rate_at::QUESTION,
+    next_measurement::QUESTION,
 ];
 
 /// More combinations of lists than this are refused.
@@ -94,38 +103,55 @@ pub enum Piece {
     Blank(&'static Blank),
 }
 
-/// Answers one entry of a study's `asked`; a missing basis refuses with its reason.
+/// Answers one entry of a study's `asked` by itself; a missing basis refuses with its reason.
 pub fn answer(asked: &Map<String, Value>, basis: Result<&Basis, &Refusal>) -> Answer {
-    let code = asked.get("question").and_then(Value::as_str).unwrap_or_default();
+    answer_among(std::slice::from_ref(asked), 0, basis)
+}
+
+/// Answers the entry at an index of a study's `asked`, which may be about another one of them.
+pub fn answer_among(
+    asked: &[Map<String, Value>],
+    at: usize,
+    basis: Result<&Basis, &Refusal>,
+) -> Answer {
+    let Some(own) = asked.get(at) else {
+        return Answer::refused("", Refusal::new("Nothing is asked.", "Ask a question."));
+    };
+    let code = own.get("question").and_then(Value::as_str).unwrap_or_default();
     let Some(question) = Question::of_code(code) else {
         let known: Vec<&str> = QUESTIONS.iter().map(|q| q.code).collect();
         let reason = format!("“{}” is no question known here.", crate::problem::shortened(code));
         let needs = format!("Known questions are: {}.", known.join(", "));
         return Answer::refused(code, Refusal::new(reason, needs));
     };
-    let outcome = blanks::read(question, asked).and_then(|combinations| {
+    let outcome = blanks::read(question, own).and_then(|combinations| {
         let basis = basis.map_err(Clone::clone)?;
-        Ok(answer_each(question, &combinations, basis))
+        Ok(answer_each(question, combinations, asked, basis))
     });
     outcome.unwrap_or_else(|refusal| Answer::refused(code, refusal))
 }
 
-fn answer_each(question: &Question, combinations: &[Blanks], basis: &Basis) -> Answer {
-    let one = |blanks: &Blanks| {
-        answer_one(question, blanks, basis)
+fn answer_each(
+    question: &Question,
+    combinations: Vec<Blanks>,
+    asked: &[Map<String, Value>],
+    basis: &Basis,
+) -> Answer {
+    let one = |blanks: Blanks| {
+        subject::found(question, blanks, asked)
+            .and_then(|blanks| answer_one(question, &blanks, basis))
             .unwrap_or_else(|refusal| Answer::refused(question.code, refusal))
     };
-    match combinations {
-        [single] if !single.from_list => one(single),
-        several => {
-            let rows: Vec<Answer> = several
-                .iter()
-                .map(|blanks| Answer { blanks: Some(blanks.to_map()), ..one(blanks) })
-                .collect();
-            let sentence = format!("{} answers, one for each combination.", rows.len());
-            Answer { sentence, rows: Some(rows), ..Answer::empty(question.code) }
-        }
+    if combinations.iter().any(|blanks| blanks.from_list) {
+        let rows: Vec<Answer> = combinations
+            .into_iter()
+            .map(|blanks| Answer { blanks: Some(blanks.to_map()), ..one(blanks) })
+            .collect();
+        let sentence = format!("{} answers, one for each combination.", rows.len());
+        return Answer { sentence, rows: Some(rows), ..Answer::empty(question.code) };
     }
+    let single = combinations.into_iter().next().map(one);
+    single.unwrap_or_else(|| Answer::empty(question.code))
 }
 
 fn answer_one(question: &Question, blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
@@ -135,6 +161,11 @@ fn answer_one(question: &Question, blanks: &Blanks, basis: &Basis) -> Result<Ans
             "The numbers become too large or too small to compute with.",
             "Ask for a temperature nearer to the measured ones.",
         ));
+    }
+    // A recommendation has no side, and no range under other laws.
+    if answer.side.is_none() {
+        answer.sentence = sentence(&answer.wording, Side::Two);
+        return Ok(answer);
     }
     if let Some((low, high)) = under(question, blanks, basis, &basis.rivals) {
         (answer.rival_low, answer.rival_high) = (Some(low), Some(high));
@@ -176,14 +207,10 @@ pub fn example(question: &Question) -> Map<String, Value> {
     asked.insert("question".into(), question.code.into());
     for blank in question.blanks {
         if let Ok([quantity]) = parse_blank(blank.example, blank.kind, '.').as_deref() {
-            asked.insert(blank.name.into(), quantity_value(quantity));
+            asked.insert(blank.name.into(), blank.kind.value(quantity));
         }
     }
     asked
-}
-
-fn quantity_value(quantity: &Quantity) -> Value {
-    serde_json::to_value(quantity).unwrap_or(Value::Null)
 }
 
 #[cfg(test)]

@@ -1,6 +1,6 @@
 //! How fast it is at a temperature: k, and what follows from it.
 
-use super::{Blank, BlankKind, Blanks, Question, ranges};
+use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::quantity::{Kelvin, Seconds};
@@ -9,9 +9,15 @@ use crate::wording::{Figures, duration};
 pub(super) const QUESTION: Question = Question {
     code: "rate-at",
     sentence: "How fast is it at [temperature]?",
-    blanks: &[Blank { name: "temperature", kind: BlankKind::Temperature, example: "30 °C" }],
+    blanks: &[Blank {
+        name: "temperature",
+        kind: BlankKind::Temperature,
+        example: "30 °C",
+        optional: false,
+    }],
     answer,
     range: ranges::rate,
+    aim: aims::rate,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {

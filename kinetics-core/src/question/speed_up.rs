@@ -1,6 +1,6 @@
 //! How much faster it is at one temperature than at another: k(T₂)/k(T₁).
 
-use super::{Blank, BlankKind, Blanks, Question, ranges};
+use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::wording::{Figures, significant};
 
@@ -8,11 +8,12 @@ pub(super) const QUESTION: Question = Question {
     code: "speed-up",
     sentence: "How much faster is [to] than [from]?",
     blanks: &[
-        Blank { name: "to", kind: BlankKind::Temperature, example: "60 °C" },
-        Blank { name: "from", kind: BlankKind::Temperature, example: "25 °C" },
+        Blank { name: "to", kind: BlankKind::Temperature, example: "60 °C", optional: false },
+        Blank { name: "from", kind: BlankKind::Temperature, example: "25 °C", optional: false },
     ],
     answer,
     range: ranges::ratio,
+    aim: |blanks, basis| aims::ratio(blanks, basis, "to", "from"),
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {

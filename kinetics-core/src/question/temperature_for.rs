@@ -5,6 +5,8 @@ use super::{Blank, BlankKind, Blanks, Question, ranges};
 use crate::answer::{
     Answer, Basis, Refusal, Side, WhyNoInterval, Wording, no_bound, sentence, whom,
 };
+use crate::constants::MOLAR_GAS_CONSTANT;
+use crate::next_measurement::Aim;
 use crate::quantity::Kelvin;
 use crate::temperature_law::{Target, TemperatureSet};
 use crate::wording::{Display, Rounding};
@@ -13,22 +15,30 @@ pub(super) const TEMPERATURE_FOR: Question = Question {
     code: "temperature-for",
     sentence: "What temperature reaches [gone] within [time]?",
     blanks: &[
-        Blank { name: "gone", kind: BlankKind::Part, example: "99 %" },
-        Blank { name: "time", kind: BlankKind::Time, example: "8 h" },
+        Blank { name: "gone", kind: BlankKind::Part, example: "99 %", optional: false },
+        Blank { name: "time", kind: BlankKind::Time, example: "8 h", optional: false },
     ],
     answer: temperature_for,
     range: ranges::temperature,
+    aim: |blanks, basis| {
+        let (at, scale) = aimed_at(blanks, basis, blanks.part("gone", basis)?)?;
+        Ok(Aim { kelvins: Some(scale), ..Aim::two_sided(at, basis.level) })
+    },
 };
 
 pub(super) const WARMEST_STORAGE: Question = Question {
     code: "warmest-storage",
     sentence: "How warm may it be kept and still hold [keep] for [time]?",
     blanks: &[
-        Blank { name: "keep", kind: BlankKind::Part, example: "98 %" },
-        Blank { name: "time", kind: BlankKind::Time, example: "2 yr" },
+        Blank { name: "keep", kind: BlankKind::Part, example: "98 %", optional: false },
+        Blank { name: "time", kind: BlankKind::Time, example: "2 yr", optional: false },
     ],
     answer: warmest_storage,
     range: ranges::temperature,
+    aim: |blanks, basis| {
+        let (at, scale) = aimed_at(blanks, basis, 1.0 - blanks.part("keep", basis)?)?;
+        Ok(Aim { kelvins: Some(scale), ..Aim::one_sided(at, blanks.bound, basis.level) })
+    },
 };
 
 /// ln k at which the extent takes just the time, and the temperature of the best estimate.
@@ -49,6 +59,10 @@ fn needed(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin), 
             "Measure over a wider range of temperatures, or more precisely.",
         ));
     }
+    reached(blanks, basis, extent)
+}
+
+fn reached(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin), Refusal> {
     let ln_rate = basis.ln_theta(extent)? - libm::log(blanks.time("time")?.0);
     let best = basis.law.temperature_at(ln_rate).ok_or_else(|| {
         Refusal::new(
@@ -57,6 +71,14 @@ fn needed(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin), 
         )
     })?;
     Ok((ln_rate, best))
+}
+
+/// The temperature of the best estimate, and how many K there are to a unit of ln k. A
+/// measurement may narrow what is too wide for an answer yet.
+fn aimed_at(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(Kelvin, f64), Refusal> {
+    let (_, best) = reached(blanks, basis, extent)?;
+    let slope = basis.law.activation_energy(best).0 / (MOLAR_GAS_CONSTANT * best.0 * best.0);
+    Ok((best, 1.0 / libm::fabs(slope)))
 }
 
 fn temperature_for(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {

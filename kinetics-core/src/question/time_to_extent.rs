@@ -1,6 +1,6 @@
 //! How long until a part is gone: t = θ_X/k(T).
 
-use super::{Blank, BlankKind, Blanks, Question, ranges};
+use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::quantity::Seconds;
 use crate::wording::{Figures, duration, duration_with_range};
@@ -9,11 +9,17 @@ pub(super) const QUESTION: Question = Question {
     code: "time-to-extent",
     sentence: "At [temperature], how long until [gone] is gone?",
     blanks: &[
-        Blank { name: "temperature", kind: BlankKind::Temperature, example: "25 °C" },
-        Blank { name: "gone", kind: BlankKind::Part, example: "5 %" },
+        Blank {
+            name: "temperature",
+            kind: BlankKind::Temperature,
+            example: "25 °C",
+            optional: false,
+        },
+        Blank { name: "gone", kind: BlankKind::Part, example: "5 %", optional: false },
     ],
     answer,
     range: ranges::time,
+    aim: aims::rate,
 };
 
 fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {

@@ -16,9 +16,10 @@ fn numbered<'a>(answers: &'a [Answer]) -> impl Iterator<Item = (usize, &'a Answe
     })
 }
 
-/// Answers whose grounds are far or beyond.
+/// Answers whose grounds are far or beyond; a place recommended for a measurement is the remedy.
 pub(super) fn extrapolation(evidence: &Evidence) -> Option<Remark> {
     let reaching: Vec<(usize, Grounds)> = numbered(evidence.answers)
+        .filter(|(_, answer)| answer.question != "next-measurement")
         .filter_map(|(number, answer)| Some((number, answer.grounds?)))
         .filter(|(_, grounds)| *grounds >= Grounds::Far)
         .collect();

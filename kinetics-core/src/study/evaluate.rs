@@ -77,10 +77,8 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
 
     let Ground { basis, refusal, mut remarks, order, rivals, alternatives } =
         basis::lay(study, &mut rates);
-    let answers: Vec<Answer> = study
-        .asked
-        .iter()
-        .map(|asked| question::answer(asked, basis.as_ref().ok_or(&refusal)))
+    let answers: Vec<Answer> = (0..study.asked.len())
+        .map(|at| question::answer_among(&study.asked, at, basis.as_ref().ok_or(&refusal)))
         .collect();
     remarks.extend(own_remarks(study, &rates, basis.as_ref(), &answers));
     remarks.sort_by_key(|remark| remark.severity);

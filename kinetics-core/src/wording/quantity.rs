@@ -79,7 +79,7 @@ pub fn typed(quantities: &[Quantity], decimal: char) -> String {
         }
         text.push_str(&typed_number(quantity.value, decimal));
         let shared = quantities.get(at + 1).is_some_and(|next| next.unit == quantity.unit);
-        if !shared {
+        if !shared && !quantity.unit.is_empty() {
             text.push(' ');
             text.push_str(&quantity.unit);
         }
@@ -155,5 +155,6 @@ mod tests {
         let mixed = [celsius(2.5), Quantity::new(310.0, "K")];
         assert_eq!(typed(&mixed, ','), "2,5 °C; 310 K");
         assert_eq!(typed(&[Quantity::new(1.5e-7, "h")], ','), "1,5e-7 h");
+        assert_eq!(typed(&[Quantity::new(1.0, ""), Quantity::new(2.0, "")], '.'), "1, 2");
     }
 }

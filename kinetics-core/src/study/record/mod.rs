@@ -10,7 +10,7 @@ use super::document::Study;
 use super::findings::{Estimate, Findings, LawFindings, Record};
 use crate::answer::Answer;
 use crate::citation::{self, Citation};
-use crate::question::{Piece, Question};
+use crate::question::{Blank, BlankKind, Piece, Question};
 use crate::temperature_law::Scatter;
 
 /// What a record is not, in its own words.
@@ -44,6 +44,9 @@ fn citations(findings: &Findings) -> Vec<Citation> {
     }
     if law.scatter == Scatter::AsStatedPlusRunToRun {
         sources.extend([citation::Q_PROFILE, citation::GENERALISED_INFERENCE]);
+    }
+    if findings.answers.iter().any(|answer| answer.question == "next-measurement") {
+        sources.push(citation::SEQUENTIAL_DESIGN);
     }
     sources.push(citation::CONSTANTS);
     sources
@@ -178,7 +181,7 @@ impl Account {
                     run.ln_residual.map_or("none".into(), |residual| format!("{residual:+.4}")),
                 ]
             });
-            let head = vec!["row", "run", "T/K", "k", "residual of ln k"];
+            let head = ["row", "run", "T/K", "k", "residual of ln k"].map(String::from).to_vec();
             self.parts.push(Part::Table(head, rows.collect()));
         }
         if !findings.rivals.is_empty() {
@@ -187,7 +190,8 @@ impl Account {
                 .rivals
                 .iter()
                 .map(|r| vec![r.kind.clone(), shown(r.delta_aicc), shown(r.weight)]);
-            let head = vec!["other law", "AICc above the best", "Akaike weight"];
+            let head =
+                ["other law", "AICc above the best", "Akaike weight"].map(String::from).to_vec();
             self.parts.push(Part::Table(head, rows.collect()));
         }
         for remark in &findings.remarks {
@@ -246,9 +250,7 @@ impl Account {
             self.sentence(format!("{}. {}", i + 1, sentence_with_blanks(asked)));
             self.answer(answer);
             for row in answer.rows.iter().flatten() {
-                let blanks = row.blanks.iter().flatten();
-                let blanks: Vec<String> = blanks.map(|(_, value)| blank_words(value)).collect();
-                self.sentence(format!("{}:", blanks.join(", ")));
+                self.sentence(format!("{}:", row_words(row)));
                 self.answer(row);
             }
         }
@@ -264,11 +266,28 @@ impl Account {
             };
             self.entry("Unrounded", format!("{value:e} {unit} ({limits})"));
         }
-        if !answer.detail.is_empty() {
+        let (series, single): (Vec<_>, Vec<_>) =
+            answer.detail.iter().partition(|(_, value)| value.is_array());
+        if !single.is_empty() {
             let detail: Vec<String> =
-                answer.detail.iter().map(|(name, value)| format!("{name} {value}")).collect();
+                single.iter().map(|(name, value)| format!("{name} {value}")).collect();
             self.entry("Detail", detail.join(", "));
         }
+        for (_, value) in series {
+            self.series(value.as_array().map(Vec::as_slice).unwrap_or_default());
+        }
+    }
+
+    /// A curve as a table: one row a point, one column a number.
+    fn series(&mut self, points: &[serde_json::Value]) {
+        let Some(first) = points.first().and_then(serde_json::Value::as_object) else { return };
+        let shown = |value: &serde_json::Value| match value.as_f64() {
+            Some(number) => format!("{number:.6e}"),
+            None => "none".into(),
+        };
+        let row = |point: &serde_json::Value| first.keys().map(|key| shown(&point[key])).collect();
+        let head = first.keys().cloned().collect();
+        self.parts.push(Part::Table(head, points.iter().map(row).collect()));
     }
 }
 
@@ -309,7 +328,7 @@ fn sentence_with_blanks(asked: &serde_json::Map<String, serde_json::Value>) -> S
         match piece {
             Piece::Text(text) => sentence.push_str(text),
             Piece::Blank(blank) => {
-                let filled = asked.get(blank.name).map(blank_words);
+                let filled = asked.get(blank.name).map(|value| blank_words(blank.kind, value));
                 sentence.push_str(filled.as_deref().unwrap_or("…"));
             }
         }
@@ -318,14 +337,24 @@ fn sentence_with_blanks(asked: &serde_json::Map<String, serde_json::Value>) -> S
 }
 
 /// "25 °C", or "5 °C, 25 °C" for a list.
-fn blank_words(value: &serde_json::Value) -> String {
-    match value {
-        serde_json::Value::Array(several) => {
-            several.iter().map(blank_words).collect::<Vec<_>>().join(", ")
-        }
-        other => serde_json::from_value::<crate::quantity::Quantity>(other.clone())
-            .map_or_else(|_| "…".into(), |quantity| quantity.to_string()),
+fn blank_words(kind: BlankKind, filled: &serde_json::Value) -> String {
+    let quantities = kind.quantities(filled);
+    if quantities.is_empty() {
+        return "…".into();
     }
+    let words: Vec<String> =
+        quantities.iter().map(|quantity| quantity.to_string().trim_end().to_owned()).collect();
+    words.join(", ")
+}
+
+/// The blanks of a row of a table.
+fn row_words(row: &Answer) -> String {
+    let blanks = Question::of_code(&row.question).map(|q| q.blanks).unwrap_or_default();
+    let filled = |blank: &Blank| {
+        let value = row.blanks.as_ref()?.get(blank.name)?;
+        Some(blank_words(blank.kind, value))
+    };
+    blanks.iter().filter_map(filled).collect::<Vec<_>>().join(", ")
 }
 
 fn law_words(kind: &str) -> &'static str {

@@ -14,7 +14,7 @@ pub(super) enum Part {
     /// A sentence or more.
     Sentence(String),
     /// A table with its head.
-    Table(Vec<&'static str>, Vec<Vec<String>>),
+    Table(Vec<String>, Vec<Vec<String>>),
     /// Text to the letter.
     Verbatim(String),
 }
@@ -53,7 +53,7 @@ fn underlined(text: &mut String, heading: &str, with: char) {
 }
 
 /// Columns as wide as their widest cell, two spaces apart.
-fn table(text: &mut String, head: &[&str], rows: &[Vec<String>]) {
+fn table(text: &mut String, head: &[String], rows: &[Vec<String>]) {
     let mut widths: Vec<usize> = head.iter().map(|cell| cell.chars().count()).collect();
     for row in rows {
         for (width, cell) in widths.iter_mut().zip(row) {
@@ -68,7 +68,7 @@ fn table(text: &mut String, head: &[&str], rows: &[Vec<String>]) {
         }
         let _ = writeln!(text, "{}", line.trim_end());
     };
-    line(&mut head.iter().copied());
+    line(&mut head.iter().map(String::as_str));
     for row in rows {
         line(&mut row.iter().map(String::as_str));
     }
@@ -104,7 +104,7 @@ pub(super) fn html(parts: &[Part]) -> String {
                         format!("<tr>{}</tr>\n", cells("td", &mut row.iter().map(String::as_str)))
                     })
                     .collect();
-                let head = cells("th", &mut head.iter().copied());
+                let head = cells("th", &mut head.iter().map(String::as_str));
                 writeln!(
                     html,
                     "<table><thead><tr>{head}</tr></thead><tbody>\n{body}</tbody></table>"
@@ -138,7 +138,7 @@ mod tests {
             Part::Entry("Form".into(), "rates".into()),
             Part::Entry("Left out".into(), "row 3".into()),
             Part::Sentence("Nothing else.".into()),
-            Part::Table(vec!["row", "T/K"], vec![vec!["2".into(), "323.15".into()]]),
+            Part::Table(vec!["row".into(), "T/K".into()], vec![vec!["2".into(), "323.15".into()]]),
             Part::Verbatim("<b>\n1\t2".into()),
         ]
     }
