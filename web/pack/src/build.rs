@@ -72,9 +72,8 @@ async fn package_into(
     task.run().await.map(drop)
 }
 
-/// Compiler flags that make the page's parts share code (Leptos' own switch),
-/// and that shorten the paths of source files, which panics name and the
-/// program thus carries, to what is the same on every machine.
+/// Compiler flags that shorten the paths of source files, which panics name
+/// and the program thus carries, to what is the same on every machine.
 fn compiler_flags(root: &Path) -> OsString {
     let mut shortened = vec![(root.to_owned(), ".")];
     if let Some(home) = cargo_home() {
@@ -85,9 +84,12 @@ fn compiler_flags(root: &Path) -> OsString {
             shortened.push((registry.path(), "crates"));
         }
     }
-    let mut flags = OsString::from("--cfg=erase_components");
+    let mut flags = OsString::new();
     for (from, to) in shortened {
-        flags.push("\u{1f}--remap-path-prefix=");
+        if !flags.is_empty() {
+            flags.push("\u{1f}");
+        }
+        flags.push("--remap-path-prefix=");
         flags.push(from);
         flags.push("=");
         flags.push(to);

@@ -51,8 +51,11 @@ async fn node(root: &Path, report: &mut Report) {
     let package = build::target_folder(root).join("kelvinclock-node");
     let built = build::node_package(root, &package).await;
     if report.note("building the package for Node", Counting::One, built.map(|()| String::new())) {
-        let task = Task::line(root, "node --test --test-reporter=tap tests/node/evaluate.mjs")
-            .environment("KELVINCLOCK_PACKAGE", package);
+        let task = Task::line(
+            root,
+            "node --test --test-reporter=tap tests/node/evaluate.mjs tests/node/unlzma.mjs",
+        )
+        .environment("KELVINCLOCK_PACKAGE", package);
         report.step(task, Counting::Node).await;
     }
 }

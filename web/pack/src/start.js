@@ -16,18 +16,13 @@
     place.textContent = sentence;
   }
 
-  async function unpack() {
-    const text = document.getElementById("wasm").textContent;
-    const packed = Uint8Array.from(atob(text), (letter) => letter.charCodeAt(0));
-    const stream = new Blob([packed]).stream();
-    const unpacked = stream.pipeThrough(new DecompressionStream("deflate-raw"));
-    return new Response(unpacked).arrayBuffer();
-  }
+  /*{{unlzma}}*/
 
   async function start() {
-    const bytes = await unpack();
+    const text = document.getElementById("wasm").textContent;
+    const packed = Uint8Array.from(atob(text), (letter) => letter.charCodeAt(0));
     const program = glue();
-    await program({ module_or_path: bytes });
+    await program({ module_or_path: unlzma(packed) });
     program.start();
     document.getElementById("starting").remove();
     document.documentElement.dataset.version = program.version();
@@ -37,11 +32,6 @@
     say(
       "Kelvinclock cannot start: WebAssembly is switched off in this browser. " +
         "Ask whoever administers the browser to allow it, or open the file in another one.",
-    );
-  } else if (typeof DecompressionStream !== "function") {
-    say(
-      "Kelvinclock cannot start: this browser is too old (it lacks DecompressionStream). " +
-        "Open the file in a browser of 2023 or later.",
     );
   } else {
     start().catch((error) => {
