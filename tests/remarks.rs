@@ -166,6 +166,59 @@ fn weighting() {
     check("weighting", (&bent(0.1), json!({})), (&bent(0.0), json!({})));
 }
 
+/// Runs with their stated errors in per cent, in the order of [`SIX`].
+fn with_errors(percent: [f64; 6]) -> String {
+    let mut text = usual().replacen("1/h\n", "1/h\ts(k), %\n", 1);
+    for (line, error) in usual().lines().skip(1).zip(percent) {
+        text = text.replacen(&format!("{line}\n"), &format!("{line}\t{error}\n"), 1);
+    }
+    text
+}
+
+fn thermometer_of(kelvins: f64, scatter: &str) -> Value {
+    let sd = json!({"value": kelvins, "unit": "K"});
+    json!({"measured": {"thermometer": {"sd": sd}}, "assumed": {"scatter": scatter}})
+}
+
+/// (Ea u/(R T²))² is a quarter of the whole where it is a third of the 5 % stated: at 0.30 K about
+/// 62.5 °C. The run-to-run scatter and the residuals contain it: there it is a quarter of theirs.
+#[test]
+fn thermometer() {
+    let text = with_errors([5.0; 6]);
+    let with = |kelvins: f64, scatter: &str| thermometer_of(kelvins, scatter);
+    check("thermometer", (&text, with(0.31, "as-stated")), (&text, with(0.29, "as-stated")));
+    let plus = "as-stated-plus-run-to-run";
+    check("thermometer", (&text, with(0.27, plus)), (&text, with(0.25, plus)));
+    let from = "from-residuals";
+    let law = found(&usual(), with(0.0, from)).law.unwrap();
+    // Var(ln k at T0) is s²/6.
+    let residual = (6.0 * law.covariance.unwrap()[0][0]).sqrt();
+    let energy = law.activation_energy.value;
+    let quarter = 0.5 * residual * R * 335.65 * 335.65 / energy;
+    check(
+        "thermometer",
+        (&usual(), with(1.05 * quarter, from)),
+        (&usual(), with(0.95 * quarter, from)),
+    );
+}
+
+/// What a run's leaving would do is said of the fit that was made, its thermometer included.
+#[test]
+fn influence_keeps_the_thermometer() {
+    let text = with_errors([0.2, 8.0, 8.0, 8.0, 8.0, 0.2]);
+    let energy_without = |row: usize, kelvins: f64| {
+        let mut study = thermometer_of(kelvins, "as-stated");
+        study["measured"]["excluded"] = json!([{"row": row, "reason": "to compare"}]);
+        let energy = found(&text, study).law.unwrap().activation_energy.value;
+        format!("{:.1}", energy / 1e3)
+    };
+    let findings = found(&text, thermometer_of(1.0, "as-stated"));
+    let remark = findings.remarks.iter().find(|r| r.code == "influence").unwrap();
+    let row: usize = remark.sentence.split("(row ").nth(1).unwrap()[..1].parse().unwrap();
+    assert!(remark.sentence.contains(&energy_without(row, 1.0)), "{}", remark.sentence);
+    assert_ne!(energy_without(row, 1.0), energy_without(row, 0.0));
+}
+
 #[test]
 fn extrapolation() {
     let time = |t: f64| {

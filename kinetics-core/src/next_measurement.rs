@@ -10,7 +10,7 @@
 use crate::measurements::Observation;
 use crate::quantity::Kelvin;
 use crate::temperature_law::{
-    Component, Contrast, FittedLaw, LawError, Scatter, ScatterChoice, Settings, Target, fit,
+    Component, Contrast, FittedLaw, LawError, Scatter, ScatterChoice, Target, fit,
 };
 
 /// What a measurement is to narrow.
@@ -116,9 +116,7 @@ fn with_run(
     let ln_sd = (!on_residuals).then_some(sd);
     let mut runs = law.runs.clone();
     runs.push(Observation { temperature, ln_rate, ln_sd });
-    let scatter =
-        if on_residuals { ScatterChoice::FromResiduals } else { ScatterChoice::from(law.scatter) };
-    fit(law.law, &runs, Settings { scatter, ..law.settings })
+    law.refitted(&runs)
 }
 
 /// C⁻¹ + jjᵀ/s² for a law known beforehand: C − Cj jᵀC/(s² + jᵀCj) (Sherman & Morrison, Ann.

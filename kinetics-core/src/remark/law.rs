@@ -1,9 +1,7 @@
 //! Remarks on the runs and the law.
 
 use super::{Evidence, Remark, Severity};
-use crate::temperature_law::{
-    ScatterChoice, Target, curvature as test_curvature, fit, influential,
-};
+use crate::temperature_law::{Target, curvature as test_curvature, influential};
 use crate::units::{ConcentrationKind, EnergyUnit, RateUnit};
 use crate::wording::{Figures, fixed, significant};
 
@@ -85,14 +83,9 @@ pub(super) fn influence(evidence: &Evidence) -> Option<Remark> {
     let basis = evidence.basis;
     let fitted = &basis.law;
     let worst = *influential(fitted).first()?;
-    let others: Vec<_> = evidence
-        .observations
-        .iter()
-        .enumerate()
-        .filter(|(run, _)| *run != worst.run)
-        .map(|(_, o)| *o)
-        .collect();
-    let without = fit(fitted.law, &others, ScatterChoice::from(fitted.scatter)).ok()?;
+    let mut others = fitted.runs.clone();
+    others.remove(worst.run);
+    let without = fitted.refitted(&others).ok()?;
     let energy = |law: &crate::temperature_law::FittedLaw| {
         let unit: EnergyUnit = basis.display.energy;
         unit.from_joules_per_mole(law.activation_energy(fitted.reference).0)

@@ -70,7 +70,7 @@ pub struct Evidence<'a> {
 
 type Check = fn(&Evidence) -> Option<Remark>;
 
-const CHECKS: [Check; 14] = [
+const CHECKS: [Check; 15] = [
     stated::celsius_as_kelvin,
     stated::log_base,
     stated::unit_of_energy,
@@ -83,6 +83,7 @@ const CHECKS: [Check; 14] = [
     scatter::excess_scatter,
     scatter::lack_of_fit,
     scatter::weighting,
+    scatter::thermometer,
     answers::extrapolation,
     answers::doubling_rule,
 ];

@@ -2,7 +2,7 @@
 
 use super::{Evidence, Remark, Severity};
 use crate::temperature_law::{
-    Scatter, activation_energy_on_rates, lack_of_fit as test_lack_of_fit,
+    Scatter, activation_energy_on_rates, lack_of_fit as test_lack_of_fit, thermometer_share,
 };
 use crate::wording::{Figures, significant};
 
@@ -91,5 +91,26 @@ pub(super) fn excess_scatter(evidence: &Evidence) -> Option<Remark> {
             significant(p, 2, decimal)
         ),
         remedy,
+    ))
+}
+
+/// The random error of the thermometer makes more than a quarter of what the runs scatter.
+pub(super) fn thermometer(evidence: &Evidence) -> Option<Remark> {
+    const LARGEST_SHARE: f64 = 0.25;
+    let basis = evidence.basis;
+    let fitted = &basis.law;
+    let kelvins = fitted.settings.thermometer_sd_kelvin;
+    let share = thermometer_share(fitted).filter(|share| *share > LARGEST_SHARE)?;
+    let decimal = basis.display.decimal;
+    let percent = significant(100.0 * share.min(1.0), 2, decimal);
+    Some(Remark::new(
+        "thermometer",
+        Severity::Note,
+        format!(
+            "The thermometer's random error of {}\u{a0}K makes {percent}\u{a0}% of the variance of \
+             the runs, and so of the intervals.",
+            significant(kelvins, 2, decimal)
+        ),
+        "A better thermometer would narrow the answers; better rate constants alone would not.",
     ))
 }

@@ -32,6 +32,7 @@ pub use fitted::{Component, FittedLaw, Kernel, Target};
 pub use inverse::TemperatureSet;
 pub use likelihood::aicc;
 pub use scatter::{LawError, Scatter, ScatterChoice, Settings, fit};
+pub use thermometer::thermometer_share;
 
 use crate::constants::{BOLTZMANN_OVER_PLANCK, MOLAR_GAS_CONSTANT};
 use crate::quantity::Kelvin;

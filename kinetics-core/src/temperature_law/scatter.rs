@@ -131,6 +131,16 @@ pub fn fit(
     Ok(FittedLaw { runs: observations.to_vec(), settings, ..fitted })
 }
 
+impl FittedLaw {
+    /// The same law fitted to other runs in the same way.
+    ///
+    /// # Errors
+    /// As [`fit`].
+    pub fn refitted(&self, runs: &[Observation]) -> Result<Self, LawError> {
+        fit(self.law, runs, Settings { scatter: self.scatter.into(), ..self.settings })
+    }
+}
+
 /// One law, one set of runs: what every scatter choice shares.
 pub(super) struct Problem {
     pub(super) law: TemperatureLaw,

@@ -5,7 +5,7 @@
 use nalgebra::DMatrix;
 
 use super::scatter::{Problem, weights};
-use super::{FittedLaw, LawError};
+use super::{FittedLaw, LawError, Scatter};
 use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::numeric::errors_in_both::{self, Point};
 use crate::numeric::least_squares::LinearFit;
@@ -107,6 +107,30 @@ impl Problem {
         let on_ln_scale = self.temperature_sds(u, reference, fit);
         sd.iter().zip(&on_ln_scale).map(|(s, t)| 1.0 / (s * s + t * t)).collect()
     }
+}
+
+/// How much of the variance of ln k of a run the thermometer makes, on average over the runs:
+/// (Ea u/(R T²))² in s² + (Ea u/(R T²))² where stated errors are all there is, else in what the
+/// residuals or the run-to-run scatter say, which contain it; none without runs or a scatter.
+pub fn thermometer_share(fitted: &FittedLaw) -> Option<f64> {
+    let u = fitted.settings.thermometer_sd_kelvin;
+    let shares = fitted.runs.iter().map(|run| {
+        let t = run.temperature;
+        let slope = fitted.activation_energy(t).0 / (MOLAR_GAS_CONSTANT * t.0 * t.0);
+        let own = (slope * u).powi(2);
+        let stated = run.ln_sd.map(|sd| sd * sd);
+        let all = match fitted.scatter {
+            Scatter::NoneKnown => None,
+            Scatter::FromResiduals => fitted.components.first().map(|c| c.run_variance),
+            Scatter::AsStated => stated.map(|variance| variance + own),
+            Scatter::AsStatedPlusRunToRun => {
+                stated.zip(fitted.run_to_run_sd).map(|(variance, tau)| variance + tau * tau)
+            }
+        };
+        Some(own / all?)
+    });
+    let mean = shares.sum::<Option<f64>>()? / fitted.runs.len() as f64;
+    mean.is_finite().then_some(mean)
 }
 
 #[cfg(test)]
