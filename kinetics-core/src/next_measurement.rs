@@ -115,7 +115,7 @@ fn with_run(
     let ln_rate = law.ln_rate(temperature) + misfit;
     let ln_sd = (!on_residuals).then_some(sd);
     let mut runs = law.runs.clone();
-    runs.push(Observation { temperature, ln_rate, ln_sd });
+    runs.push(Observation::new(temperature, ln_rate, ln_sd));
     law.refitted(&runs)
 }
 
@@ -153,7 +153,7 @@ mod tests {
     fn runs(sd: Option<f64>) -> Vec<Observation> {
         [(323.15, -4.02), (333.15, -2.88), (343.15, -2.05), (353.15, -1.02)]
             .iter()
-            .map(|&(t, y)| Observation { temperature: Kelvin(t), ln_rate: y, ln_sd: sd })
+            .map(|&(t, y)| Observation::new(Kelvin(t), y, sd))
             .collect()
     }
 

@@ -90,7 +90,7 @@ mod tests {
                 let t = 310.0 + 8.0 * i as f64;
                 let x = (1.0 / t - 1.0 / 345.0) * 1e3;
                 let ln_rate = -4.0 - 11.0 * x + bend * x * x + noise[i];
-                Observation { temperature: Kelvin(t), ln_rate, ln_sd: None }
+                Observation::new(Kelvin(t), ln_rate, None)
             })
             .collect();
         let choice = ScatterChoice::Automatic;

@@ -244,10 +244,12 @@ pub fn simulate(cell: &Cell, replicates: usize, seed: u64) -> Vec<Outcome> {
         let runs: Vec<Observation> = temperatures
             .iter()
             .zip(&sds)
-            .map(|(t, sd)| Observation {
-                temperature: Kelvin(*t),
-                ln_rate: ln_rate(*t) + sd * normal() + tau * normal(),
-                ln_sd: Some(*sd),
+            .map(|(t, sd)| {
+                Observation::new(
+                    Kelvin(*t),
+                    ln_rate(*t) + sd * normal() + tau * normal(),
+                    Some(*sd),
+                )
             })
             .collect();
         // A new batch scatters by τ; judged by residuals, it also has a typical run's error.

@@ -212,7 +212,7 @@ impl<'t> Layout<'t> {
             rates.runs.push(Run {
                 row: row.line,
                 name: self.name(row, temperature),
-                observation: Observation { temperature, ln_rate, ln_sd },
+                observation: Observation::new(temperature, ln_rate, ln_sd),
             });
         }
     }

@@ -10,7 +10,7 @@
 //! panels that are halved until the rule returns the mass F(left) − F(right) of each, which is
 //! known: a few dozen fits, where a ladder of equal steps needs hundreds for less.
 
-use super::scatter::{LawError, Problem, Scatter, component, weights};
+use super::scatter::{LawError, Problem, Scatter, component};
 use super::{Component, FittedLaw};
 use crate::numeric::distributions::{chi_squared_cdf, chi_squared_density};
 use crate::numeric::least_squares::LinearFit;
@@ -45,12 +45,12 @@ const GAUSS: [(f64, f64); 4] = [
 impl Problem {
     pub(super) fn as_stated_plus_run_to_run(&self, sd: &[f64]) -> Result<FittedLaw, LawError> {
         let degrees = self.degrees_of_freedom as f64;
-        let provisional = self.reference(&weights(sd, 0.0));
+        let provisional = self.reference(&self.weights(sd, 0.0));
         let smallest = sd.iter().copied().fold(f64::INFINITY, f64::min);
-        let as_stated = self.solve(provisional, &weights(sd, 0.0))?.weighted_sum_of_squares;
+        let as_stated = self.solve(provisional, &self.weights(sd, 0.0))?.weighted_sum_of_squares;
         let tau = self.best_tau(provisional, sd, as_stated)?;
 
-        let final_weights = weights(sd, tau);
+        let final_weights = self.weights(sd, tau);
         let reference = self.reference(&final_weights);
         let fit = self.solve(reference, &final_weights)?;
         let mut mixture = Mixture { problem: self, reference, sd, degrees, components: Vec::new() };
@@ -71,7 +71,7 @@ impl Problem {
             return Ok(0.0);
         }
         let misfit = |tau: f64| -> Result<f64, LawError> {
-            Ok(self.solve(reference, &weights(sd, tau))?.weighted_sum_of_squares)
+            Ok(self.solve(reference, &self.weights(sd, tau))?.weighted_sum_of_squares)
         };
         let smallest = sd.iter().copied().fold(f64::INFINITY, f64::min);
         let (mut below, mut above) = (0.0, smallest);
@@ -150,7 +150,8 @@ impl Mixture<'_> {
     }
 
     fn node(&self, ln_tau: f64) -> Result<Node, LawError> {
-        let fit = self.problem.solve(self.reference, &weights(self.sd, libm::exp(ln_tau)))?;
+        let weights = self.problem.weights(self.sd, libm::exp(ln_tau));
+        let fit = self.problem.solve(self.reference, &weights)?;
         let larger = chi_squared_cdf(fit.weighted_sum_of_squares, self.degrees);
         Ok(Node { ln_tau, fit, larger })
     }
@@ -163,9 +164,10 @@ impl Mixture<'_> {
             .sd
             .iter()
             .zip(&node.fit.residuals)
-            .map(|(s, r)| {
+            .zip(&self.problem.shares)
+            .map(|((s, r), share)| {
                 let weighted = r / (s * s + variance);
-                weighted * weighted
+                share * weighted * weighted
             })
             .sum();
         let misfit = node.fit.weighted_sum_of_squares;
@@ -191,11 +193,7 @@ mod tests {
     }
 
     fn observations(runs: &[(f64, f64, f64)]) -> Vec<Observation> {
-        let observation = |&(t, y, s): &(f64, f64, f64)| Observation {
-            temperature: Kelvin(t),
-            ln_rate: y,
-            ln_sd: Some(s),
-        };
+        let observation = |&(t, y, s): &(f64, f64, f64)| Observation::new(Kelvin(t), y, Some(s));
         runs.iter().map(observation).collect()
     }
 
@@ -265,11 +263,11 @@ mod tests {
         let sd: Vec<f64> = runs.iter().map(|(_, _, s)| *s).collect();
         let degrees = averaged.degrees_of_freedom.unwrap() as f64;
         let larger = |tau: f64| {
-            let fit = problem.solve(averaged.reference, &weights(&sd, tau)).unwrap();
+            let fit = problem.solve(averaged.reference, &problem.weights(&sd, tau)).unwrap();
             chi_squared_cdf(fit.weighted_sum_of_squares, degrees)
         };
         let at = |mass: f64, tau: f64| {
-            let fit = problem.solve(averaged.reference, &weights(&sd, tau)).unwrap();
+            let fit = problem.solve(averaged.reference, &problem.weights(&sd, tau)).unwrap();
             component(mass, tau, &fit)
         };
         let mut above = larger(0.0);
@@ -298,7 +296,7 @@ mod tests {
         let problem = Problem::new(TemperatureLaw::Arrhenius, &observations(&runs)).unwrap();
         let fitted = fitted(&runs, ScatterChoice::Automatic);
         let tau = fitted.run_to_run_sd.unwrap();
-        let fit = problem.solve(fitted.reference, &weights(&[0.01; 4], tau)).unwrap();
+        let fit = problem.solve(fitted.reference, &problem.weights(&[0.01; 4], tau)).unwrap();
         assert!(tau > 0.0 && (fit.weighted_sum_of_squares - 2.0).abs() < 1e-9);
     }
 }

@@ -3,7 +3,7 @@
 use nalgebra::DMatrix;
 
 use super::FittedLaw;
-use crate::measurements::Observation;
+use crate::measurements::{Observation, independent_runs};
 use crate::numeric::distributions::{f_tail, student_t_quantile};
 use crate::numeric::least_squares;
 
@@ -23,10 +23,11 @@ pub struct CurvatureTest {
 /// three temperatures, or when the fit leaves nothing to explain.
 pub fn curvature(fitted: &FittedLaw, observations: &[Observation]) -> Option<CurvatureTest> {
     let parameters = fitted.law.parameters();
-    if parameters > 2 || observations.len() < 4 {
+    let runs = independent_runs(observations);
+    if parameters > 2 || runs < 4 {
         return None;
     }
-    let degrees_of_freedom = observations.len() - 3;
+    let degrees_of_freedom = runs - 3;
     let contrasts: Vec<_> =
         observations.iter().map(|o| fitted.ln_rate_contrast(o.temperature)).collect();
     let design = DMatrix::from_fn(observations.len(), 3, |row, column| {
@@ -71,7 +72,7 @@ const FEWEST_RUNS: usize = 5;
 /// The runs whose Cook's distance exceeds 1 or whose studentised residual lies beyond the
 /// Bonferroni 5 % point, worst first.
 pub fn influential(fitted: &FittedLaw) -> Vec<Influence> {
-    let runs = fitted.residuals.len();
+    let runs = independent_runs(&fitted.runs);
     let parameters = fitted.parameters.len();
     if runs < FEWEST_RUNS || runs < parameters + 2 {
         return Vec::new();
@@ -83,7 +84,7 @@ pub fn influential(fitted: &FittedLaw) -> Vec<Influence> {
         return Vec::new();
     }
     let limit = student_t_quantile(1.0 - 0.025 / runs as f64, degrees - 1.0);
-    let mut found: Vec<Influence> = (0..runs)
+    let mut found: Vec<Influence> = (0..fitted.residuals.len())
         .filter_map(|run| {
             let left = 1.0 - fitted.leverages[run];
             if left < 1e-9 {
@@ -119,8 +120,12 @@ pub struct LackOfFitTest {
 }
 
 /// Tests a law against its replicates at the weights of its fit; none without replicates, with
-/// no more temperatures than parameters, or where replicates are exactly alike.
+/// no more temperatures than parameters, where replicates are exactly alike, or where a group has
+/// runs at several temperatures, so that replicates are not independent.
 pub fn lack_of_fit(fitted: &FittedLaw, observations: &[Observation]) -> Option<LackOfFitTest> {
+    if observations.iter().any(|o| o.share < 1.0) {
+        return None;
+    }
     let mut order: Vec<usize> = (0..observations.len()).collect();
     let temperature = |i: usize| observations[i].temperature.0;
     order.sort_by(|a, b| temperature(*a).total_cmp(&temperature(*b)));
@@ -203,7 +208,7 @@ mod tests {
                 let x = 1.0 / t - 1.0 / 340.0;
                 let slipped = if i == 5 { slip } else { 0.0 };
                 let ln_rate = -3.0 - 1.0e4 * x + bend * x * x * 1e6 + e + slipped;
-                Observation { temperature: Kelvin(t), ln_rate, ln_sd: None }
+                Observation::new(Kelvin(t), ln_rate, None)
             })
             .collect();
         let fitted =
@@ -246,7 +251,7 @@ mod tests {
 
     #[test]
     fn replicates_that_agree_with_each_other_and_not_with_the_law_are_seen() {
-        let at = |t: f64, y: f64| Observation { temperature: Kelvin(t), ln_rate: y, ln_sd: None };
+        let at = |t: f64, y: f64| Observation::new(Kelvin(t), y, None);
         let good = [
             at(320.0, -5.0),
             at(320.0, -4.9),

@@ -123,7 +123,7 @@ mod tests {
             .map(|(i, e)| {
                 let t = 320.0 + 10.0 * i as f64;
                 let ln_rate = -5.0 - 80_000.0 / MOLAR_GAS_CONSTANT * (1.0 / t - 1.0 / 340.0) + e;
-                Observation { temperature: Kelvin(t), ln_rate, ln_sd: None }
+                Observation::new(Kelvin(t), ln_rate, None)
             })
             .collect();
         fit(TemperatureLaw::Arrhenius, &observations, ScatterChoice::Automatic).unwrap()

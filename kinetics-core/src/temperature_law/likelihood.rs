@@ -1,18 +1,18 @@
 //! How well a law explains the runs: maximum likelihood and AICc (Hurvich & Tsai, Biometrika
 //! 1989, 76, 297; Burnham & Anderson, Model Selection and Multimodel Inference, 2002, §2.4).
 
-use super::scatter::{Problem, weights};
+use super::scatter::Problem;
 use super::{Scatter, TemperatureLaw};
-use crate::measurements::Observation;
+use crate::measurements::{Observation, independent_runs};
 
 /// AICc of a law fitted to ln k of the runs under a scatter; none where it is undefined
 /// (n ≤ K + 1), where the law cannot be fitted, or where nothing is left to explain.
 pub fn aicc(law: TemperatureLaw, observations: &[Observation], scatter: Scatter) -> Option<f64> {
     let problem = Problem::new(law, observations).ok()?;
-    let runs = observations.len() as f64;
+    let runs = independent_runs(observations) as f64;
     let (deviance, variances) = match scatter {
         Scatter::NoneKnown => return None,
-        Scatter::FromResiduals => (deviance_from_residuals(&problem, observations.len())?, 1.0),
+        Scatter::FromResiduals => (deviance_from_residuals(&problem, runs)?, 1.0),
         Scatter::AsStated => {
             (deviance(&problem, &problem.stated_sd(observations).ok()?, 0.0)?, 0.0)
         }
@@ -26,19 +26,22 @@ pub fn aicc(law: TemperatureLaw, observations: &[Observation], scatter: Scatter)
 }
 
 /// −2 ln L at the maximum when the variance is the same for all and unknown.
-fn deviance_from_residuals(problem: &Problem, runs: usize) -> Option<f64> {
-    let equal = vec![1.0; runs];
-    let fit = problem.solve(problem.reference(&equal), &equal).ok()?;
-    let variance = fit.weighted_sum_of_squares / runs as f64;
-    (variance > 0.0).then(|| runs as f64 * (libm::log(2.0 * std::f64::consts::PI * variance) + 1.0))
+fn deviance_from_residuals(problem: &Problem, runs: f64) -> Option<f64> {
+    let weights = &problem.shares;
+    let fit = problem.solve(problem.reference(weights), weights).ok()?;
+    let variance = fit.weighted_sum_of_squares / runs;
+    (variance > 0.0).then(|| runs * (libm::log(2.0 * std::f64::consts::PI * variance) + 1.0))
 }
 
 /// −2 ln L with variances s² + τ².
 fn deviance(problem: &Problem, sd: &[f64], tau: f64) -> Option<f64> {
-    let weights = weights(sd, tau);
+    let weights = problem.weights(sd, tau);
     let fit = problem.solve(problem.reference(&weights), &weights).ok()?;
-    let normalisation: f64 =
-        weights.iter().map(|w| libm::log(2.0 * std::f64::consts::PI / w)).sum();
+    let normalisation: f64 = weights
+        .iter()
+        .zip(&problem.shares)
+        .map(|(w, share)| share * libm::log(2.0 * std::f64::consts::PI * share / w))
+        .sum();
     Some(normalisation + fit.weighted_sum_of_squares)
 }
 
@@ -82,11 +85,7 @@ mod tests {
         [-4.02, -2.88, -2.05, -1.02, -0.3, 0.61]
             .iter()
             .enumerate()
-            .map(|(i, y)| Observation {
-                temperature: Kelvin(320.0 + 10.0 * i as f64),
-                ln_rate: *y,
-                ln_sd: sd,
-            })
+            .map(|(i, y)| Observation::new(Kelvin(320.0 + 10.0 * i as f64), *y, sd))
             .collect()
     }
 

@@ -10,7 +10,7 @@ use serde::{Deserialize, Serialize};
 use thiserror::Error;
 
 use super::{Component, FittedLaw, Kernel, MAX_PARAMETERS, TemperatureLaw};
-use crate::measurements::Observation;
+use crate::measurements::{Observation, independent_runs};
 use crate::numeric::distributions::chi_squared_tail;
 use crate::numeric::least_squares::{self, LeastSquaresError, LinearFit};
 use crate::quantity::Kelvin;
@@ -146,6 +146,8 @@ pub(super) struct Problem {
     pub(super) law: TemperatureLaw,
     pub(super) temperatures: Vec<Kelvin>,
     pub(super) ln_rates: Vec<f64>,
+    /// How much each run counts as one of its own.
+    pub(super) shares: Vec<f64>,
     pub(super) degrees_of_freedom: usize,
 }
 
@@ -165,7 +167,8 @@ impl Problem {
             law,
             temperatures: observations.iter().map(|o| o.temperature).collect(),
             ln_rates: observations.iter().map(|o| o.ln_rate).collect(),
-            degrees_of_freedom: observations.len() - needed,
+            shares: observations.iter().map(|o| o.share).collect(),
+            degrees_of_freedom: independent_runs(observations).saturating_sub(needed),
         })
     }
 
@@ -173,6 +176,11 @@ impl Problem {
         let stated: Vec<f64> = observations.iter().filter_map(|o| o.ln_sd).collect();
         let missing = observations.len() - stated.len();
         if missing == 0 { Ok(stated) } else { Err(LawError::ErrorsMissing { missing }) }
+    }
+
+    /// 1/(s² + τ²) for a run of its own, less for one that shares its group with others.
+    pub(super) fn weights(&self, sd: &[f64], tau: f64) -> Vec<f64> {
+        sd.iter().zip(&self.shares).map(|(s, share)| share / (s * s + tau * tau)).collect()
     }
 
     /// T0 with 1/T0 = Σ w x / Σ w.
@@ -218,7 +226,7 @@ impl Problem {
     }
 
     fn on_residuals(&self) -> Result<FittedLaw, LawError> {
-        let weights = vec![1.0; self.ln_rates.len()];
+        let weights = self.shares.clone();
         let reference = self.reference(&weights);
         let fit = self.solve(reference, &weights)?;
         let sum_of_squares = fit.weighted_sum_of_squares;
@@ -247,7 +255,7 @@ impl Problem {
         if thermometer_sd_kelvin > 0.0 {
             return self.as_stated_with_thermometer(sd, thermometer_sd_kelvin);
         }
-        let weights = weights(sd, 0.0);
+        let weights = self.weights(sd, 0.0);
         let reference = self.reference(&weights);
         let fit = self.solve(reference, &weights)?;
         Ok(self.standing_on_stated(reference, weights, fit))
@@ -273,10 +281,6 @@ impl Problem {
     }
 }
 
-pub(super) fn weights(sd: &[f64], tau: f64) -> Vec<f64> {
-    sd.iter().map(|s| 1.0 / (s * s + tau * tau)).collect()
-}
-
 pub(super) fn component(weight: f64, tau: f64, fit: &LinearFit) -> Component {
     debug_assert!(fit.coefficients.len() <= MAX_PARAMETERS);
     Component {
@@ -298,7 +302,7 @@ mod tests {
     fn runs(sd: Option<f64>) -> Vec<Observation> {
         [(323.15, -4.02), (333.15, -2.88), (343.15, -2.05), (353.15, -1.02)]
             .iter()
-            .map(|&(t, y)| Observation { temperature: Kelvin(t), ln_rate: y, ln_sd: sd })
+            .map(|&(t, y)| Observation::new(Kelvin(t), y, sd))
             .collect()
     }
 

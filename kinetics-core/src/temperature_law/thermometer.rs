@@ -4,7 +4,7 @@
 
 use nalgebra::DMatrix;
 
-use super::scatter::{Problem, weights};
+use super::scatter::Problem;
 use super::{FittedLaw, LawError, Scatter};
 use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::numeric::errors_in_both::{self, Point};
@@ -24,7 +24,7 @@ impl Problem {
     ) -> Result<FittedLaw, LawError> {
         // Weights depend on the slope and T0 on the weights: a few rounds settle both to
         // rounding, since T0 only labels the line.
-        let mut weights = weights(sd, 0.0);
+        let mut weights = self.weights(sd, 0.0);
         let mut reference = self.reference(&weights);
         let mut fit = self.solve(reference, &weights)?;
         for _ in 0..ROUNDS {
@@ -162,7 +162,7 @@ mod tests {
     fn runs() -> Vec<Observation> {
         [(323.15, -4.02), (333.15, -2.88), (343.15, -2.05), (353.15, -1.02)]
             .iter()
-            .map(|&(t, y)| Observation { temperature: Kelvin(t), ln_rate: y, ln_sd: Some(0.02) })
+            .map(|&(t, y)| Observation::new(Kelvin(t), y, Some(0.02)))
             .collect()
     }
 }
