@@ -25,6 +25,7 @@ pub mod table;
 pub mod measurements;
 
 // 4 · one run
+pub mod rate_constant;
 pub mod rate_law;
 
 // 5 · all runs

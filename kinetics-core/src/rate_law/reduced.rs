@@ -71,6 +71,24 @@ impl RateLaw {
         }
     }
 
+    /// X after all time.
+    pub fn final_extent(self) -> f64 {
+        match self {
+            Self::Order(_) | Self::Autocatalytic { .. } => 1.0,
+            Self::TwoReactants { ratio } => ratio.min(1.0),
+            Self::Reversible { equilibrium } => equilibrium,
+        }
+    }
+
+    /// m in κ = k c0^m.
+    pub fn concentration_power(self) -> f64 {
+        match self {
+            Self::Order(order) => order.value() - 1.0,
+            Self::TwoReactants { .. } | Self::Autocatalytic { .. } => 1.0,
+            Self::Reversible { .. } => 0.0,
+        }
+    }
+
     /// ln θ at which the fraction `extent` is gone.
     ///
     /// # Errors
