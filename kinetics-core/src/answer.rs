@@ -5,7 +5,7 @@ use serde::Serialize;
 use serde_json::{Map, Value};
 
 use crate::grounds::{Grounds, Support};
-use crate::quantity::Kelvin;
+use crate::quantity::{Kelvin, Quantity};
 use crate::rate_law::{ExtentError, Order};
 use crate::temperature_law::{Contrast, FittedLaw, Target};
 use crate::units::{ConcentrationKind, RateUnit};
@@ -218,6 +218,36 @@ impl Basis {
             value: libm::exp(self.law.estimate(target)),
             mean: limits(Target::Mean),
             next_run: limits(Target::NextRun),
+        }
+    }
+
+    /// A part of the initial amount as a fraction; a concentration is divided by the initial one.
+    ///
+    /// # Errors
+    /// An unknown unit, or a concentration that cannot be compared with the initial one.
+    pub fn part(&self, quantity: &Quantity) -> Result<f64, Refusal> {
+        if let Ok(fraction) = quantity.fraction() {
+            return Ok(fraction);
+        }
+        let (value, kind) = quantity.concentration().map_err(|error| {
+            Refusal::new(
+                format!("{}.", capitalised(&error.to_string())),
+                "Write a part such as 5 %, or a concentration such as 0.1 mol/L.",
+            )
+        })?;
+        let initial = self.initial_concentration.ok_or_else(|| {
+            Refusal::new(
+                format!("{quantity} is a part of an initial concentration that is not stated."),
+                "State the initial concentration, or ask in %.",
+            )
+        })?;
+        if initial.kind == kind {
+            Ok(value / initial.value)
+        } else {
+            Err(Refusal::new(
+                format!("{quantity} does not convert into the unit of the initial concentration."),
+                "Use the same kind of concentration for both, or ask in %.",
+            ))
         }
     }
 

@@ -148,32 +148,12 @@ impl Blanks {
         }
     }
 
-    /// A part of the initial amount as a fraction; a concentration is divided by the initial one.
+    /// A part of the initial amount as a fraction.
     ///
     /// # Errors
-    /// A missing blank, an unknown unit, or a concentration that cannot be compared with the
-    /// initial one.
+    /// A missing blank, or as [`Basis::part`].
     pub fn part(&self, name: &str, basis: &Basis) -> Result<f64, Refusal> {
-        let quantity = self.quantity(name)?;
-        if let Ok(fraction) = quantity.fraction() {
-            return Ok(fraction);
-        }
-        let (value, kind) =
-            quantity.concentration().map_err(|error| unusable(&error, BlankKind::Part))?;
-        let initial = basis.initial_concentration.ok_or_else(|| {
-            Refusal::new(
-                format!("{quantity} is a part of an initial concentration that is not stated."),
-                "State the initial concentration, or ask in %.",
-            )
-        })?;
-        if initial.kind == kind {
-            Ok(value / initial.value)
-        } else {
-            Err(Refusal::new(
-                format!("{quantity} does not convert into the unit of the initial concentration."),
-                "Use the same kind of concentration for both, or ask in %.",
-            ))
-        }
+        basis.part(self.quantity(name)?)
     }
 
     /// The blanks as a study states them.

@@ -4,10 +4,13 @@
 use super::UnitError;
 
 /// A temperature scale.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, serde::Serialize, serde::Deserialize)]
+#[derive(
+    Clone, Copy, Debug, PartialEq, Eq, Hash, Default, serde::Serialize, serde::Deserialize,
+)]
 #[serde(into = "String", try_from = "String")]
 pub enum TemperatureUnit {
     /// degree Celsius
+    #[default]
     Celsius,
     /// kelvin
     Kelvin,

@@ -1,7 +1,8 @@
 //! Sentences for screen readers.
 
+use kinetics_core::units::TemperatureUnit;
+
 use super::grounds::Grounds;
-use super::scale::TemperatureUnit;
 use super::ticks::number;
 use super::view::Span;
 

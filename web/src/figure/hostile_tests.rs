@@ -1,6 +1,7 @@
 //! Whatever goes into a picture, no coordinate is without a number, no label is cut
 //! off, and no two labels touch.
 
+use kinetics_core::units::TemperatureUnit;
 use proptest::prelude::*;
 
 use super::Picture;
@@ -9,7 +10,6 @@ use super::grounds::Grounds;
 use super::law_picture::{LawFlag, LawPicture, LawPoint, LawSample, RivalCurve};
 use super::palette::Palette;
 use super::samples;
-use super::scale::TemperatureUnit;
 use super::scene::{Item, Scene, Text};
 use super::svg::svg;
 use super::time_map::{FlagInterval, MeasuredRegion, TimeFlag, TimeLine, TimeMap, TimeSample};

@@ -2,10 +2,11 @@
 
 mod drawing;
 
+use kinetics_core::units::TemperatureUnit;
+
 use super::Picture;
 use super::describe;
 use super::grounds::Grounds;
-use super::scale::TemperatureUnit;
 use super::scene::Scene;
 use super::surround::temperature_title;
 use super::table::{Cell, Table};

@@ -1,8 +1,9 @@
 //! An invented study for the tests of the pictures: a glaze hardener at six temperatures.
 
+use kinetics_core::units::TemperatureUnit;
+
 use super::grounds::Grounds;
 use super::law_picture::{LawFlag, LawPicture, LawPoint, LawSample, RivalCurve};
-use super::scale::TemperatureUnit;
 use super::time_map::{FlagInterval, MeasuredRegion, TimeFlag, TimeLine, TimeMap, TimeSample};
 
 /// Temperatures in °C, rate constants in 10⁻³/h and their standard deviations.

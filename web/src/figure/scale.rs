@@ -1,46 +1,5 @@
 //! From a quantity to a place along an axis and back.
 
-/// The unit in which temperatures are written; inside they are kelvin.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
-pub enum TemperatureUnit {
-    /// Degrees Celsius.
-    #[default]
-    Celsius,
-    /// Kelvin.
-    Kelvin,
-    /// Degrees Fahrenheit.
-    Fahrenheit,
-}
-
-impl TemperatureUnit {
-    /// A temperature in kelvin, in this unit.
-    pub fn from_kelvin(self, kelvin: f64) -> f64 {
-        match self {
-            Self::Celsius => kelvin - 273.15,
-            Self::Kelvin => kelvin,
-            Self::Fahrenheit => kelvin * 1.8 - 459.67,
-        }
-    }
-
-    /// A temperature in this unit, in kelvin.
-    pub fn to_kelvin(self, value: f64) -> f64 {
-        match self {
-            Self::Celsius => value + 273.15,
-            Self::Kelvin => value,
-            Self::Fahrenheit => (value + 459.67) / 1.8,
-        }
-    }
-
-    /// As written after a number.
-    pub const fn symbol(self) -> &'static str {
-        match self {
-            Self::Celsius => "°C",
-            Self::Kelvin => "K",
-            Self::Fahrenheit => "°F",
-        }
-    }
-}
-
 /// What is evenly spaced along an axis.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Spacing {
@@ -183,13 +142,6 @@ mod tests {
         for value in [0.0, -1.0, f64::NAN, f64::INFINITY] {
             assert_eq!(scale.position(value), None);
         }
-    }
-
-    #[test]
-    fn units_agree_at_the_boiling_point() {
-        assert!((TemperatureUnit::Celsius.from_kelvin(373.15) - 100.0).abs() < 1e-9);
-        assert!((TemperatureUnit::Fahrenheit.from_kelvin(373.15) - 212.0).abs() < 1e-9);
-        assert!((TemperatureUnit::Fahrenheit.to_kelvin(212.0) - 373.15).abs() < 1e-9);
     }
 
     fn spacings() -> impl Strategy<Value = Spacing> {

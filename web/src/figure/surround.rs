@@ -1,9 +1,10 @@
 //! What stands around a plot: titles above it, the key and a title below it.
 
+use kinetics_core::units::TemperatureUnit;
+
 use super::geometry::{Area, Point};
 use super::grounds::Grounds;
 use super::marks::key;
-use super::scale::TemperatureUnit;
 use super::scene::{Anchor, Baseline, FontRole, Layer, Role, Scene, Text};
 use super::text_size::{shortened, text_width};
 

@@ -1,6 +1,8 @@
 //! Which numbers to write along an axis: round ones, and never so many that they touch.
 
-use super::scale::{Scale, TemperatureUnit};
+use kinetics_core::units::TemperatureUnit;
+
+use super::scale::Scale;
 use super::scene::FontRole;
 use super::text_size::text_width;
 
@@ -240,39 +242,6 @@ impl Step {
     }
 }
 
-/// Powers of ten along a logarithmic axis, thinned evenly to keep apart; two and five times
-/// them as well where there would be fewer than three.
-pub fn log_ticks(scale: &Scale, least_distance: f64) -> Vec<Tick> {
-    let (low, high) = scale.extremes();
-    let (first, last) = (magnitude(low), magnitude(high) + 1);
-    let decade = scale.length() / (high / low).log10();
-    let every = (least_distance / decade).ceil().max(1.0) as i32;
-    let power_label = |power: i32| match power {
-        -3..=0 => number(10.0_f64.powi(power), power.unsigned_abs() as usize),
-        1..=4 => number(10.0_f64.powi(power), 0),
-        _ => format!("10{}", superscript(power)),
-    };
-    let mut ticks: Vec<Tick> = (first..=last)
-        .filter(|power| power % every == 0)
-        .map(|power| Tick { value: 10.0_f64.powi(power), label: power_label(power) })
-        .collect();
-    if ticks.iter().filter(|tick| (low..=high).contains(&tick.value)).count() < 3
-        && every == 1
-        && decade * 0.3 >= least_distance
-    {
-        for power in first..=last {
-            for factor in [2.0, 5.0] {
-                let value = factor * 10.0_f64.powi(power);
-                let label = label(value, 10.0_f64.powi(power));
-                ticks.push(Tick { value, label });
-            }
-        }
-    }
-    ticks.retain(|tick| (low..=high).contains(&tick.value));
-    ticks.sort_by(|a, b| a.value.total_cmp(&b.value));
-    ticks
-}
-
 #[cfg(test)]
 mod tests {
     use super::super::scale::Spacing;
@@ -319,15 +288,6 @@ mod tests {
     }
 
     #[test]
-    fn decades_thin_evenly() {
-        let scale = Scale::new(Spacing::Log, (1e-9, 1e9), (300.0, 0.0));
-        let ticks = log_ticks(&scale, 30.0);
-        assert_eq!(labels(&ticks)[..3], ["10⁻⁸", "10⁻⁶", "10⁻⁴"]);
-        let short = Scale::new(Spacing::Log, (1.0, 30.0), (300.0, 0.0));
-        assert_eq!(labels(&log_ticks(&short, 30.0)), ["1", "2", "5", "10", "20"]);
-    }
-
-    #[test]
     fn minus_nothing_is_nothing() {
         assert_eq!(number(-0.001, 1), "0.0");
         assert_eq!(number(-1.0, 1), "−1.0");
@@ -363,9 +323,6 @@ mod tests {
                 upright_ticks(&scale);
                 if spacing == Spacing::ReciprocalTemperature {
                     temperature_ticks(&scale, TemperatureUnit::Celsius);
-                }
-                if spacing == Spacing::Log {
-                    log_ticks(&scale, 30.0);
                 }
             }
         }

@@ -2,12 +2,13 @@
 
 mod drawing;
 
+use kinetics_core::units::TemperatureUnit;
+
 use super::Picture;
 use super::describe;
 use super::geometry::Point;
 use super::grounds::Grounds;
 use super::marks::flags;
-use super::scale::TemperatureUnit;
 use super::scene::Scene;
 use super::surround::temperature_title;
 use super::table::{Cell, Table};

@@ -6,16 +6,14 @@ use kinetics_core::answer::{Answer, Basis};
 use kinetics_core::curve::{CurvePoint, ln_rates, ln_times};
 use kinetics_core::grounds::Grounds as CoreGrounds;
 use kinetics_core::quantity::{Kelvin, Quantity};
-use kinetics_core::question::{BlankKind, Question};
+use kinetics_core::question::{Blank, BlankKind, Question};
 use kinetics_core::study::{Evaluation, Study};
-use kinetics_core::temperature_law::FittedLaw;
-use kinetics_core::units;
+use kinetics_core::temperature_law::{FittedLaw, TemperatureLaw};
 use kinetics_core::wording::{logarithm_of, typed};
 use serde_json::{Map, Value};
 
 use crate::figure::grounds::Grounds;
 use crate::figure::law_picture::{LawFlag, LawPicture, LawPoint, LawSample, RivalCurve};
-use crate::figure::scale::TemperatureUnit;
 use crate::figure::temperature_colour::TemperatureRange;
 use crate::figure::time_map::{
     FlagInterval, MeasuredRegion, TimeFlag, TimeLine, TimeMap, TimeSample, View,
@@ -63,9 +61,20 @@ pub fn law_picture(study: &Study, evaluation: &Evaluation, curve: &Curve) -> Law
     picture.rivals = basis
         .rivals
         .iter()
-        .map(|rival| RivalCurve { name: rival.law.code().replace('-', " "), samples: along(rival) })
+        .map(|rival| RivalCurve { name: short_name(rival.law).to_owned(), samples: along(rival) })
         .collect();
     picture
+}
+
+/// A law's name beside its line.
+const fn short_name(law: TemperatureLaw) -> &'static str {
+    match law {
+        TemperatureLaw::Arrhenius => "Arrhenius",
+        TemperatureLaw::Eyring => "Eyring",
+        TemperatureLaw::ArrheniusWithPower(_) => "power of T",
+        TemperatureLaw::LogLinear => "log-linear",
+        TemperatureLaw::Curved => "bent",
+    }
 }
 
 /// What of the law's picture needs no law.
@@ -90,8 +99,8 @@ fn without_curve(study: &Study, evaluation: &Evaluation) -> LawPicture {
         rate_label: logarithm_of("k", unit),
         points: points.collect(),
         span: basis.map(span),
-        flags: law_flags(study),
-        temperature_unit: temperature_unit(study),
+        flags: law_flags(study, evaluation),
+        temperature_unit: study.display.temperature.unwrap_or_default(),
         ..LawPicture::default()
     }
 }
@@ -134,7 +143,7 @@ fn without_lines(study: &Study, evaluation: &Evaluation, held_view: Option<View>
     TimeMap {
         flags: time_flags(study, evaluation),
         measured: measured.map(|temperatures| MeasuredRegion { temperatures, times: None }),
-        temperature_unit: temperature_unit(study),
+        temperature_unit: study.display.temperature.unwrap_or_default(),
         held_view,
         ..TimeMap::default()
     }
@@ -171,18 +180,21 @@ fn span(basis: &Basis) -> (f64, f64) {
     (coldest.0, hottest.0)
 }
 
-fn law_flags(study: &Study) -> Vec<LawFlag> {
+/// A flag for each temperature that is asked about, or that is the answer.
+fn law_flags(study: &Study, evaluation: &Evaluation) -> Vec<LawFlag> {
     let mut flags = Vec::new();
-    for (at, asked) in study.asked.iter().enumerate() {
+    for (at, (asked, answer)) in study.asked.iter().zip(&evaluation.findings.answers).enumerate() {
         let blanks = Question::of_code(code(asked)).map(|q| q.blanks).unwrap_or_default();
+        let is_found = answer.unit.as_deref() == Some("K");
         let temperatures = blanks
             .iter()
-            .filter(|blank| blank.kind == BlankKind::Temperature)
+            .filter(|blank| !is_found && blank.kind == BlankKind::Temperature)
             .flat_map(|blank| quantities(asked, blank.name))
-            .filter_map(|quantity| quantity.kelvin().ok());
-        flags.extend(temperatures.take(MOST_FLAGS).map(|kelvin| LawFlag {
+            .filter_map(|quantity| Some(quantity.kelvin().ok()?.0));
+        let found = answer.key_number().filter(|_| is_found);
+        flags.extend(temperatures.chain(found).take(MOST_FLAGS).map(|temperature| LawFlag {
             number: at + 1,
-            temperature: kelvin.0,
+            temperature,
             label: String::new(),
         }));
     }
@@ -235,9 +247,9 @@ fn extents(study: &Study, basis: &Basis) -> Vec<(String, f64)> {
     let mut found: Vec<(String, f64)> = Vec::new();
     for asked in &study.asked {
         let blanks = Question::of_code(code(asked)).map(|q| q.blanks).unwrap_or_default();
-        for blank in blanks.iter().filter(|blank| blank.kind == BlankKind::Part) {
+        for blank in blanks.iter().filter(|blank| ["gone", "keep"].contains(&blank.name)) {
             for quantity in quantities(asked, blank.name) {
-                let Some(part) = part(&quantity, basis) else { continue };
+                let Ok(part) = basis.part(&quantity) else { continue };
                 let is_kept = blank.name == "keep";
                 let extent = if is_kept { 1.0 - part } else { part };
                 let word = if is_kept { "left" } else { "gone" };
@@ -252,15 +264,6 @@ fn extents(study: &Study, basis: &Basis) -> Vec<(String, f64)> {
     found
 }
 
-/// A part of the initial amount as a fraction.
-fn part(quantity: &Quantity, basis: &Basis) -> Option<f64> {
-    quantity.fraction().ok().or_else(|| {
-        let (value, kind) = quantity.concentration().ok()?;
-        let initial = basis.initial_concentration.filter(|initial| initial.kind == kind)?;
-        Some(value / initial.value)
-    })
-}
-
 /// What stands in a blank of a question.
 pub fn quantities(asked: &Map<String, Value>, name: &str) -> Vec<Quantity> {
     let read = |value: &Value| serde_json::from_value(value.clone()).ok();
@@ -271,17 +274,18 @@ pub fn quantities(asked: &Map<String, Value>, name: &str) -> Vec<Quantity> {
     }
 }
 
+/// What stands in a blank, as it reads in its sentence; what could not be read, as it was typed.
+pub fn filled(asked: &Map<String, Value>, blank: &Blank, decimal: char) -> String {
+    match asked.get(blank.name) {
+        Some(Value::String(unread)) => unread.clone(),
+        Some(value) => typed(&blank.kind.quantities(value), decimal),
+        None => String::new(),
+    }
+}
+
 /// The code of a question that is asked.
 pub fn code(asked: &Map<String, Value>) -> &str {
     asked.get("question").and_then(Value::as_str).unwrap_or_default()
-}
-
-fn temperature_unit(study: &Study) -> TemperatureUnit {
-    match study.display.temperature {
-        Some(units::TemperatureUnit::Kelvin) => TemperatureUnit::Kelvin,
-        Some(units::TemperatureUnit::Fahrenheit) => TemperatureUnit::Fahrenheit,
-        Some(units::TemperatureUnit::Celsius) | None => TemperatureUnit::Celsius,
-    }
 }
 
 const fn grounds(grounds: CoreGrounds) -> Grounds {
