@@ -22,5 +22,6 @@ mod frames;
 mod handling;
 mod hostile;
 mod links;
+mod record;
 mod starting;
 mod worksheet;

@@ -116,3 +116,31 @@ fn select_on_focus(area: Part) -> Part {
         }
     })
 }
+
+/// "glaze-hardener-batch-7.kelvinclock.json", from a title and an ending.
+pub fn file_name(title: &str, ending: &str) -> String {
+    let words: Vec<String> = title
+        .split(|letter: char| !letter.is_alphanumeric())
+        .filter(|word| !word.is_empty())
+        .map(str::to_lowercase)
+        .take(8)
+        .collect();
+    let name: String = words.join("-").chars().take(60).collect();
+    let name = if name.is_empty() { "study".to_owned() } else { name };
+    format!("{name}.{ending}")
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_file_is_named_after_its_study() {
+        assert_eq!(
+            file_name("Glaze hardener, batch 7 (invented example)", "kelvinclock.json"),
+            "glaze-hardener-batch-7-invented-example.kelvinclock.json"
+        );
+        assert_eq!(file_name("../\u{202e}<b>", "kelvinclock.json"), "b.kelvinclock.json");
+        assert_eq!(file_name("  ", "kelvinclock.json"), "study.kelvinclock.json");
+    }
+}

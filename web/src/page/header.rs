@@ -1,6 +1,6 @@
 //! The head of the page: title, undo, open, save, and where the study is kept.
 
-use super::carry::Carrier;
+use super::carry::{Carrier, file_name};
 use super::file_button::file_button;
 use super::keeping::Keeping;
 use super::link;
@@ -25,7 +25,11 @@ pub fn header(sheet: Sheet, keeping: &Keeping) -> Part {
     let (saver, linker) = (carrier.clone(), carrier.clone());
     let save = move || {
         let study = sheet.study();
-        saver.file(&file_name(&study.title), "application/json", study.to_json());
+        saver.file(
+            &file_name(&study.title, "kelvinclock.json"),
+            "application/json",
+            study.to_json(),
+        );
     };
     let tools = part("nav")
         .with("aria-label", "Study")
@@ -50,32 +54,4 @@ pub fn header(sheet: Sheet, keeping: &Keeping) -> Part {
         .add(tools)
         .add(part("p").class("kept").add(keeping.words()).text(" ").add(said))
         .add(carrier.panel())
-}
-
-/// "glaze-hardener-batch-7.kelvinclock.json".
-fn file_name(title: &str) -> String {
-    let words: Vec<String> = title
-        .split(|letter: char| !letter.is_alphanumeric())
-        .filter(|word| !word.is_empty())
-        .map(str::to_lowercase)
-        .take(8)
-        .collect();
-    let name: String = words.join("-").chars().take(60).collect();
-    let name = if name.is_empty() { "study".to_owned() } else { name };
-    format!("{name}.kelvinclock.json")
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn a_file_is_named_after_its_study() {
-        assert_eq!(
-            file_name("Glaze hardener, batch 7 (invented example)"),
-            "glaze-hardener-batch-7-invented-example.kelvinclock.json"
-        );
-        assert_eq!(file_name("../\u{202e}<b>"), "b.kelvinclock.json");
-        assert_eq!(file_name("  "), "study.kelvinclock.json");
-    }
 }

@@ -10,7 +10,7 @@ use kinetics_core::study::Study;
 use super::example;
 use super::link::MOST_LETTERS;
 use super::live::{State, follow};
-use super::part::{Part, button, part};
+use super::part::{Part, button, on_window, part};
 use super::sheet::Sheet;
 use super::timer::{after, later};
 use crate::keep::fragment::{self, Fragment};
@@ -87,6 +87,8 @@ impl Keeping {
 
     /// Keeps each study a moment after it came about.
     fn follow_changes(&self) {
+        let leaving = self.clone();
+        on_window("pagehide", move || leaving.keep());
         let keeping = self.clone();
         let seen = RefCell::new(self.sheet.study());
         follow(move || {

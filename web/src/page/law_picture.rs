@@ -10,6 +10,7 @@ use super::picture_table::picture_table;
 use super::pictures;
 use super::sheet::Sheet;
 use super::surroundings::Surroundings;
+use super::take_along::{Format, take_along};
 use crate::figure::Picture;
 
 /// The picture with its table.
@@ -19,5 +20,9 @@ pub fn figure(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
     });
     let canvas = part("canvas").class("law");
     canvas::paint(&canvas, sheet, Rc::clone(&drawing), surroundings);
-    part("figure").class("picture").add(canvas).add(picture_table(sheet, drawing))
+    part("figure")
+        .class("picture")
+        .add(canvas)
+        .add(picture_table(sheet, Rc::clone(&drawing)))
+        .add(take_along(sheet, drawing, Format { name: "law", slope: 5.0 / 7.0 }))
 }

@@ -1,12 +1,10 @@
 //! Links that hold a whole study: opening them, following them, making them.
 
 use kinetics_core::study::Study;
-use wasm_bindgen::JsCast;
-use wasm_bindgen::closure::Closure;
 
 use super::carry::Carrier;
 use super::keeping::Keeping;
-use super::live::enter;
+use super::part::on_window;
 use super::sheet::Sheet;
 use super::timer::after;
 use crate::keep::fragment::{self, Fragment};
@@ -28,9 +26,9 @@ pub async fn study(packed: String) -> Result<Study, String> {
 /// Follows the page's address: a new link in it is opened, and undo brings the old study back.
 pub fn listen(sheet: Sheet, keeping: &Keeping) {
     let keeping = keeping.clone();
-    let arrive = Closure::<dyn Fn()>::new(move || {
+    on_window("hashchange", move || {
         let fragment = Fragment::now();
-        enter(|| sheet.appear(fragment.view, fragment.is_locked));
+        sheet.appear(fragment.view, fragment.is_locked);
         let Some(packed) = fragment.packed.clone() else { return };
         let keeping = keeping.clone();
         after(study(packed), move |study| {
@@ -48,11 +46,6 @@ pub fn listen(sheet: Sheet, keeping: &Keeping) {
             }
         });
     });
-    if let Some(window) = web_sys::window() {
-        // Refused only where there are no events at all.
-        let _ = window
-            .add_event_listener_with_callback("hashchange", arrive.into_js_value().unchecked_ref());
-    }
 }
 
 /// Copies a link to the study as it is.

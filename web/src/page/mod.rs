@@ -22,12 +22,14 @@ mod arrivals;
 mod blank;
 mod canvas;
 mod carry;
+mod csv;
 mod file_button;
 mod link;
 mod menu;
 mod picture_table;
 mod pictures;
 mod surroundings;
+mod take_along;
 
 // The sections.
 mod asked;

@@ -33,6 +33,15 @@ pub fn button(words: &str, press: impl Fn() + 'static) -> Part {
     part("button").with("type", "button").text(words).on("click", move |_| press())
 }
 
+/// Does something when an event arrives at the window; then all parts look again.
+pub fn on_window(event: &str, handle: impl Fn() + 'static) {
+    let listener = Closure::<dyn Fn()>::new(move || enter(&handle)).into_js_value();
+    if let Some(window) = web_sys::window() {
+        // Refused only where there are no events at all.
+        let _ = window.add_event_listener_with_callback(event, listener.unchecked_ref());
+    }
+}
+
 /// What stands in the field that an event comes from.
 pub fn value_of(event: &Event) -> String {
     let target = event.target();

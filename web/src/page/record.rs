@@ -1,9 +1,13 @@
 //! Record: the account of the study, to print and to copy.
 
-use super::carry::Carrier;
+use kinetics_core::study::{Evaluation, Study};
+
+use super::carry::{Carrier, file_name};
+use super::csv::{self, csv};
 use super::once::once;
 use super::part::{Part, button, part};
 use super::sheet::Sheet;
+use crate::figure::table::Table;
 use crate::keep::frame;
 
 /// A longer account is shown in part; copying takes the whole.
@@ -37,6 +41,17 @@ pub fn section(sheet: Sheet) -> Part {
             );
         }
     };
+    // Spreadsheets take UTF-8 for something else without this mark.
+    let take = |name: &'static str, table: fn(&Study, &Evaluation) -> Table| {
+        let carrier = carrier.clone();
+        move || {
+            let study = sheet.study();
+            let text = csv(&table(&study, &sheet.evaluation()), sheet.decimal());
+            carrier.file(&file_name(&study.title, name), "text/csv", format!("\u{feff}{text}"));
+        }
+    };
+    let runs = take("runs.csv", |_, evaluation| csv::runs(evaluation));
+    let answers = take("answers.csv", csv::answers);
     part("section")
         .with("aria-labelledby", "record")
         .add(part("h2").with("id", "record").text("Record"))
@@ -46,7 +61,9 @@ pub fn section(sheet: Sheet) -> Part {
                 .class("actions")
                 .add(button("Print", print))
                 .add(button("Copy as text", copy))
-                .add(button("Copy as HTML table", copy_html)),
+                .add(button("Copy as HTML table", copy_html))
+                .add(button("Runs as CSV", runs))
+                .add(button("Answers as CSV", answers)),
         )
         .add(carrier.panel())
 }

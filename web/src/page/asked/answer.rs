@@ -3,22 +3,26 @@
 
 use kinetics_core::answer::Answer;
 use kinetics_core::question::Question;
-use kinetics_core::wording::typed;
 
 use super::super::part::{Part, part};
-use super::super::pictures::quantities;
+use super::super::pictures::{code, filled};
 use super::super::sheet::Sheet;
 
 /// The answer to the question at a place of the list.
 pub fn answer(sheet: Sheet, at: usize) -> Part {
     let now = move || {
         let evaluation = sheet.evaluation();
-        (evaluation.findings.answers.get(at).cloned(), evaluation.basis.is_some(), sheet.decimal())
+        let answer = evaluation.findings.answers.get(at).cloned();
+        (answer, evaluation.basis.is_some(), has_gap(sheet, at), sheet.decimal())
     };
     let content = part("div").with("aria-live", "polite").with("aria-atomic", "true");
-    content.filled(now, |(answer, has_law, decimal)| {
+    content.filled(now, |(answer, has_law, has_gap, decimal)| {
         let Some(answer) = answer else { return Vec::new() };
         match (&answer.refused, &answer.rows) {
+            // What is expected in the blank, its sentence says.
+            (Some(refusal), _) if *has_gap => {
+                vec![part("p").class("refused").text("Not answered. ").text(&refusal.reason)]
+            }
             // Why there is no law, Found says at length.
             (Some(refusal), _) if !has_law => {
                 vec![part("p").class("refused remedy").text(&refusal.reason)]
@@ -27,6 +31,17 @@ pub fn answer(sheet: Sheet, at: usize) -> Part {
             (None, Some(rows)) => vec![table(&answer.question, rows, *decimal)],
             (None, None) => alone(answer),
         }
+    })
+}
+
+/// Whether a blank of the question is empty, or holds what cannot be read.
+fn has_gap(sheet: Sheet, at: usize) -> bool {
+    let study = sheet.study();
+    let Some(asked) = study.asked.get(at) else { return false };
+    let blanks = Question::of_code(code(asked)).map(|question| question.blanks);
+    blanks.unwrap_or_default().iter().any(|blank| match asked.get(blank.name) {
+        Some(filled) => blank.kind.quantities(filled).is_empty(),
+        None => !blank.optional,
     })
 }
 
@@ -51,10 +66,10 @@ fn alone(answer: &Answer) -> Vec<Part> {
 fn grounds(into: Part, answer: &Answer) -> Part {
     let name = answer.grounds.map(|grounds| grounds.name()).unwrap_or_default();
     let standing = answer.wording.standing.as_str();
-    let rival = answer.wording.rival.as_str();
+    let (rival, offset) = (answer.wording.rival.as_str(), answer.wording.offset.as_str());
     // "inside the data" need not be said twice.
     let standing = if standing == "inside your data" { "" } else { standing };
-    let rest: String = [standing, rival]
+    let rest: String = [standing, rival, offset]
         .iter()
         .filter(|part| !part.is_empty())
         .map(|part| format!(" · {part}"))
@@ -70,8 +85,8 @@ fn table(code: &str, rows: &[Answer], decimal: char) -> Part {
         .add(head("answer"));
     let rows = rows.iter().map(|row| {
         let cells = blanks.iter().map(|blank| {
-            let filled = row.blanks.as_ref().map(|b| quantities(b, blank.name));
-            part("td").text(&typed(&filled.unwrap_or_default(), decimal))
+            let words = row.blanks.as_ref().map(|blanks| filled(blanks, blank, decimal));
+            part("td").text(&words.unwrap_or_default())
         });
         let said = match &row.refused {
             Some(_) => part("td").add(refused(row)),

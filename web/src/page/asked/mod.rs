@@ -6,10 +6,11 @@ mod time_map;
 
 use std::time::Duration;
 
-use kinetics_core::question::{Piece, QUESTIONS, Question, example};
+use kinetics_core::question::{QUESTIONS, Question, example};
 use wasm_bindgen::JsCast;
 use web_sys::HtmlElement;
 
+use super::csv::with_blanks;
 use super::live::State;
 use super::menu::{Choice, lines, select_of};
 use super::part::{Part, document, part};
@@ -40,12 +41,20 @@ pub fn section(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
         )
 }
 
+/// The name of the menu's element.
+const ASK_ID: &str = "ask";
+
 /// The menu of all sentences.
 fn ask(sheet: Sheet) -> Part {
     const INVITATION: &str = "+ ask something else";
     let mut choices = vec![Choice::new("", INVITATION)];
-    choices.extend(QUESTIONS.iter().map(|question| Choice::new(question.code, outline(question))));
+    choices.extend(
+        QUESTIONS
+            .iter()
+            .map(|question| Choice::new(question.code, with_blanks(question, |_| "…".to_owned()))),
+    );
     let select = part("select")
+        .with("id", ASK_ID)
         .with("aria-label", "Ask something else")
         .add_all(lines(&choices))
         .on("change", move |event| {
@@ -56,26 +65,15 @@ fn ask(sheet: Sheet) -> Part {
             let at = sheet.study().asked.len();
             sheet.change("", |study| study.asked.push(example(question)));
             if let Some(first) = question.blanks.first() {
-                focus_later(question::blank_id(at, first.name));
+                focus_later(&question::blank_id(at, first.name));
             }
         });
     part("p").class("ask").add(part("span").class("menu").with("data-text", INVITATION).add(select))
 }
 
-/// The sentence with its blanks left open.
-fn outline(question: &Question) -> String {
-    let mut outline = String::new();
-    for piece in question.pieces() {
-        match piece {
-            Piece::Text(text) => outline.push_str(text),
-            Piece::Blank(_) => outline.push('…'),
-        }
-    }
-    outline
-}
-
 /// Puts the focus on an element that is about to be on the page.
-fn focus_later(id: String) {
+pub fn focus_later(id: &str) {
+    let id = id.to_owned();
     later(Duration::ZERO, move || {
         let element = document().and_then(|document| document.get_element_by_id(&id));
         if let Some(element) = element.and_then(|e| e.dyn_into::<HtmlElement>().ok()) {

@@ -1,17 +1,29 @@
 //! One question: its sentence with blanks, its answer, and its place among the others.
 
-use kinetics_core::question::{Blank, Piece, Question, parse_blank};
-use kinetics_core::study::Study;
-use kinetics_core::wording::typed;
+use std::cell::RefCell;
+use std::rc::Rc;
+
+use kinetics_core::answer::whom;
+use kinetics_core::quantity::Quantity;
+use kinetics_core::question::{
+    Blank, BlankKind, Piece, Question, exchange as exchange_questions, parse_blank,
+    remove as remove_question,
+};
+use kinetics_core::temperature_law::Target;
 use serde_json::Value;
 
 use super::super::amount::complaints;
 use super::super::blank::{Complaint, Gap, blank};
+use super::super::live::follow;
+use super::super::menu::{Choice, menu};
 use super::super::part::{Part, button, part};
-use super::super::pictures::quantities;
+use super::super::pictures::filled;
 use super::super::sheet::Sheet;
 use super::answer::answer;
-use super::focus_later;
+use super::{ASK_ID, focus_later};
+
+/// The questions whose answer is a limit, which covers a single batch or the mean of many.
+const ONE_SIDED: [&str; 3] = ["longest-stand", "completion-time", "warmest-storage"];
 
 /// The name of a blank's element.
 pub fn blank_id(at: usize, name: &str) -> String {
@@ -24,9 +36,15 @@ pub fn question(sheet: Sheet, at: usize, code: &str) -> Part {
     let mut all: Vec<Complaint> = Vec::new();
     match Question::of_code(code) {
         Some(question) => {
+            let is_one_sided = ONE_SIDED.contains(&code);
             for piece in question.pieces() {
                 sentence = match piece {
-                    Piece::Text(text) => sentence.text(text),
+                    Piece::Text(text) => match text.strip_suffix('?').filter(|_| is_one_sided) {
+                        Some(text) => {
+                            sentence.text(text).text(", ").add(bound(sheet, at)).text("?")
+                        }
+                        None => sentence.text(text),
+                    },
                     Piece::Blank(blank) => {
                         let complaint = Complaint::new(None);
                         let gap = gap(sheet, at, blank, &complaint);
@@ -50,23 +68,45 @@ pub fn question(sheet: Sheet, at: usize, code: &str) -> Part {
 fn gap(sheet: Sheet, at: usize, gap: &'static Blank, complaint: &Complaint) -> Part {
     let shown = move || {
         let study = sheet.study();
-        let filled = study.asked.get(at).map(|asked| quantities(asked, gap.name));
-        filled.map(|filled| typed(&filled, sheet.decimal())).unwrap_or_default()
+        let asked = study.asked.get(at);
+        asked.map(|asked| filled(asked, gap, sheet.decimal())).unwrap_or_default()
     };
-    let take = move |text: &str| {
-        let quantities = parse_blank(text, gap.kind, sheet.decimal())?;
-        let values: Vec<Value> =
-            quantities.iter().filter_map(|q| serde_json::to_value(q).ok()).collect();
-        let value = match <[Value; 1]>::try_from(values) {
-            Ok([single]) => single,
-            Err(several) => Value::Array(several),
-        };
-        sheet.change(&blank_id(at, gap.name), |study| {
-            if let Some(asked) = study.asked.get_mut(at) {
-                asked.insert(gap.name.to_owned(), value);
+    let unit = Rc::new(RefCell::new(unit_of(&read(gap.example, gap.kind, '.', ""))));
+    let last = Rc::clone(&unit);
+    let told = complaint.clone();
+    follow(move || {
+        let study = sheet.study();
+        let filled = study.asked.get(at).and_then(|asked| asked.get(gap.name));
+        told.set(match filled {
+            Some(Value::String(unread)) => read(unread, gap.kind, sheet.decimal(), "").err(),
+            None if !gap.optional && study.asked.len() > at => {
+                Some(format!("Expected {}.", gap.kind.expected()))
             }
+            _ => None,
         });
-        Ok(())
+        if let Some(quantity) = filled.and_then(|filled| gap.kind.quantities(filled).pop()) {
+            last.replace(quantity.unit);
+        }
+    });
+    let take = move |text: &str| {
+        let mut outcome = Ok(());
+        let value = match read(text, gap.kind, sheet.decimal(), &unit.borrow()) {
+            _ if text.trim().is_empty() => Value::Null,
+            Ok(quantities) => {
+                let values: Vec<Value> = quantities.iter().map(|q| gap.kind.value(q)).collect();
+                match <[Value; 1]>::try_from(values) {
+                    Ok([single]) => single,
+                    Err(several) => Value::Array(several),
+                }
+            }
+            // It stays in the study as it was typed, and the core says that it is no answer.
+            Err(said) => {
+                outcome = Err(said);
+                text.into()
+            }
+        };
+        write(sheet, at, gap.name, &blank_id(at, gap.name), value);
+        outcome
     };
     blank(Gap {
         label: format!("Question {}: {}", at + 1, gap.name.replace('_', " ")),
@@ -75,20 +115,70 @@ fn gap(sheet: Sheet, at: usize, gap: &'static Blank, complaint: &Complaint) -> P
         leave: Box::new(move || sheet.seal()),
         complaint: complaint.clone(),
         id: blank_id(at, gap.name),
-        hint: gap.example,
+        hint: format!("e.g. {}", gap.example),
     })
+}
+
+/// Reads what was typed into a blank. A bare number keeps the unit that stood there, and a small
+/// letter is as good a scale of temperature as a large one.
+fn read(text: &str, kind: BlankKind, decimal: char, unit: &str) -> Result<Vec<Quantity>, String> {
+    let numbers = text.trim_end_matches([' ', ',', ';']);
+    let is_bare = |sign: char| sign.is_ascii_digit() || " .,;+-\u{2212}".contains(sign);
+    if numbers.chars().all(is_bare)
+        && let Ok(read) = parse_blank(&format!("{numbers} {unit}"), kind, decimal)
+    {
+        return Ok(read);
+    }
+    parse_blank(text, kind, decimal).or_else(|said| {
+        if kind != BlankKind::Temperature {
+            return Err(said);
+        }
+        let large = text.to_uppercase().replace('C', "°C").replace("°°", "°");
+        parse_blank(&large, kind, decimal).map_err(|_| said)
+    })
+}
+
+/// The unit of the last of some quantities.
+fn unit_of(read: &Result<Vec<Quantity>, String>) -> String {
+    let last = read.as_ref().ok().and_then(|quantities| quantities.last());
+    last.map(|quantity| quantity.unit.clone()).unwrap_or_default()
+}
+
+/// Puts a value into a question; nothing takes the key out.
+fn write(sheet: Sheet, at: usize, key: &str, step: &str, value: Value) {
+    sheet.change(step, |study| {
+        let Some(asked) = study.asked.get_mut(at) else { return };
+        match value {
+            Value::Null => drop(asked.remove(key)),
+            value => drop(asked.insert(key.to_owned(), value)),
+        }
+    });
+}
+
+/// Whom the bound of a one-sided answer covers.
+fn bound(sheet: Sheet, at: usize) -> Part {
+    const CODES: [(&str, Target); 2] = [("", Target::NextRun), ("mean", Target::Mean)];
+    let offer = move || {
+        let choices = CODES.iter().map(|(code, target)| Choice::new(*code, whom(*target)));
+        let study = sheet.study();
+        let chosen =
+            study.asked.get(at).and_then(|asked| asked.get("bound")).and_then(Value::as_str);
+        let chosen = chosen.filter(|code| *code == "mean").unwrap_or_default();
+        (choices.collect(), chosen.to_owned())
+    };
+    let pick = move |code: &str| {
+        let value = if code.is_empty() { Value::Null } else { code.into() };
+        write(sheet, at, "bound", "", value);
+    };
+    menu(&format!("Question {}: whom the limit covers", at + 1), offer, pick)
 }
 
 /// Moves and removal.
 fn arrange(sheet: Sheet, at: usize) -> Part {
     let number = at + 1;
     let exchange = move |other: usize, id: &str| {
-        sheet.change("", |study: &mut Study| {
-            if at.max(other) < study.asked.len() {
-                study.asked.swap(at, other);
-            }
-        });
-        focus_later(format!("{id}-{other}"));
+        sheet.change("", |study| exchange_questions(&mut study.asked, at, other));
+        focus_later(&format!("{id}-{other}"));
     };
     let up = move || {
         if let Some(above) = at.checked_sub(1) {
@@ -96,12 +186,13 @@ fn arrange(sheet: Sheet, at: usize) -> Part {
         }
     };
     let remove = move || {
-        sheet.change("", |study: &mut Study| {
-            if at < study.asked.len() {
-                study.asked.remove(at);
-            }
-        });
+        sheet.change("", |study| remove_question(&mut study.asked, at));
         sheet.tell(format!("Question {number} is removed. Undo brings it back."));
+        // The question that took its place, or the last one.
+        match sheet.study().asked.len().checked_sub(1) {
+            Some(last) => focus_later(&format!("remove-{}", at.min(last))),
+            None => focus_later(ASK_ID),
+        }
     };
     let named = |words: &str, id: &str, label: String, press: Box<dyn Fn()>| {
         button(words, press).with("id", &format!("{id}-{at}")).with("aria-label", &label)

@@ -18,6 +18,7 @@ use super::super::picture_table::picture_table;
 use super::super::pictures::{self, code, quantities};
 use super::super::sheet::Sheet;
 use super::super::surroundings::Surroundings;
+use super::super::take_along::{Format, take_along};
 use crate::figure::Picture;
 use crate::figure::time_map::{Place, TimeMap, View};
 
@@ -80,7 +81,12 @@ pub fn figure(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
     let caption = part("figcaption")
         .add(part("span").class("changes").text("Drag a flag, or type into its blank. "))
         .text("Line: solid inside the data, dashed near, dotted far, hatched beyond.");
-    part("figure").class("picture").add(canvas).add(caption).add(picture_table(sheet, drawing))
+    part("figure")
+        .class("picture")
+        .add(canvas)
+        .add(caption)
+        .add(picture_table(sheet, Rc::clone(&drawing)))
+        .add(take_along(sheet, drawing, Format { name: "time-map", slope: 7.0 / 8.0 }))
 }
 
 /// The map of the study and its findings, held still while a flag is dragged.

@@ -2,7 +2,7 @@
 //! table, as menus in a sentence.
 
 use kinetics_core::rate_law::Order;
-use kinetics_core::study::OrderChoice;
+use kinetics_core::study::{HeatData, OrderChoice};
 use kinetics_core::table::{Decimal, ErrorKind, Form, Role};
 use kinetics_core::wording::typed_number;
 use serde::Serialize;
@@ -51,6 +51,21 @@ const EXTENT: Amount = Amount {
     check: |quantity| quantity.concentration().map(drop),
 };
 
+const HEAT: Amount = Amount {
+    name: "Heat of reaction",
+    id: "heat-of-reaction",
+    hint: "180 kJ/kg",
+    get: |study| study.heat.as_ref()?.heat_of_reaction.clone().map(without_sd),
+    set: |study, stated| {
+        let heat = study.heat.get_or_insert_default();
+        heat.heat_of_reaction = stated.map(quantity);
+        if *heat == HeatData::default() {
+            study.heat = None;
+        }
+    },
+    check: |quantity| quantity.joules_per_kilogram().map(drop),
+};
+
 /// The sentence.
 pub fn reading(sheet: Sheet) -> Part {
     let has_errors = move || {
@@ -62,8 +77,9 @@ pub fn reading(sheet: Sheet) -> Part {
             || sheet.study().measured.initial_concentration.is_some()
     };
     let are_times = move || sheet.study().measured.form == Form::Times;
-    let [start, extent] = std::array::from_fn(|_| Complaint::new(None));
-    let told = complaints(&[&start, &extent]);
+    let are_heats = move || sheet.study().measured.form == Form::HeatRates;
+    let [start, extent, heat] = std::array::from_fn(|_| Complaint::new(None));
+    let told = complaints(&[&start, &extent, &heat]);
     part("p")
         .class("reading")
         .text("Read as ")
@@ -71,6 +87,10 @@ pub fn reading(sheet: Sheet) -> Part {
         .when(are_times, move || {
             let extent = amount(sheet, EXTENT, &extent);
             part("span").text(", each until ").add(extent).text(" is gone,")
+        })
+        .when(are_heats, move || {
+            let heat = amount(sheet, HEAT, &heat);
+            part("span").text(", the whole heat being ").add(heat).text(",")
         })
         .text(" with a decimal ")
         .add(decimal(sheet))
