@@ -3,7 +3,10 @@
 //! opened gives the same findings.
 
 use checks::found;
+use kinetics_core::quantity::Seconds;
 use kinetics_core::study::{Findings, Study, evaluate};
+use kinetics_core::units::TimeUnit;
+use kinetics_core::wording::{Display, Figures, Rounding, duration_bound};
 use proptest::prelude::*;
 use serde_json::{Value, json};
 
@@ -173,6 +176,79 @@ proptest! {
         prop_assert!(!printed.contains("NaN"));
         if let Ok(study) = Study::from_json(&text) {
             evaluate(&study);
+        }
+    }
+}
+
+/// A number, its limits and the unit of the last place of each as printed.
+fn printed(number: &str) -> (f64, i32) {
+    let number = number.replace('\u{2212}', "-");
+    let (mantissa, power) = match number.split_once("\u{a0}×\u{a0}10") {
+        Some((mantissa, raised)) => {
+            let digits = raised.chars().map(|c| match c {
+                '⁻' => '-',
+                '¹' => '1',
+                '²' => '2',
+                '³' => '3',
+                other => char::from_digit(other as u32 - 0x2070, 10).unwrap(),
+            });
+            (mantissa.to_owned(), digits.collect::<String>().parse::<i32>().unwrap())
+        }
+        None => (number.clone(), 0),
+    };
+    let decimals = mantissa.split_once('.').map_or(0, |(_, decimals)| decimals.len() as i32);
+    (format!("{mantissa}e{power}").parse().unwrap(), power - decimals)
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(4000))]
+
+    /// Estimate and limits stand at one decimal place, whatever powers of ten lie between them,
+    /// unless they differ by factors; none is further from its number than half a unit of that
+    /// place, and that unit is no more than the half-width's leading digit.
+    #[test]
+    fn a_triple_is_printed_to_one_place(
+        ln_value in -20.0..20.0_f64,
+        below in 0.001..3.0_f64,
+        above in 0.001..3.0_f64,
+    ) {
+        let value = ln_value.exp();
+        let (low, high) = (value * (-below).exp(), value * above.exp());
+        let figures = Figures::supported(value, Some((low, high)));
+        let (low_text, high_text) = figures.limits(low, high, '.');
+        let texts = [figures.number(value, '.'), low_text, high_text];
+        let [(shown, place), (least, least_place), (most, most_place)] =
+            [0, 1, 2].map(|i| printed(&texts[i]));
+        prop_assert!(least <= shown && shown <= most, "{texts:?}");
+        let half_width = 0.5 * (high - low);
+        for ((found, place), exact) in
+            [(shown, place), (least, least_place), (most, most_place)].into_iter().zip([value, low, high])
+        {
+            // Zeros before the decimal sign may stand for nothing: 230 from 226.
+            let unit = 10f64.powi(place.max((half_width.log10().floor()) as i32));
+            prop_assert!((found - exact).abs() <= 0.500_001 * unit, "{texts:?} {exact}");
+        }
+        if high / low < 3.0 {
+            prop_assert!(place == least_place && place == most_place, "{texts:?}");
+        }
+    }
+
+    /// A bound is printed on the side on which it holds, its best guess to the same place.
+    #[test]
+    fn a_bound_is_printed_where_it_holds(ln_bound in -3.0..25.0_f64, apart in 0.001..2.0_f64) {
+        let hours = Display { time: Some(TimeUnit::Hour), ..Display::default() };
+        let (bound, best) = (ln_bound.exp(), (ln_bound + apart).exp());
+        let number = |text: &str| printed(text.strip_suffix("\u{a0}h").unwrap());
+        let say = |limit: f64, best: f64, rounding| {
+            let (limit, best) = duration_bound(Seconds(limit), Seconds(best), rounding, &hours);
+            (number(&limit), number(&best))
+        };
+        let (least, _) = say(bound, best, Rounding::Down);
+        prop_assert!(least.0 > 0.0 && least.0 <= bound / 3600.0 * (1.0 + 1e-9));
+        let (most, guess) = say(best, bound, Rounding::Up);
+        prop_assert!(most.0 >= best / 3600.0 * (1.0 - 1e-9));
+        if best / bound < 1.4 {
+            prop_assert_eq!(most.1, guess.1);
         }
     }
 }

@@ -97,6 +97,11 @@ impl Support {
         }
     }
 
+    /// Whether it is a stated rate, not runs, that answers stand on.
+    pub fn is_known_law(&self) -> bool {
+        self.known_law
+    }
+
     /// The grounds of an answer at one temperature.
     pub fn grounds(&self, temperature: Kelvin) -> Grounds {
         let kelvins = self.distance_kelvin(temperature).abs();

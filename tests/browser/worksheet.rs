@@ -1,6 +1,5 @@
 //! The worksheet as a chemist uses it: paste, read, correct, ask, save, open.
 
-use kinetics_core::quantity::JoulesPerMole;
 use kinetics_core::study::{Study, evaluate};
 use kinetics_core::wording::{self, Display};
 use serde_json::{Value, json};
@@ -22,8 +21,12 @@ pub fn energy_of(text: &str) -> String {
     let mut study = Study::new();
     study.measured.text = text.to_owned();
     let energy = evaluate(&study).law.unwrap().activation_energy;
-    let range = energy.low.zip(energy.high);
-    wording::energy(JoulesPerMole(energy.value), range, &Display::default()).value
+    let energy = wording::Number {
+        value: energy.value,
+        range: energy.low.zip(energy.high),
+        origin: wording::Origin::Fitted,
+    };
+    wording::energy(energy, &Display::default()).value
 }
 
 /// The headline of an answer, likewise.

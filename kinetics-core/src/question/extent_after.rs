@@ -2,7 +2,7 @@
 
 use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
-use crate::wording::{Figures, significant};
+use crate::wording::Figures;
 
 pub(super) const QUESTION: Question = Question {
     code: "extent-after",
@@ -33,20 +33,14 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
     };
     let (range, prediction) = (mapped(rate.mean)?, mapped(rate.next_run)?);
     let decimal = basis.display.decimal;
-    let percent = |part: f64, figures: Figures| {
-        // Close to all of it, what counts is what is left: 99.97 %, not 100 %.
-        if part > 0.9 && part < 1.0 {
-            let figures = 2 - libm::floor(libm::log10(1.0 - part)) as usize;
-            significant(100.0 * part, figures.min(8), decimal)
-        } else {
-            figures.number(100.0 * part, decimal)
-        }
-    };
-    let figures = Figures::supported(gone, range);
-    let limits = range.map(|(low, high)| (percent(low, figures), percent(high, figures)));
+    let in_percent = range.map(|(low, high)| (100.0 * low, 100.0 * high));
+    let figures = Figures::supported(100.0 * gone, in_percent);
+    let largest = in_percent.map_or(100.0 * gone, |(_, high)| high);
+    let percent = |value: f64| figures.percent(value, largest, decimal);
+    let limits = in_percent.map(|(low, high)| (percent(low), percent(high)));
     let (grounds, standing) = basis.standing(&[temperature]);
     let wording = Wording {
-        headline: format!("{}\u{a0}% is gone", percent(gone, figures)),
+        headline: format!("{}\u{a0}% is gone", percent(100.0 * gone)),
         scatter: basis.scatter_words(limits),
         standing,
         ..Wording::default()

@@ -36,8 +36,8 @@ pub struct Question {
     pub blanks: &'static [Blank],
     /// Works out the answer from filled blanks.
     pub answer: fn(&Blanks, &Basis) -> Result<Answer, Refusal>,
-    /// Two of its numbers as a range in words: "32 to 67 h".
-    pub range: fn(f64, f64, &Basis) -> String,
+    /// Two of its numbers as a range in words, beside its answer: "32 to 67 h".
+    pub range: fn([f64; 2], f64, &Basis) -> String,
     /// What a further measurement would narrow for it.
     pub aim: fn(&Blanks, &Basis) -> Result<Aim, Refusal>,
 }
@@ -167,16 +167,17 @@ fn answer_one(question: &Question, blanks: &Blanks, basis: &Basis) -> Result<Ans
         answer.sentence = sentence(&answer.wording, Side::Two);
         return Ok(answer);
     }
+    let own = answer.key_number().unwrap_or(f64::NAN);
     if let Some((low, high)) = under(question, blanks, basis, &basis.rivals) {
         (answer.rival_low, answer.rival_high) = (Some(low), Some(high));
         answer.wording.rival =
-            format!("if another law holds: {}", (question.range)(low, high, basis));
+            format!("if another law holds: {}", (question.range)([low, high], own, basis));
     }
     if let Some((low, high)) = under(question, blanks, basis, &basis.shifted) {
         answer = answer.with_detail("offset_low", Some(low)).with_detail("offset_high", Some(high));
         answer.wording.offset = format!(
             "if the thermometer is off by as much as stated: {}",
-            (question.range)(low, high, basis)
+            (question.range)([low, high], own, basis)
         );
     }
     answer.sentence = sentence(&answer.wording, answer.side.unwrap_or(Side::Two));

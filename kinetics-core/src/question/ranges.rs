@@ -2,11 +2,10 @@
 
 use crate::answer::Basis;
 use crate::quantity::{Kelvin, Seconds};
-use crate::wording::{Figures, Rounding, duration, significant};
+use crate::wording::{Figures, Rounding, duration_range};
 
-/// Both ends printed by `show`; one where they read the same, and a unit that both share once.
-fn joined(low: f64, high: f64, show: impl Fn(f64) -> String) -> String {
-    let (low, high) = (show(low), show(high));
+/// Both ends; one where they read the same, and a unit that both share once.
+fn joined([low, high]: [String; 2]) -> String {
     if low == high {
         return format!("about {low}");
     }
@@ -16,33 +15,40 @@ fn joined(low: f64, high: f64, show: impl Fn(f64) -> String) -> String {
     }
 }
 
-/// Times in s.
-pub(super) fn time(low: f64, high: f64, basis: &Basis) -> String {
-    joined(low, high, |t| duration(Seconds(t), Figures::exactly(2), &basis.display))
+/// Times in s, in the unit of the answer beside them.
+pub(super) fn time([low, high]: [f64; 2], answer: f64, basis: &Basis) -> String {
+    joined(duration_range(Seconds(low), Seconds(high), Seconds(answer), &basis.display))
 }
 
 /// Numbers without unit.
-pub(super) fn ratio(low: f64, high: f64, basis: &Basis) -> String {
-    joined(low, high, |value| significant(value, 2, basis.display.decimal))
+pub(super) fn ratio(range: [f64; 2], _answer: f64, basis: &Basis) -> String {
+    joined(numbers(range, basis))
 }
 
 /// Fractions, in %.
-pub(super) fn percent(low: f64, high: f64, basis: &Basis) -> String {
-    let percent = |value: f64| significant(100.0 * value, 2, basis.display.decimal);
-    format!("{}\u{a0}%", joined(low, high, percent))
+pub(super) fn percent(range: [f64; 2], _answer: f64, basis: &Basis) -> String {
+    let range = range.map(|fraction| 100.0 * fraction);
+    let figures = Figures::compared(range[0], range[1]);
+    let shown = range.map(|value| figures.percent(value, range[1], basis.display.decimal));
+    format!("{}\u{a0}%", joined(shown))
 }
 
 /// Rate constants in the base unit, in the unit of the data.
-pub(super) fn rate(low: f64, high: f64, basis: &Basis) -> String {
+pub(super) fn rate(range: [f64; 2], _answer: f64, basis: &Basis) -> String {
     let scale = basis.shown_unit.map_or(1.0, |unit| 1.0 / unit.to_base());
     let unit = basis.shown_unit.map(|u| format!("\u{a0}{}", u.symbol())).unwrap_or_default();
-    let show = |value: f64| significant(value * scale, 2, basis.display.decimal);
-    format!("{}{unit}", joined(low, high, show))
+    format!("{}{unit}", joined(numbers(range.map(|value| value * scale), basis)))
 }
 
 /// Temperatures in K, on the scale of the display.
-pub(super) fn temperature(low: f64, high: f64, basis: &Basis) -> String {
-    joined(low, high, |t| basis.display.temperature_rounded(Kelvin(t), 0, Rounding::Nearest))
+pub(super) fn temperature(range: [f64; 2], _answer: f64, basis: &Basis) -> String {
+    let shown = |t| basis.display.temperature_rounded(Kelvin(t), 0, Rounding::Nearest);
+    joined(range.map(shown))
+}
+
+fn numbers(range: [f64; 2], basis: &Basis) -> [String; 2] {
+    let figures = Figures::compared(range[0], range[1]);
+    range.map(|value| figures.number(value, basis.display.decimal))
 }
 
 #[cfg(test)]
@@ -51,10 +57,10 @@ mod tests {
 
     #[test]
     fn a_shared_unit_is_said_once() {
-        let show = |v: f64| format!("{v}\u{a0}{}", if v < 60.0 { "h" } else { "days" });
-        assert_eq!(joined(28.0, 44.0, show), "28 to 44\u{a0}h");
-        assert_eq!(joined(28.0, 90.0, show), "28\u{a0}h to 90\u{a0}days");
-        assert_eq!(joined(28.0, 28.0, show), "about 28\u{a0}h");
-        assert_eq!(joined(1.0, 2.0, |v| v.to_string()), "1 to 2");
+        let said = |low: &str, high: &str| joined([low, high].map(String::from));
+        assert_eq!(said("28\u{a0}h", "44\u{a0}h"), "28 to 44\u{a0}h");
+        assert_eq!(said("28\u{a0}h", "90\u{a0}days"), "28\u{a0}h to 90\u{a0}days");
+        assert_eq!(said("28\u{a0}h", "28\u{a0}h"), "about 28\u{a0}h");
+        assert_eq!(said("1", "2"), "1 to 2");
     }
 }

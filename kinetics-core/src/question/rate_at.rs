@@ -4,7 +4,7 @@ use super::{Blank, BlankKind, Blanks, Question, aims, ranges};
 use crate::answer::{Answer, Basis, Refusal, Side, WhyNoInterval, Wording, sentence};
 use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::quantity::{Kelvin, Seconds};
-use crate::wording::{Figures, duration};
+use crate::wording::{Figures, Origin, duration, duration_with_range};
 
 pub(super) const QUESTION: Question = Question {
     code: "rate-at",
@@ -37,13 +37,21 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
     let unit = basis.shown_unit.map(|u| format!("\u{a0}{}", u.symbol())).unwrap_or_default();
     let decimal = basis.display.decimal;
     let shown_range = rate.mean.map(|(low, high)| (low * scale, high * scale));
-    let figures = Figures::supported(rate.value * scale, shown_range);
-    let limits =
-        shown_range.map(|(low, high)| figures.limits(rate.value * scale, low, high, decimal));
+    // At its own temperature a stated rate constant is no estimate.
+    let stated = basis.support.is_known_law() && temperature == basis.law.reference;
+    let origin = if stated { Origin::Stated } else { Origin::Fitted };
+    let figures = Figures::of(origin, rate.value * scale, shown_range);
+    let limits = shown_range.map(|(low, high)| figures.limits(low, high, decimal));
     let (grounds, mut standing) = basis.standing(&[temperature]);
     if let Some(seconds) = half_life {
-        let supported = Figures::supported(rate.value, rate.mean);
-        let half_life = duration(Seconds(seconds), supported, &basis.display);
+        let theta = seconds * rate.value;
+        let half_life = match rate.mean {
+            Some((low, high)) => {
+                let range = (theta / high, theta / low);
+                duration_with_range(Seconds(seconds), range, &basis.display).0
+            }
+            None => duration(Seconds(seconds), Figures::exactly(2), &basis.display),
+        };
         standing = format!("half gone after {half_life}; {standing}");
     }
     let wording = Wording {

@@ -24,7 +24,7 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
     let doubling = libm::exp2((to.0 - from.0) / 10.0);
     let decimal = basis.display.decimal;
     let figures = Figures::supported(ratio.value, ratio.mean);
-    let limits = ratio.mean.map(|(low, high)| figures.limits(ratio.value, low, high, decimal));
+    let limits = ratio.mean.map(|(low, high)| figures.limits(low, high, decimal));
     let (grounds, standing) = basis.standing(&[to, from]);
     let wording = Wording {
         headline: format!("{} times", figures.number(ratio.value, decimal)),

@@ -23,20 +23,18 @@ pub(super) fn weighting(evidence: &Evidence) -> Option<Remark> {
         return None;
     }
     let unit = basis.display.energy;
-    let shown = |energy: f64, error: f64| {
-        let energy = unit.from_joules_per_mole(energy);
-        let error = unit.from_joules_per_mole(error);
-        let figures = Figures::supported(energy, Some((energy - error, energy + error)));
-        figures.number(energy, basis.display.decimal)
-    };
+    let [logarithms, rates, error] =
+        [on_logarithms, on_rates, error].map(|energy| unit.from_joules_per_mole(energy));
+    let figures = Figures::supported(logarithms, Some((logarithms - error, logarithms + error)));
+    let shown = |energy: f64| figures.number(energy, basis.display.decimal);
     Some(Remark::new(
         "weighting",
         Severity::Note,
         format!(
             "The activation energy depends on how runs are weighed: {} if each k is equally good \
              in per cent, as taken here, {} {unit} if each is equally good in its unit.",
-            shown(on_logarithms, error),
-            shown(on_rates, error)
+            shown(logarithms),
+            shown(rates)
         ),
         "State the error of each rate constant: then the weights are known.",
     ))

@@ -4,9 +4,11 @@ mod number;
 mod quantity;
 mod time;
 
-pub use number::{Figures, Rounding, fixed, significant};
-pub use quantity::{Shown, bare, energy, entropy, factor, logarithm_of, rate, typed, typed_number};
-pub use time::{duration, duration_bound, duration_with_range};
+pub use number::{Figures, Origin, Rounding, fixed, significant};
+pub use quantity::{
+    Number, Shown, bare, energy, entropy, factor, logarithm_of, rate, typed, typed_number,
+};
+pub use time::{duration, duration_bound, duration_range, duration_with_range};
 
 use crate::quantity::Kelvin;
 use crate::units::{EnergyUnit, TemperatureUnit, TimeUnit};
@@ -43,12 +45,12 @@ impl Display {
     }
 
     /// Decimals of a temperature known to `half_width_kelvin`: down to that width's leading
-    /// digit, two at most.
+    /// digit, one further where it is 1, two at most.
     pub fn temperature_decimals(half_width_kelvin: f64) -> usize {
         if !(half_width_kelvin > 0.0) {
             return 1;
         }
-        (-libm::floor(libm::log10(half_width_kelvin))).clamp(0.0, 2.0) as usize
+        (-number::meant_place(half_width_kelvin)).clamp(0, 2) as usize
     }
 
     /// A temperature with its unit, rounded to the side on which a bound still holds.

@@ -2,8 +2,8 @@
 //! one would type them.
 
 use super::Display;
-use super::number::Figures;
-use crate::quantity::{JoulesPerMole, Quantity};
+use super::number::{Figures, Origin};
+use crate::quantity::Quantity;
 use crate::units::RateUnit;
 
 /// A number with its unit, and the limits of its interval without.
@@ -15,46 +15,52 @@ pub struct Shown {
     pub limits: Option<(String, String)>,
 }
 
-impl Shown {
-    /// `value` and `range` times `scale`, rounded to what the interval supports.
-    fn new(value: f64, range: Option<(f64, f64)>, scale: f64, unit: &str, decimal: char) -> Self {
-        let value = value * scale;
-        let range = range.map(|(low, high)| (low * scale, high * scale));
-        let figures = Figures::supported(value, range);
+/// What is to be shown: a number, the limits of its interval, and whose it is.
+#[derive(Debug, Clone, Copy)]
+pub struct Number {
+    /// Best estimate.
+    pub value: f64,
+    /// Limits, where there is an interval.
+    pub range: Option<(f64, f64)>,
+    /// Worked out, or stated.
+    pub origin: Origin,
+}
+
+impl Number {
+    /// In a unit of which `scale` is the inverse size, rounded to what the interval supports.
+    fn shown(self, scale: f64, unit: &str, decimal: char) -> Shown {
+        let value = self.value * scale;
+        let range = self.range.map(|(low, high)| (low * scale, high * scale));
+        let figures = Figures::of(self.origin, value, range);
         let space = if unit.is_empty() { "" } else { "\u{a0}" };
-        Self {
+        Shown {
             value: format!("{}{space}{unit}", figures.number(value, decimal)),
-            limits: range.map(|(low, high)| figures.limits(value, low, high, decimal)),
+            limits: range.map(|(low, high)| figures.limits(low, high, decimal)),
         }
     }
 }
 
 /// A number without a unit.
-pub fn bare(value: f64, range: Option<(f64, f64)>, display: &Display) -> Shown {
-    Shown::new(value, range, 1.0, "", display.decimal)
+pub fn bare(number: Number, display: &Display) -> Shown {
+    number.shown(1.0, "", display.decimal)
 }
 
-/// A molar energy with its limits in J/mol: "90 kJ/mol".
-pub fn energy(energy: JoulesPerMole, range: Option<(f64, f64)>, display: &Display) -> Shown {
+/// A molar energy in J/mol: "90 kJ/mol".
+pub fn energy(joules_per_mole: Number, display: &Display) -> Shown {
     let scale = 1.0 / display.energy.joules_per_mole();
-    Shown::new(energy.0, range, scale, display.energy.symbol(), display.decimal)
+    joules_per_mole.shown(scale, display.energy.symbol(), display.decimal)
 }
 
 /// A molar entropy in J/(mol K).
-pub fn entropy(joules_per_mole_kelvin: f64, range: Option<(f64, f64)>, display: &Display) -> Shown {
-    Shown::new(joules_per_mole_kelvin, range, 1.0, "J/(mol\u{a0}K)", display.decimal)
+pub fn entropy(joules_per_mole_kelvin: Number, display: &Display) -> Shown {
+    joules_per_mole_kelvin.shown(1.0, "J/(mol\u{a0}K)", display.decimal)
 }
 
 /// A rate constant given in the base unit, in the unit that the data have: "0.068 h⁻¹".
-pub fn rate(
-    rate_in_base: f64,
-    range: Option<(f64, f64)>,
-    unit: Option<RateUnit>,
-    display: &Display,
-) -> Shown {
+pub fn rate(rate_in_base: Number, unit: Option<RateUnit>, display: &Display) -> Shown {
     let scale = unit.map_or(1.0, |unit| 1.0 / unit.to_base());
     let symbol = unit.map(RateUnit::symbol).unwrap_or_default();
-    Shown::new(rate_in_base, range, scale, &symbol, display.decimal)
+    rate_in_base.shown(scale, &symbol, display.decimal)
 }
 
 /// What stands at an axis of logarithms: "ln (k · h)", "ln (k / L mol⁻¹ s⁻¹)".
@@ -120,19 +126,44 @@ mod tests {
     use super::*;
     use crate::units::EnergyUnit;
 
+    fn fitted(value: f64, range: Option<(f64, f64)>) -> Number {
+        Number { value, range, origin: Origin::Fitted }
+    }
+
     #[test]
     fn units_of_the_study_are_used() {
         let display = Display::default();
-        let found = energy(JoulesPerMole(90_412.0), Some((85_110.0, 94_790.0)), &display);
+        let found = energy(fitted(90_412.0, Some((85_110.0, 94_790.0))), &display);
         assert_eq!(found.value, "90\u{a0}kJ/mol");
         assert_eq!(found.limits.unwrap(), ("85".into(), "95".into()));
         let calories = Display { energy: EnergyUnit::KilocaloriePerMole, ..display };
-        assert_eq!(energy(JoulesPerMole(41_840.0), None, &calories).value, "10\u{a0}kcal/mol");
+        assert_eq!(energy(fitted(41_840.0, None), &calories).value, "10\u{a0}kcal/mol");
         let hours = RateUnit::parse("1/h").unwrap();
         let range = Some((65e-3 / 3600.0, 71e-3 / 3600.0));
-        let found = rate(68e-3 / 3600.0, range, Some(hours), &display);
+        let found = rate(fitted(68e-3 / 3600.0, range), Some(hours), &display);
         assert_eq!(found.value, "0.068\u{a0}h⁻¹");
         assert_eq!(found.limits.unwrap(), ("0.065".into(), "0.071".into()));
+    }
+
+    #[test]
+    fn what_was_stated_is_repeated_as_stated() {
+        let display = Display::default();
+        let stated =
+            |value: f64, range| energy(Number { value, range, origin: Origin::Stated }, &display);
+        assert_eq!(stated(105_000.0, None).value, "105\u{a0}kJ/mol");
+        assert_eq!(stated(105.25 * 1000.0, None).value, "105.25\u{a0}kJ/mol");
+        assert_eq!(stated(25.0 * 4184.0, None).value, "104.6\u{a0}kJ/mol");
+        assert_eq!(stated(25.1 * 4184.0 + 0.01, None).value, "105.0\u{a0}kJ/mol");
+        let with_limits = stated(105_000.0, Some((99_120.0, 110_880.0)));
+        assert_eq!(with_limits.value, "105\u{a0}kJ/mol");
+        assert_eq!(with_limits.limits.unwrap(), ("99".into(), "111".into()));
+        let hours = RateUnit::parse("1/h").unwrap();
+        let k = Number {
+            value: libm::exp(libm::log(0.0021 / 3600.0)),
+            range: None,
+            origin: Origin::Stated,
+        };
+        assert_eq!(rate(k, Some(hours), &display).value, "0.0021\u{a0}h⁻¹");
     }
 
     #[test]

@@ -1,7 +1,7 @@
 //! Times in the unit that reads best.
 
 use super::Display;
-use super::number::{Figures, Rounding, significant};
+use super::number::{Figures, Rounding};
 use crate::quantity::Seconds;
 use crate::units::TimeUnit;
 
@@ -39,8 +39,17 @@ pub fn duration(time: Seconds, figures: Figures, display: &Display) -> String {
     with_unit(&figures.number(unit.from_seconds(time.0), display.decimal), unit)
 }
 
-/// A bound on a time, rounded to the side on which it still holds, and the best guess beside it:
-/// ("2.7 h", "3.1 h").
+/// Times this many times apart are not said in one unit.
+const OF_ANOTHER_SIZE: f64 = 50.0;
+
+/// Whether two times read well in one unit.
+fn share(unit: TimeUnit, short_seconds: f64, long_seconds: f64) -> bool {
+    let (short, long) = (unit.from_seconds(short_seconds), unit.from_seconds(long_seconds));
+    short >= 0.1 && long < OF_ANOTHER_SIZE * short
+}
+
+/// A bound on a time, rounded to the side on which it still holds, and the best guess beside it
+/// to the same place: ("2.7 h", "3.1 h").
 pub fn duration_bound(
     limit: Seconds,
     best: Seconds,
@@ -50,8 +59,13 @@ pub fn duration_bound(
     let unit = best_unit(limit.0, display);
     let (bound, guess) = (unit.from_seconds(limit.0), unit.from_seconds(best.0));
     let figures = Figures::supported(bound, Some((bound, 2.0 * guess - bound)));
-    let bound = figures.number(figures.rounded(bound, rounding), display.decimal);
-    (with_unit(&bound, unit), duration(best, figures, display))
+    let shown = figures.number(figures.rounded(bound, rounding), display.decimal);
+    let best = if share(unit, limit.0.min(best.0), limit.0.max(best.0)) {
+        with_unit(&figures.number(guess, display.decimal), unit)
+    } else {
+        duration(best, Figures::exactly(2), display)
+    };
+    (with_unit(&shown, unit), best)
 }
 
 /// A time and its limits: ("6.5 years", "3.2", "13") in one unit where they are of one size,
@@ -66,15 +80,29 @@ pub fn duration_with_range(
     let (low, high) = (unit.from_seconds(range.0), unit.from_seconds(range.1));
     let figures = Figures::supported(value, Some((low, high)));
     let number = with_unit(&figures.number(value, display.decimal), unit);
-    if low > 0.0 && high / low < 50.0 && low >= 0.1 {
-        let (low, high) = figures.limits(value, low, high, display.decimal);
+    if share(unit, range.0, range.1) {
+        let (low, high) = figures.limits(low, high, display.decimal);
         return (number, low, high);
     }
-    let alone = |limit: f64| {
-        let unit = best_unit(limit, display);
-        with_unit(&significant(unit.from_seconds(limit), 2, display.decimal), unit)
-    };
+    let alone = |limit: f64| duration(Seconds(limit), Figures::exactly(2), display);
     (number, alone(range.0), alone(range.1))
+}
+
+/// Two times that are compared with a third, in its unit where all are of one size: ("62 h",
+/// "82 h").
+pub fn duration_range(
+    low: Seconds,
+    high: Seconds,
+    like: Seconds,
+    display: &Display,
+) -> [String; 2] {
+    let unit = best_unit(like.0, display);
+    if !share(unit, low.0.min(like.0), high.0.max(like.0)) {
+        return [low, high].map(|time| duration(time, Figures::exactly(2), display));
+    }
+    let [low, high] = [low, high].map(|time| unit.from_seconds(time.0));
+    let figures = Figures::compared(low, high);
+    [low, high].map(|time| with_unit(&figures.number(time, display.decimal), unit))
 }
 
 #[cfg(test)]
@@ -105,6 +133,11 @@ mod tests {
         assert_eq!((&least.0[..], &least.1[..]), ("2.7\u{a0}h", "3.1\u{a0}h"));
         let most = duration_bound(hours(36.12), hours(34.3), Rounding::Up, &display);
         assert_eq!((&most.0[..], &most.1[..]), ("36.2\u{a0}h", "34.3\u{a0}h"));
+        // One place and one unit for both, across a power of ten and a step of the ladder.
+        let most = duration_bound(hours(105.2), hours(94.4), Rounding::Up, &display);
+        assert_eq!((&most.0[..], &most.1[..]), ("4.4\u{a0}days", "3.9\u{a0}days"));
+        let least = duration_bound(hours(62.4), hours(81.6), Rounding::Down, &display);
+        assert_eq!((&least.0[..], &least.1[..]), ("62\u{a0}h", "82\u{a0}h"));
     }
 
     #[test]
@@ -116,5 +149,9 @@ mod tests {
         let (_, low, high) =
             duration_with_range(Seconds(9.0 * 86_400.0), (2400.0, 200.0 * YEAR), &display);
         assert_eq!((&low[..], &high[..]), ("40\u{a0}min", "200\u{a0}years"));
+        let hour = |h: f64| Seconds(3600.0 * h);
+        let range = |like: f64| duration_range(hour(62.0), hour(81.6), hour(like), &display);
+        assert_eq!(range(70.0), ["62\u{a0}h", "82\u{a0}h"]);
+        assert_eq!(range(75.0), ["2.6\u{a0}days", "3.4\u{a0}days"]);
     }
 }

@@ -1,7 +1,6 @@
 //! The choices behind what was found, as menus: the law, where its intervals come from, how sure
 //! they are, and how numbers are shown.
 
-use kinetics_core::quantity::JoulesPerMole;
 use kinetics_core::study::LawChoice;
 use kinetics_core::table::{Decimal, Form};
 use kinetics_core::temperature_law::{Scatter, ScatterChoice};
@@ -163,8 +162,12 @@ fn other(sheet: Sheet) -> String {
     // "With the errors as stated: 86 to 94 kJ/mol."
     let said = law.other_scatter.iter().filter_map(|other| {
         let estimate = &other.activation_energy;
-        let range = estimate.low.zip(estimate.high);
-        let shown = wording::energy(JoulesPerMole(estimate.value), range, &basis.display);
+        let energy = wording::Number {
+            value: estimate.value,
+            range: estimate.low.zip(estimate.high),
+            origin: wording::Origin::Fitted,
+        };
+        let shown = wording::energy(energy, &basis.display);
         let (low, high) = shown.limits?;
         Some(format!("With {}: {low} to {high}\u{a0}{unit}.", name(other.scatter)))
     });

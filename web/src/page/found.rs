@@ -1,10 +1,10 @@
 //! Found: the law in numbers, and what was noticed.
 
 use kinetics_core::answer::Basis;
-use kinetics_core::quantity::{JoulesPerMole, Kelvin};
+use kinetics_core::quantity::Kelvin;
 use kinetics_core::remark::{Remark, Severity};
 use kinetics_core::study::{Estimate, Evaluation, LawFindings};
-use kinetics_core::wording::{self, Shown};
+use kinetics_core::wording::{self, Origin, Shown};
 
 use super::choices;
 use super::once::once;
@@ -88,11 +88,11 @@ fn first(law: &LawFindings, basis: &Basis) -> Vec<Number> {
         with_limits("activation energy", energy(&law.activation_energy, basis), basis),
         with_limits(
             &format!("rate constant at {at}"),
-            wording::rate(rate.value, range(rate), basis.shown_unit, display),
+            wording::rate(shown(rate, basis), basis.shown_unit, display),
             basis,
         ),
         (
-            wording::bare(factor.value, range(factor), display).value,
+            wording::bare(shown(factor, basis), display).value,
             wording::logarithm_of("A", basis.base_unit),
             "moves with the activation energy".to_owned(),
         ),
@@ -107,21 +107,26 @@ fn second(law: &LawFindings, basis: &Basis) -> Vec<Number> {
         basis,
     )];
     if let Some(entropy) = &law.entropy_of_activation {
-        let shown = wording::entropy(entropy.value, range(entropy), display);
-        numbers.push(with_limits("entropy of activation", shown, basis));
+        let entropy = wording::entropy(shown(entropy, basis), display);
+        numbers.push(with_limits("entropy of activation", entropy, basis));
     }
     let factor = &law.pre_exponential_factor;
-    let shown = wording::rate(factor.value, range(factor), basis.base_unit, display);
-    numbers.push(with_limits("pre-exponential factor", shown, basis));
+    let factor = wording::rate(shown(factor, basis), basis.base_unit, display);
+    numbers.push(with_limits("pre-exponential factor", factor, basis));
     numbers
 }
 
-fn range(estimate: &Estimate) -> Option<(f64, f64)> {
-    estimate.low.zip(estimate.high)
+fn shown(estimate: &Estimate, basis: &Basis) -> wording::Number {
+    let stated = basis.support.is_known_law();
+    wording::Number {
+        value: estimate.value,
+        range: estimate.low.zip(estimate.high),
+        origin: if stated { Origin::Stated } else { Origin::Fitted },
+    }
 }
 
 fn energy(estimate: &Estimate, basis: &Basis) -> Shown {
-    wording::energy(JoulesPerMole(estimate.value), range(estimate), &basis.display)
+    wording::energy(shown(estimate, basis), &basis.display)
 }
 
 fn with_limits(name: &str, shown: Shown, basis: &Basis) -> Number {
