@@ -8,7 +8,7 @@ use super::record;
 use crate::answer::{Answer, Basis};
 use crate::measurements::{LeftOut, Measurand, Observation, Rates, rates};
 use crate::question;
-use crate::remark::{Evidence, Remark, remarks};
+use crate::remark::{Evidence, Remark, Severity, remarks};
 use crate::table::{ColumnHint, Form, Hints, Table, read_table};
 use crate::units::TemperatureUnit;
 
@@ -81,6 +81,7 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         .map(|at| question::answer_among(&study.asked, at, basis.as_ref().ok_or(&refusal)))
         .collect();
     remarks.extend(own_remarks(study, &rates, basis.as_ref(), &answers));
+    remarks.extend(doubts(study, table));
     remarks.sort_by_key(|remark| remark.severity);
 
     let level = level(study).unwrap_or(USUAL_LEVEL);
@@ -105,6 +106,18 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
     };
     record::write(study, &mut findings);
     Evaluation { findings, basis, rates }
+}
+
+/// What was decided in reading that could as well be otherwise and would change every answer.
+fn doubts(study: &Study, table: &Table) -> Vec<Remark> {
+    if study.measured.form == Form::KnownLaw {
+        return Vec::new();
+    }
+    let remark = |sentence: &str, remedy: &str| {
+        Remark::new("decimal-mark", Severity::Caution, sentence, remedy)
+    };
+    let choices = table.choices.iter();
+    choices.filter_map(|c| Some(remark(&c.sentence, c.remedy.as_deref()?))).collect()
 }
 
 fn own_remarks(

@@ -131,10 +131,8 @@ impl Deciding<'_> {
         } else {
             format!(" ({})", crate::problem::shortened(&column.header))
         };
-        self.choices.push(Choice {
-            sentence: format!("Column {}{header}: {what}", at + 1),
-            column: Some(at + 1),
-        });
+        let sentence = format!("Column {}{header}: {what}", at + 1);
+        self.choices.push(Choice::of_column(at + 1, sentence));
     }
 
     fn symbol(&self, column: &Column) -> String {

@@ -180,6 +180,19 @@ pub struct Choice {
     /// The column it concerns, from 1.
     #[serde(default, skip_serializing_if = "Option::is_none")]
     pub column: Option<usize>,
+    /// What to do where another decision, as good, would change every answer.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub remedy: Option<String>,
+}
+
+impl Choice {
+    fn of_column(column: usize, sentence: String) -> Self {
+        Self { sentence, column: Some(column), remedy: None }
+    }
+
+    fn of_table(sentence: String) -> Self {
+        Self { sentence, column: None, remedy: None }
+    }
 }
 
 /// What a text is taken to mean.

@@ -270,7 +270,7 @@ impl<'text> Reader<'text> {
             let cell = self.text.get(span.clone()).unwrap_or("");
             let weight = evidence(cell);
             if let Some(votes) = self.votes.get_mut(column) {
-                votes.count(weight);
+                votes.count_cell(cell, weight);
             }
             if matches!(weight, Evidence::Ambiguous(_))
                 && let Some(slot @ None) = self.ambiguous.get_mut(column)
@@ -300,7 +300,10 @@ impl<'text> Reader<'text> {
         let decimals: Vec<Decimal> = self
             .votes
             .iter()
-            .map(|votes| self.hints.decimal.or(votes.certain()).unwrap_or(decimal))
+            .map(|votes| {
+                let fixed = votes.has_fixed_decimals().then_some(Decimal::Point);
+                self.hints.decimal.or(votes.certain()).or(fixed).unwrap_or(decimal)
+            })
             .collect();
         let values: Vec<Values> = decimals
             .iter()
@@ -374,10 +377,8 @@ impl<'text> Reader<'text> {
             .map(|(_, text)| text.clone())?;
         let (are, notes) = if lines.count > 1 { ("are", "notes") } else { ("is", "a note") };
         let rows = lines.rows().replacen("row", "Row", 1);
-        Some(Choice {
-            sentence: format!("{rows} {are} taken as {notes} and not read (“{example}”)."),
-            column: None,
-        })
+        let sentence = format!("{rows} {are} taken as {notes} and not read (“{example}”).");
+        Some(Choice::of_table(sentence))
     }
 }
 

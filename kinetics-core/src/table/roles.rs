@@ -82,7 +82,7 @@ impl Roles<'_> {
     }
 
     pub(super) fn say(&mut self, column: usize, sentence: String) {
-        self.choices.push(Choice { sentence, column: Some(column + 1) });
+        self.choices.push(Choice::of_column(column + 1, sentence));
     }
 
     pub(super) fn refuse(&mut self, column: usize, found: &str, expected: &str, message: &str) {

@@ -15,7 +15,7 @@ fn choice(at: usize, column: &Column, sentence: &str) -> Choice {
     } else {
         format!(" ({})", shortened(&column.header))
     };
-    Choice { sentence: format!("Column {}{header}: {sentence}", at + 1), column: Some(at + 1) }
+    Choice::of_column(at + 1, format!("Column {}{header}: {sentence}", at + 1))
 }
 
 /// What the decimal mark was taken to be, where anybody could doubt it:
@@ -30,21 +30,24 @@ pub(super) fn decimal_marks(
     let mut all = Votes::default();
     votes.iter().for_each(|votes| all.add(votes));
     if votes.iter().any(|votes| votes.certain() == Some(Decimal::Comma)) {
-        choices.push(Choice {
-            sentence: "The comma is read as the decimal mark.".to_string(),
-            column: None,
-        });
+        choices.push(Choice::of_table("The comma is read as the decimal mark.".to_string()));
     }
     for (at, column) in columns.iter().enumerate() {
         let (Some(votes), Some(Some(cell))) = (votes.get(at), ambiguous.get(at)) else { continue };
-        if !column.role.is_numeric() || !votes.doubtful(column.decimal) || votes.certain().is_some()
-        {
+        // Points are what decimals usually have, unless other numbers have commas.
+        let against_others = all.certain().is_some_and(|certain| certain != column.decimal);
+        let doubtful = votes.doubtful(column.decimal) || against_others;
+        if !column.role.is_numeric() || !doubtful || votes.certain().is_some() {
             continue;
         }
         let marks = |decimal: Decimal| {
             if decimal == Decimal::Comma { "decimal commas" } else { "decimal points" }
         };
-        let why = if all.certain().is_some() {
+        let why = if against_others {
+            "because every number of the column has three digits after it, as a fixed number of \
+             decimals has"
+                .to_string()
+        } else if all.certain().is_some() {
             format!("because other numbers have {}", marks(column.decimal))
         } else if separator == Separator::Semicolon {
             "because semicolons separate the columns".to_string()
@@ -58,7 +61,15 @@ pub(super) fn decimal_marks(
             marks(other),
             read_as(cell, other)
         );
-        choices.push(choice(at, column, &sentence));
+        let as_others =
+            all.certain() == Some(column.decimal) && cell.contains(column.decimal.mark());
+        let remedy = (!as_others).then(|| {
+            let meant = read_as(cell, other);
+            format!(
+                "If {meant} is meant, choose the decimal sign above the table, or correct the column."
+            )
+        });
+        choices.push(Choice { remedy, ..choice(at, column, &sentence) });
     }
     choices
 }
@@ -84,7 +95,7 @@ pub(super) fn run_titles(titles: &[(usize, Quantity)]) -> Option<Choice> {
     let rows = lines.rows().replacen("row", "Row", 1);
     let example = titles.first().map(|title| title.1.to_string())?;
     let sentence = format!("{rows} {named} (“{example}”).");
-    Some(Choice { sentence, column: None })
+    Some(Choice::of_table(sentence))
 }
 
 /// How times of a clock were read.

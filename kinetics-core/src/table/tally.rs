@@ -71,7 +71,7 @@ impl Tally {
                     at + 1,
                     sentence(&lines.rows(), &lines.example)
                 );
-                into.push(Choice { sentence, column: Some(at + 1) });
+                into.push(Choice::of_column(at + 1, sentence));
             }
         };
         say(&self.below, &|rows, example| {

@@ -150,6 +150,7 @@ pub struct Votes {
     comma: usize,
     ambiguous_point: usize,
     ambiguous_comma: usize,
+    unmarked: usize,
 }
 
 impl Votes {
@@ -164,12 +165,29 @@ impl Votes {
         }
     }
 
+    /// Counts a cell with its evidence; one without a mark counts if it holds a digit.
+    pub fn count_cell(&mut self, cell: &str, evidence: Evidence) {
+        self.count(evidence);
+        if evidence == Evidence::None && cell.starts_with(|c: char| c.is_ascii_digit()) {
+            self.unmarked += 1;
+        }
+    }
+
+    /// Whether every number has one point and three digits after it: decimals to a fixed number
+    /// of places. Of numbers with grouped digits some would be too small for a group.
+    #[must_use]
+    pub fn has_fixed_decimals(&self) -> bool {
+        self.ambiguous_point >= 2
+            && self.point + self.comma + self.ambiguous_comma + self.unmarked == 0
+    }
+
     /// Adds the votes of another column.
     pub fn add(&mut self, other: &Votes) {
         self.point += other.point;
         self.comma += other.comma;
         self.ambiguous_point += other.ambiguous_point;
         self.ambiguous_comma += other.ambiguous_comma;
+        self.unmarked += other.unmarked;
     }
 
     /// The mark for which there is certain evidence, by majority.
@@ -246,5 +264,18 @@ mod tests {
         }
         assert_eq!(votes.certain(), Some(Decimal::Comma));
         assert!(votes.doubtful(Decimal::Comma));
+    }
+
+    #[test]
+    fn three_decimals_throughout_are_no_groups() {
+        let fixed = |cells: &[&str]| {
+            let mut votes = Votes::default();
+            cells.iter().for_each(|cell| votes.count_cell(cell, evidence(cell)));
+            votes.has_fixed_decimals()
+        };
+        assert!(fixed(&["1.210", "4.200", "", "n.d.", "42.100"]));
+        assert!(!fixed(&["950", "1.210", "4.200"]));
+        assert!(!fixed(&["1,210", "4,200"]));
+        assert!(!fixed(&["1.210"]));
     }
 }
