@@ -96,6 +96,35 @@ fn curvature() {
     check("curvature", (&bend(0.1), json!({})), (&bend(0.0), json!({})));
 }
 
+/// With stated errors a bend counts only where it exceeds them, whichever scatter they enter; how
+/// well four runs happen to follow a parabola says nothing.
+#[test]
+fn curvature_beside_stated_errors() {
+    let bend = |runs: &[(f64, f64)], size: f64, percent: f64| {
+        let bent: Vec<(f64, f64)> = runs
+            .iter()
+            .map(|(t, e)| (*t, 0.02 * e + size * ((t - 62.5) / 12.5_f64).powi(2)))
+            .collect();
+        let mut text = String::new();
+        for (i, line) in paste(90.0, 0.05, "1/h", &bent).lines().enumerate() {
+            let error = if i == 0 { "s(k), %".to_owned() } else { percent.to_string() };
+            text.push_str(&format!("{line}\t{error}\n"));
+        }
+        text
+    };
+    let as_stated = json!({"assumed": {"scatter": "as-stated"}});
+    for choice in [json!({}), as_stated.clone()] {
+        let (fires, just_not) = (bend(&SIX, 0.1, 2.0), bend(&SIX, 0.1, 8.0));
+        check("curvature", (&fires, choice.clone()), (&just_not, choice));
+    }
+    // Four runs, stated to 7.5 % and bent by 1 %: F is in the hundreds.
+    let four = bend(&SIX[..4], 0.02, 7.5);
+    check("curvature", (&bend(&SIX[..4], 0.2, 1.0), as_stated), (&four, json!({})));
+    // Nor does a single degree of freedom of the residuals say anything.
+    let from_residuals = json!({"assumed": {"scatter": "from-residuals"}});
+    check("curvature", (&bend(&SIX, 0.1, 8.0), from_residuals.clone()), (&four, from_residuals));
+}
+
 #[test]
 fn influence() {
     let slipped = |slip: f64| {

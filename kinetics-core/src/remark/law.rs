@@ -1,7 +1,9 @@
 //! Remarks on the runs and the law.
 
 use super::{Evidence, Remark, Severity};
-use crate::temperature_law::{Target, curvature as test_curvature, influential};
+use crate::temperature_law::{
+    Scatter, Target, curvature as test_curvature, curvature_beyond_errors, influential,
+};
 use crate::units::{ConcentrationKind, EnergyUnit, RateUnit};
 use crate::wording::{Figures, fixed, significant};
 
@@ -55,24 +57,30 @@ pub(super) fn two_points(evidence: &Evidence) -> Option<Remark> {
     Some(Remark::new("two-points", Severity::Caution, sentence, remedy))
 }
 
-/// The F test of a quadratic term at 5 %.
+/// A quadratic term at 5 %: beside the stated errors where the scatter knows them, else by its F
+/// test, which with a single degree of freedom left says nothing.
 pub(super) fn curvature(evidence: &Evidence) -> Option<Remark> {
     const SIGNIFICANCE: f64 = 0.05;
     let basis = evidence.basis;
-    let test = test_curvature(&basis.law, evidence.observations)?;
-    if test.p >= SIGNIFICANCE {
+    let decimal = basis.display.decimal;
+    let shown = |number: f64| significant(number, 2, decimal);
+    let (p, said) = if basis.law.scatter == Scatter::FromResiduals {
+        let test = test_curvature(&basis.law, evidence.observations)?;
+        if test.degrees_of_freedom < 2 {
+            return None;
+        }
+        (test.p, format!("(F = {}, p = {})", shown(test.f), shown(test.p)))
+    } else {
+        let p = curvature_beyond_errors(&basis.law, evidence.observations)?;
+        (p, format!("by more than the stated errors explain (p = {})", shown(p)))
+    };
+    if p >= SIGNIFICANCE {
         return None;
     }
-    let decimal = basis.display.decimal;
     Some(Remark::new(
         "curvature",
         Severity::Caution,
-        format!(
-            "ln k against 1/T is bent (F = {}, p = {}): a straight line misleads most outside the \
-             data.",
-            significant(test.f, 2, decimal),
-            significant(test.p, 2, decimal)
-        ),
+        format!("ln k against 1/T is bent {said}: a straight line misleads most outside the data.",),
         "Ask within the data, leave out the end where something else sets in, or measure closer to \
          what you ask for.",
     ))

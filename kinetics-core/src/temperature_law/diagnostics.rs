@@ -2,7 +2,8 @@
 
 use nalgebra::DMatrix;
 
-use super::FittedLaw;
+use super::{Contrast, FittedLaw, Scatter, Settings, Target, TemperatureLaw, fit};
+use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::measurements::{Observation, independent_runs};
 use crate::numeric::distributions::{f_tail, student_t_quantile};
 use crate::numeric::least_squares;
@@ -49,6 +50,31 @@ pub fn curvature(fitted: &FittedLaw, observations: &[Observation]) -> Option<Cur
     let within = bent.weighted_sum_of_squares.max(ROUNDING_SHARE * scale);
     let f = (straight - bent.weighted_sum_of_squares).max(0.0) * degrees_of_freedom as f64 / within;
     Some(CurvatureTest { f, degrees_of_freedom, p: f_tail(f, 1.0, degrees_of_freedom as f64) })
+}
+
+/// How probable a quadratic term as far from zero as the fitted one is for a straight law, under
+/// the scatter of the fit with the errors that the runs state: twice the smaller tail. None where
+/// the scatter stands on the residuals alone, or with fewer than four runs.
+pub fn curvature_beyond_errors(fitted: &FittedLaw, observations: &[Observation]) -> Option<f64> {
+    let stated = matches!(fitted.scatter, Scatter::AsStated | Scatter::AsStatedPlusRunToRun);
+    if !stated || fitted.law.parameters() != 2 || independent_runs(observations) < 4 {
+        return None;
+    }
+    // What the law leaves of each run, beside an Arrhenius line of the law's activation energy.
+    let slope = fitted.activation_energy(fitted.reference).0 / MOLAR_GAS_CONSTANT;
+    let beside: Vec<Observation> = observations
+        .iter()
+        .zip(&fitted.residuals)
+        .map(|(run, residual)| {
+            let x = 1.0 / run.temperature.0 - 1.0 / fitted.reference.0;
+            Observation { ln_rate: residual - slope * x, ..*run }
+        })
+        .collect();
+    let settings = Settings { scatter: fitted.scatter.into(), ..fitted.settings };
+    let bent = fit(TemperatureLaw::Curved, &beside, settings).ok()?;
+    let term = Contrast { coefficients: [0.0, 0.0, 1.0], constant: 0.0, runs: 0.0 };
+    let below = bent.probability_below(&term, Target::Mean, 0.0)?;
+    Some(2.0 * below.min(1.0 - below).max(0.0))
 }
 
 /// Sums of squares below this share of the data's own are rounding.

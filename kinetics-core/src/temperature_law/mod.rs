@@ -25,8 +25,8 @@ mod scatter;
 mod thermometer;
 
 pub use diagnostics::{
-    CurvatureTest, Influence, LackOfFitTest, activation_energy_on_rates, curvature, influential,
-    lack_of_fit,
+    CurvatureTest, Influence, LackOfFitTest, activation_energy_on_rates, curvature,
+    curvature_beyond_errors, influential, lack_of_fit,
 };
 pub use fitted::{Component, FittedLaw, Kernel, Target};
 pub use inverse::TemperatureSet;
