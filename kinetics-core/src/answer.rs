@@ -329,6 +329,9 @@ impl Basis {
             Some((low, high)) => {
                 format!("the scatter allows {low} to {high} ({})", self.display.percent(self.level))
             }
+            None if self.law.settings.within_groups.is_some() => {
+                "no interval: with so few groups, nothing tells how much groups differ".into()
+            }
             None => "no interval: with as many runs as unknowns and no stated errors, nothing \
                      tells how much the runs scatter"
                 .into(),

@@ -1,9 +1,11 @@
 //! What was observed, typed: runs with a temperature and what tells their rate.
 
 mod cells;
+mod groups;
 mod progress;
 mod rates;
 
+pub use groups::{Grouped, grouped};
 pub use progress::{AboutSignals, Point, ProgressRun, ProgressRuns, progress};
 pub use rates::{LeftOut, Measurand, Rates, Run, rates};
 

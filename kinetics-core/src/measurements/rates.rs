@@ -47,6 +47,8 @@ pub struct Run {
     pub name: String,
     /// What a law sees of it.
     pub observation: Observation,
+    /// The groups it shares with other runs: the column and what stands in it.
+    pub groups: Vec<(usize, String)>,
 }
 
 /// A row that gave no run although it could be read.
@@ -213,6 +215,7 @@ impl<'t> Layout<'t> {
                 row: row.line,
                 name: self.name(row, temperature),
                 observation: Observation::new(temperature, ln_rate, ln_sd),
+                groups: self.groups(row),
             });
         }
     }
@@ -302,6 +305,14 @@ impl<'t> Layout<'t> {
             }
         };
         positive(libm::sqrt(libm::log1p(relative * relative))).filter(|_| relative > 0.0)
+    }
+
+    fn groups(&self, row: &Row) -> Vec<(usize, String)> {
+        let columns = self.columns.iter().zip(&row.cells).enumerate();
+        columns
+            .filter(|(_, (column, _))| column.role == Role::Group)
+            .filter_map(|(at, (_, cell))| Some((at, cell.label()?)))
+            .collect()
     }
 
     fn name(&self, row: &Row, temperature: Kelvin) -> String {

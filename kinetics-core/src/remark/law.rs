@@ -37,7 +37,9 @@ pub(super) fn two_points(evidence: &Evidence) -> Option<Remark> {
     let mut distinct: Vec<f64> = evidence.observations.iter().map(|o| o.temperature.0).collect();
     distinct.sort_by(f64::total_cmp);
     distinct.dedup();
-    if distinct.len() != 2 {
+    // Where groups are too few for intervals, that is said.
+    let grouped = evidence.basis.law.settings.within_groups.is_some();
+    if distinct.len() != 2 || (grouped && !evidence.basis.law.has_intervals()) {
         return None;
     }
     let (sentence, remedy) = if evidence.basis.law.has_intervals() {

@@ -8,7 +8,7 @@ use super::document::Study;
 use super::learning::{Learnt, learn};
 use crate::answer::{Basis, Refusal};
 use crate::grounds::Support;
-use crate::measurements::Rates;
+use crate::measurements::{Grouped, Rates};
 use crate::quantity::Quantity;
 use crate::rate_law::Order;
 use crate::remark::{Remark, Severity};
@@ -26,6 +26,10 @@ pub(super) struct Ground {
     pub order: Option<f64>,
     pub rivals: Vec<Rival>,
     pub alternatives: Vec<FittedLaw>,
+    /// The groups of runs that the law was fitted to, where groups count.
+    pub grouped: Option<Grouped>,
+    /// What was decided about groups.
+    pub choices: Vec<String>,
 }
 
 /// Lays the ground for answers; runs that were not rate constants become such on the way.
@@ -41,6 +45,8 @@ pub(super) fn lay(study: &Study, rates: &mut Rates) -> Ground {
             remarks,
             rivals: learnt.rivals,
             alternatives: learnt.alternatives,
+            grouped: learnt.grouped,
+            choices: learnt.choices,
         },
         Err(refusal) => Ground {
             basis: None,
@@ -49,6 +55,8 @@ pub(super) fn lay(study: &Study, rates: &mut Rates) -> Ground {
             order: stated,
             rivals: Vec::new(),
             alternatives: Vec::new(),
+            grouped: None,
+            choices: Vec::new(),
         },
     }
 }
@@ -70,6 +78,8 @@ fn build(
                 rivals: Vec::new(),
                 alternatives: Vec::new(),
                 shifted: Vec::new(),
+                grouped: None,
+                choices: Vec::new(),
             }
         }
         Form::Rates => learn(study, rates, law, remarks)?,

@@ -6,7 +6,7 @@ use super::document::Study;
 use super::findings::{Findings, LawFindings, Read, RunFindings};
 use super::record;
 use crate::answer::{Answer, Basis};
-use crate::measurements::{LeftOut, Measurand, Observation, Rates, rates};
+use crate::measurements::{Grouped, LeftOut, Measurand, Rates, Run, rates};
 use crate::question;
 use crate::remark::{Evidence, Remark, Severity, remarks};
 use crate::table::{ColumnHint, Form, Hints, Table, read_table};
@@ -75,12 +75,12 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         rates(table, measurand, &excluded, study.measured.error_is)
     });
 
-    let Ground { basis, refusal, mut remarks, order, rivals, alternatives } =
+    let Ground { basis, refusal, mut remarks, order, rivals, alternatives, grouped, choices } =
         basis::lay(study, &mut rates);
     let answers: Vec<Answer> = (0..study.asked.len())
         .map(|at| question::answer_among(&study.asked, at, basis.as_ref().ok_or(&refusal)))
         .collect();
-    remarks.extend(own_remarks(study, &rates, basis.as_ref(), &answers));
+    remarks.extend(own_remarks(study, &rates, basis.as_ref(), grouped.as_ref(), &answers));
     remarks.extend(doubts(study, table));
     remarks.sort_by_key(|remark| remark.severity);
 
@@ -92,12 +92,13 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
     }
     let mut findings = Findings {
         kelvinclock_findings: super::VERSION,
-        read: read(study, table, &rates, basis.as_ref(), order),
+        read: read(study, table, &rates, basis.as_ref(), (order, choices)),
         problems,
         runs: runs(&rates, basis.as_ref(), order, level),
         law: basis
             .as_ref()
-            .map(|basis| LawFindings::of(basis, &alternatives, &study.measured.assumed)),
+            .map(|basis| LawFindings::of(basis, &alternatives, &study.measured.assumed))
+            .map(|law| LawFindings { groups: grouped.map(|grouped| grouped.groups), ..law }),
         one_stage: None,
         rivals: rivals.iter().map(|rival| super::Rival::of(rival, order)).collect(),
         remarks,
@@ -124,15 +125,17 @@ fn own_remarks(
     study: &Study,
     rates: &Rates,
     basis: Option<&Basis>,
+    grouped: Option<&Grouped>,
     answers: &[Answer],
 ) -> Vec<Remark> {
     let Some(basis) = basis else { return Vec::new() };
-    let observations: Vec<Observation> = rates.runs.iter().map(|r| r.observation).collect();
-    let run_names: Vec<String> =
-        rates.runs.iter().map(|r| format!("The run at {} (row {})", r.name, r.row)).collect();
+    let run_names: Vec<String> = match grouped {
+        None => rates.runs.iter().map(run_name).collect(),
+        Some(grouped) => grouped.members.iter().map(|cell| group_name(cell, rates)).collect(),
+    };
     let stated = &study.measured.stated_activation_energy;
     remarks(&Evidence {
-        observations: &observations,
+        observations: &basis.law.runs,
         run_names: &run_names,
         read_as_kelvin: rates.temperature_unit == Some(TemperatureUnit::Kelvin),
         stated_activation_energy: stated.as_ref().and_then(|q| q.joules_per_mole().ok()),
@@ -141,12 +144,29 @@ fn own_remarks(
     })
 }
 
+fn run_name(run: &Run) -> String {
+    format!("The run at {} (row {})", run.name, run.row)
+}
+
+/// Runs of one group at one temperature.
+fn group_name(cell: &[usize], rates: &Rates) -> String {
+    let runs: Vec<&Run> = cell.iter().filter_map(|run| rates.runs.get(*run)).collect();
+    match runs.as_slice() {
+        [single] => run_name(single),
+        several => {
+            let rows: Vec<String> = several.iter().map(|run| run.row.to_string()).collect();
+            let name = several.first().map(|run| run.name.as_str()).unwrap_or_default();
+            format!("The group at {name} (rows {})", rows.join(", "))
+        }
+    }
+}
+
 fn read(
     study: &Study,
     table: &Table,
     rates: &Rates,
     basis: Option<&Basis>,
-    order: Option<f64>,
+    (order, choices): (Option<f64>, Vec<String>),
 ) -> Read {
     let is_table = study.measured.form != Form::KnownLaw;
     Read {
@@ -162,7 +182,7 @@ fn read(
         order,
         scatter: basis.map(|b| b.law.scatter),
         choices: if is_table {
-            table.choices.iter().map(|choice| choice.sentence.clone()).collect()
+            table.choices.iter().map(|choice| choice.sentence.clone()).chain(choices).collect()
         } else {
             Vec::new()
         },
@@ -174,14 +194,18 @@ fn runs(rates: &Rates, basis: Option<&Basis>, order: Option<f64>, level: f64) ->
     rates
         .runs
         .iter()
-        .enumerate()
-        .map(|(i, run)| RunFindings {
+        .map(|run| RunFindings {
             label: run.name.clone(),
             row: run.row,
             temperature_kelvin: run.observation.temperature.0,
             rate_constant: super::findings::stated_rate(run, &unit, level),
             order,
-            ln_residual: basis.and_then(|b| b.law.residuals.get(i)).copied(),
+            ln_residual: basis
+                .map(|b| run.observation.ln_rate - b.law.ln_rate(run.observation.temperature)),
+            group: (!run.groups.is_empty()).then(|| {
+                let names: Vec<&str> = run.groups.iter().map(|(_, name)| name.as_str()).collect();
+                names.join(", ")
+            }),
         })
         .collect()
 }

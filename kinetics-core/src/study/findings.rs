@@ -75,6 +75,9 @@ pub struct RunFindings {
     pub order: Option<f64>,
     /// Measured minus fitted ln k; none without a law.
     pub ln_residual: Option<f64>,
+    /// What it shares with other runs, where the data say so.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub group: Option<String>,
 }
 
 /// A law that was also fitted.
@@ -177,8 +180,11 @@ pub struct LawFindings {
     pub entropy_of_activation: Option<Estimate>,
     /// Covariance of (ln k at T0, Ea in J/mol); none where no scatter is known.
     pub covariance: Option<Vec<Vec<f64>>>,
-    /// Runs minus parameters; none for a known law.
+    /// Runs, or groups of them, minus parameters; none for a known law.
     pub degrees_of_freedom: Option<usize>,
+    /// How many groups count in place of runs, where groups are known and count.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub groups: Option<usize>,
     /// Where the intervals come from.
     pub scatter: Scatter,
     /// Run-to-run standard deviation of ln k, where it is estimated.
@@ -290,6 +296,7 @@ impl LawFindings {
                 .then(|| Estimate::of(&law.entropy_of_activation(reference), basis, "J/(mol K)")),
             covariance: fitted.covariance.as_ref().map(first_two),
             degrees_of_freedom: fitted.degrees_of_freedom,
+            groups: None,
             scatter: fitted.scatter,
             run_to_run_sd: fitted.run_to_run_sd,
             mixture,

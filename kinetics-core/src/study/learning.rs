@@ -5,11 +5,13 @@ use super::assumptions::thermometer;
 use super::document::Study;
 use crate::answer::Refusal;
 use crate::grounds::Support;
-use crate::measurements::{Observation, Rates};
+use crate::measurements::{Grouped, Observation, Rates, grouped};
 use crate::quantity::Kelvin;
 use crate::remark::{Remark, Severity};
 use crate::rivals::{Rival, rivals};
-use crate::temperature_law::{FittedLaw, LawError, ScatterChoice, Settings, TemperatureLaw, fit};
+use crate::temperature_law::{
+    FittedLaw, LawError, Scatter, ScatterChoice, Settings, TemperatureLaw, fit,
+};
 
 /// A law, where it holds, and what stands beside it.
 pub(super) struct Learnt {
@@ -21,6 +23,31 @@ pub(super) struct Learnt {
     pub alternatives: Vec<FittedLaw>,
     /// The same law with the thermometer off to either side.
     pub shifted: Vec<FittedLaw>,
+    /// The groups of runs that it was fitted to, where groups count.
+    pub grouped: Option<Grouped>,
+    /// What was decided about groups.
+    pub choices: Vec<String>,
+}
+
+/// The runs as they are, and taken together by their groups.
+struct Sample {
+    single: Vec<Observation>,
+    grouped: Option<Grouped>,
+    thermometer_sd_kelvin: f64,
+}
+
+impl Sample {
+    /// What is fitted under a scatter choice, and how: where stated errors are all there is, groups
+    /// have nothing in common.
+    fn under(&self, scatter: ScatterChoice) -> (&[Observation], Settings) {
+        let grouped = self.grouped.as_ref().filter(|_| scatter != ScatterChoice::AsStated);
+        let settings = Settings {
+            scatter,
+            thermometer_sd_kelvin: self.thermometer_sd_kelvin,
+            within_groups: grouped.map(|grouped| grouped.within),
+        };
+        (grouped.map_or(&self.single, |grouped| &grouped.observations), settings)
+    }
 }
 
 /// Fits the law under the study's scatter choice, and what stands beside it.
@@ -30,17 +57,19 @@ pub(super) fn learn(
     law: TemperatureLaw,
     remarks: &mut Vec<Remark>,
 ) -> Result<Learnt, Refusal> {
-    let observations: Vec<Observation> = rates.runs.iter().map(|r| r.observation).collect();
+    let single: Vec<Observation> = rates.runs.iter().map(|r| r.observation).collect();
     let (thermometer_sd_kelvin, offset_kelvin) = thermometer(study)?;
-    let scatter = usable_scatter(study, rates, &observations, remarks);
-    let settings = Settings { scatter, thermometer_sd_kelvin };
-    let fitted = fit(law, &observations, settings).map_err(|error| law_refusal(&error))?;
-    let temperatures: Vec<Kelvin> = observations.iter().map(|o| o.temperature).collect();
-    let no_errors = observations.iter().all(|o| o.ln_sd.is_none());
+    let scatter = usable_scatter(study, rates, &single, remarks);
+    let temperatures: Vec<Kelvin> = single.iter().map(|o| o.temperature).collect();
+    let no_errors = single.iter().all(|o| o.ln_sd.is_none());
+    let sample = Sample { single, grouped: grouped(&rates.runs), thermometer_sd_kelvin };
+    let (observations, settings) = sample.under(scatter);
+    let fitted = fit(law, observations, settings).map_err(|error| law_refusal(&error))?;
+    let choices = choices(&sample, &fitted, remarks);
     let stated = !no_errors && scatter != ScatterChoice::FromResiduals;
     let support = Support::of_runs(&temperatures, stated)
         .ok_or_else(|| law_refusal(&LawError::NothingMeasured))?;
-    let rivals = rivals(&fitted, &observations, settings);
+    let rivals = rivals(&fitted, observations, settings);
     if rivals.iter().any(|r| r.delta_aicc.is_none()) {
         remarks.push(Remark::new(
             "rivals-unranked",
@@ -50,12 +79,46 @@ pub(super) fn learn(
         ));
     }
     Ok(Learnt {
-        alternatives: alternatives(&fitted, &observations, thermometer_sd_kelvin),
-        shifted: shifted(law, &observations, settings, offset_kelvin),
+        alternatives: alternatives(&fitted, &sample),
+        shifted: shifted(law, observations, settings, offset_kelvin),
+        grouped: sample.grouped.filter(|_| settings.within_groups.is_some()),
+        choices,
         law: fitted,
         support,
         rivals,
     })
+}
+
+/// What groups do, in a sentence; and a remark where there are too few of them.
+fn choices(sample: &Sample, fitted: &FittedLaw, remarks: &mut Vec<Remark>) -> Vec<String> {
+    let Some(grouped) = &sample.grouped else { return Vec::new() };
+    let (runs, groups) = (sample.single.len(), grouped.groups);
+    if fitted.settings.within_groups.is_none() {
+        return vec![format!(
+            "The {runs} runs form {groups} groups. Stated errors are taken for all the scatter there \
+             is, so groups change nothing."
+        )];
+    }
+    if fitted.scatter == Scatter::NoneKnown {
+        let needed = fitted.law.parameters() + 1;
+        remarks.push(Remark::new(
+            "groups-few",
+            Severity::Caution,
+            format!(
+                "The {runs} runs form {groups} group{} only: nothing tells how much groups differ, \
+                 so no answer has an interval.",
+                if groups == 1 { "" } else { "s" }
+            ),
+            format!(
+                "Measure in {needed} groups or more, or ignore the column of groups if they have \
+                 nothing in common."
+            ),
+        ));
+    }
+    vec![format!(
+        "The {runs} runs form {groups} groups: runs of one group at one temperature are averaged, a \
+         group counts as one run, and degrees of freedom count groups."
+    )]
 }
 
 /// The scatter choice, or the residuals where it needs errors that are not stated.
@@ -98,15 +161,12 @@ fn usable_scatter(
 }
 
 /// What the other scatter choices that the runs allow would give.
-fn alternatives(
-    fitted: &FittedLaw,
-    observations: &[Observation],
-    thermometer_sd_kelvin: f64,
-) -> Vec<FittedLaw> {
+fn alternatives(fitted: &FittedLaw, sample: &Sample) -> Vec<FittedLaw> {
     [ScatterChoice::AsStatedPlusRunToRun, ScatterChoice::AsStated, ScatterChoice::FromResiduals]
         .into_iter()
         .filter_map(|scatter| {
-            fit(fitted.law, observations, Settings { scatter, thermometer_sd_kelvin }).ok()
+            let (observations, settings) = sample.under(scatter);
+            fit(fitted.law, observations, settings).ok()
         })
         .filter(|other| other.has_intervals() && other.scatter != fitted.scatter)
         .collect()

@@ -39,11 +39,13 @@ pub struct Settings {
     /// Random standard deviation of each run's temperature in K; used where errors are taken as
     /// stated, as residuals and run-to-run scatter contain it already.
     pub thermometer_sd_kelvin: f64,
+    /// Where runs are means of groups: the variance of ln k that a single run has beyond that.
+    pub within_groups: Option<f64>,
 }
 
 impl From<ScatterChoice> for Settings {
     fn from(scatter: ScatterChoice) -> Self {
-        Self { scatter, thermometer_sd_kelvin: 0.0 }
+        Self { scatter, ..Self::default() }
     }
 }
 
@@ -111,20 +113,23 @@ pub fn fit(
     settings: impl Into<Settings>,
 ) -> Result<FittedLaw, LawError> {
     let settings = settings.into();
-    let Settings { scatter, thermometer_sd_kelvin } = settings;
+    let Settings { scatter, thermometer_sd_kelvin, within_groups } = settings;
     let problem = Problem::new(law, observations)?;
     let stated = problem.stated_sd(observations);
     let fitted = match (scatter, stated) {
         (ScatterChoice::FromResiduals, _) | (ScatterChoice::Automatic, Err(_)) => {
-            problem.on_residuals()
+            problem.on_residuals(within_groups.unwrap_or(0.0))
         }
         (_, Err(missing)) => Err(missing),
         (ScatterChoice::AsStated, Ok(sd)) => problem.as_stated(&sd, thermometer_sd_kelvin),
         (ScatterChoice::AsStatedPlusRunToRun | ScatterChoice::Automatic, Ok(sd)) => {
-            if problem.degrees_of_freedom == 0 {
-                problem.as_stated(&sd, thermometer_sd_kelvin)
-            } else {
+            if problem.degrees_of_freedom > 0 {
                 problem.as_stated_plus_run_to_run(&sd)
+            } else if within_groups.is_some() {
+                // Groups are named because they differ; nothing tells by how much.
+                problem.on_residuals(0.0)
+            } else {
+                problem.as_stated(&sd, thermometer_sd_kelvin)
             }
         }
     }?;
@@ -225,7 +230,7 @@ impl Problem {
         }
     }
 
-    fn on_residuals(&self) -> Result<FittedLaw, LawError> {
+    fn on_residuals(&self, within_groups: f64) -> Result<FittedLaw, LawError> {
         let weights = self.shares.clone();
         let reference = self.reference(&weights);
         let fit = self.solve(reference, &weights)?;
@@ -246,7 +251,7 @@ impl Problem {
             run_to_run_sd: 0.0,
             parameters: fitted.parameters.clone(),
             covariance,
-            run_variance: variance,
+            run_variance: variance + within_groups,
         }));
         Ok(fitted)
     }

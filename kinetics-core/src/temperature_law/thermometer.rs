@@ -145,7 +145,7 @@ mod tests {
     /// (E u/(R T²))²; over 30 K that holds to a tenth.
     #[test]
     fn a_thermometer_error_widens_what_stands_on_stated_errors() {
-        let settings = |u| Settings { scatter: ScatterChoice::AsStated, thermometer_sd_kelvin: u };
+        let settings = |u| Settings { thermometer_sd_kelvin: u, ..ScatterChoice::AsStated.into() };
         let bare = fit(TemperatureLaw::Arrhenius, &runs(), settings(0.0)).unwrap();
         let with = fit(TemperatureLaw::Arrhenius, &runs(), settings(0.5)).unwrap();
         let from_temperature = with.parameters[1] / (MOLAR_GAS_CONSTANT * 338.15 * 338.15) * 0.5;

@@ -226,7 +226,8 @@ impl Account {
             self.entry(name, estimate_words(&other.activation_energy));
         }
         if let Some(degrees) = law.degrees_of_freedom {
-            self.entry("Degrees of freedom", degrees.to_string());
+            let of = law.groups.map(|groups| format!(", of {groups} groups")).unwrap_or_default();
+            self.entry("Degrees of freedom", format!("{degrees}{of}"));
         }
         if let Some(sd) = law.run_to_run_sd {
             self.entry("Run-to-run standard deviation of ln k", format!("{sd:.4}"));
