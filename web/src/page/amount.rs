@@ -1,5 +1,8 @@
 //! A quantity in a sentence, with the standard deviation that some of them have: "90 ± 4 kJ/mol".
 
+use std::cell::RefCell;
+use std::rc::Rc;
+
 use kinetics_core::problem::shortened;
 use kinetics_core::quantity::Quantity;
 use kinetics_core::study::{StatedQuantity, Study};
@@ -32,19 +35,23 @@ pub struct Amount {
 /// The gap of a sentence that shows an amount and takes another.
 pub fn amount(sheet: Sheet, amount: Amount, complaint: &Complaint) -> Part {
     let Amount { name, id, hint, get, set, check } = amount;
+    // A bare number keeps the unit that stood there before.
+    let unit = Rc::new(RefCell::new(String::new()));
+    let last = Rc::clone(&unit);
     let shown = move || {
-        let stated = get(&sheet.study());
-        stated.map(|stated| words(&stated, sheet.decimal())).unwrap_or_default()
+        let Some(stated) = get(&sheet.study()) else { return String::new() };
+        last.borrow_mut().clone_from(&stated.unit);
+        words(&stated, sheet.decimal())
     };
     let take = move |text: &str| {
-        let stated = if text.trim().is_empty() {
-            None
-        } else {
-            let read = parse(text, sheet.decimal(), check);
-            Some(read.map_err(|said| format!("{name}: {said}, for example {hint}."))?)
+        let read = match text.trim() {
+            "" => Ok(None),
+            text => with_unit(text, &unit.borrow(), sheet.decimal(), check).map(Some),
         };
+        // What cannot be read leaves nothing behind that would pass for it.
+        let stated = read.as_ref().ok().cloned().flatten();
         sheet.change(id, |study| set(study, stated));
-        Ok(())
+        read.map(drop).map_err(|said| format!("{name}: {said}, for example {hint}."))
     };
     blank(Gap {
         label: name.into(),
@@ -53,7 +60,7 @@ pub fn amount(sheet: Sheet, amount: Amount, complaint: &Complaint) -> Part {
         leave: Box::new(move || sheet.seal()),
         complaint: complaint.clone(),
         id: id.into(),
-        hint,
+        hint: format!("e.g. {hint}"),
     })
 }
 
@@ -81,6 +88,20 @@ fn words(stated: &StatedQuantity, decimal: char) -> String {
     let value = typed_number(stated.value, decimal);
     let sd = stated.sd.map(|sd| format!(" ± {}", typed_number(sd, decimal))).unwrap_or_default();
     format!("{value}{sd} {}", stated.unit)
+}
+
+/// An amount as it was typed; where it lacks a unit, with the one that stood there.
+fn with_unit(
+    text: &str,
+    unit: &str,
+    decimal: char,
+    check: fn(&Quantity) -> Result<(), UnitError>,
+) -> Result<StatedQuantity, String> {
+    let read = parse(text, decimal, check);
+    if read.is_ok() || !text.ends_with(|sign: char| sign.is_ascii_digit()) {
+        return read;
+    }
+    parse(&format!("{text} {unit}"), decimal, check).or(read)
 }
 
 /// A number with an optional standard deviation and a unit.
@@ -135,6 +156,19 @@ mod tests {
         assert_eq!((found.value, found.sd, found.unit.as_str()), (0.068, Some(0.003), "1/h"));
         assert_eq!(rate("2e-3 L/(mol s)").unwrap().unit, "L/(mol s)");
         assert_eq!(words(&found, ','), "0,068 ± 0,003 1/h");
+    }
+
+    #[test]
+    fn a_bare_number_keeps_the_unit_that_stood_there() {
+        let energy = |text: &str, unit: &str| {
+            with_unit(text, unit, '.', |quantity| quantity.joules_per_mole().map(drop))
+        };
+        let found = energy("85 ± 3", "kJ/mol").unwrap();
+        assert_eq!((found.value, found.sd, found.unit.as_str()), (85.0, Some(3.0), "kJ/mol"));
+        assert_eq!(energy("21 kcal/mol", "kJ/mol").unwrap().unit, "kcal/mol");
+        for (text, unit) in [("85", ""), ("85 furlongs", "kJ/mol"), ("warm", "kJ/mol")] {
+            assert!(energy(text, unit).is_err(), "{text}");
+        }
     }
 
     #[test]

@@ -1,6 +1,7 @@
 //! What comes to the page from outside: pastes, dropped and chosen files. Each is a table or a
 //! saved study.
 
+use kinetics_core::problem::shortened;
 use kinetics_core::study::Study;
 use wasm_bindgen::JsCast;
 use web_sys::{ClipboardEvent, DragEvent, Event, File, HtmlElement};
@@ -11,8 +12,12 @@ use super::sheet::Sheet;
 use super::timer::after;
 use crate::keep::files;
 
-/// A text from anywhere: a saved study is opened, anything else is read as a table.
-pub fn take_text(sheet: Sheet, text: String) {
+/// What a paste is called.
+pub const PASTE: &str = "The paste";
+
+/// A text from anywhere, and what it is: a saved study is opened, anything else is read as a
+/// table.
+pub fn take_text(sheet: Sheet, text: String, what: &str) {
     if sheet.is_locked() {
         return;
     }
@@ -27,7 +32,7 @@ pub fn take_text(sheet: Sheet, text: String) {
         return;
     }
     sheet.change("", |study| measured::take_text(study, text));
-    sheet.tell("The paste is read. Undo brings back what was there before.");
+    sheet.tell(format!("{what} is read. Undo brings back what was there before."));
 }
 
 /// The text of a paste, as spreadsheets give it.
@@ -40,7 +45,7 @@ pub fn text_of_paste(event: &ClipboardEvent) -> Option<String> {
 pub fn take_file(sheet: Sheet, file: File) {
     let name = file.name();
     after(async move { files::text_of(&file).await }, move |outcome| match outcome {
-        Ok(text) => take_text(sheet, text),
+        Ok(text) => take_text(sheet, text, &format!("“{name}”")),
         Err(problem) => sheet.tell(format!("“{name}” was not opened: {problem}.")),
     });
 }
@@ -53,9 +58,18 @@ pub fn listen(body: Part, sheet: Sheet) -> Part {
         // A word belongs to the field it is pasted into; a table, or a study, to the page.
         let is_table = text.trim().contains(['\n', '\t']);
         let is_study = text.trim_start().starts_with('{') && !is_in_a_field(event);
-        if !event.default_prevented() && (is_table || is_study) {
+        if event.default_prevented() {
+            return;
+        }
+        if is_table || is_study {
             event.prevent_default();
-            take_text(sheet, text);
+            take_text(sheet, text, PASTE);
+        } else if !is_in_a_field(event) {
+            let found = shortened(text.trim());
+            sheet.tell(format!(
+                "The paste is no table: found “{found}”, expected rows with a temperature and a \
+                 rate constant each. Nothing is changed."
+            ));
         }
     })
     .on("dragover", |event| {
@@ -71,7 +85,7 @@ pub fn listen(body: Part, sheet: Sheet) -> Part {
         match transfer.files().and_then(|files| files.get(0)) {
             Some(file) => take_file(sheet, file),
             None => match transfer.get_data("text/plain") {
-                Ok(text) if !text.trim().is_empty() => take_text(sheet, text),
+                Ok(text) if !text.trim().is_empty() => take_text(sheet, text, "The dropped text"),
                 _ => {}
             },
         }

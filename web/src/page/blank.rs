@@ -29,7 +29,7 @@ pub struct Gap {
     /// The name of its element, by which it can be found.
     pub id: String,
     /// What it hints at while it is empty.
-    pub hint: &'static str,
+    pub hint: String,
 }
 
 /// A gap that is filled at the moment.
@@ -41,11 +41,10 @@ struct Filling {
     own: RefCell<String>,
 }
 
-/// The gap. While what is typed cannot be read it stays, marked, and the study keeps its last
-/// good value.
+/// The gap. While what is typed cannot be read it stays, marked.
 pub fn blank(gap: Gap) -> Part {
     let own = RefCell::new((gap.shown)());
-    let (label, id, hint) = (gap.label.clone(), gap.id.clone(), gap.hint);
+    let (label, id, hint) = (gap.label.clone(), gap.id.clone(), gap.hint.clone());
     let filling = Rc::new(Filling { gap, draft: State::new(None), own });
     let with = |act: fn(&Filling, &Event)| {
         let filling = Rc::clone(&filling);
@@ -54,13 +53,14 @@ pub fn blank(gap: Gap) -> Part {
     let looking = Rc::clone(&filling);
     follow(move || looking.notice());
     let (text, wide, invalid) = (Rc::clone(&filling), Rc::clone(&filling), Rc::clone(&filling));
+    let unit = Rc::clone(&filling);
     let input = part("input")
         .with("type", "text")
         .with("size", "1")
         .with("id", &id)
         .with("autocomplete", "off")
         .with("spellcheck", "false")
-        .with("placeholder", hint)
+        .with("placeholder", &hint)
         .with("aria-label", &label)
         .follows("aria-invalid", move || invalid.gap.complaint.get().map(|_| "true".to_owned()))
         .holds(move || text.text())
@@ -68,13 +68,26 @@ pub fn blank(gap: Gap) -> Part {
         .on("blur", with(|filling, _| filling.left()))
         .on("keydown", with(Filling::key));
     let wide =
-        move || Some(Some(wide.text()).filter(|text| !text.is_empty()).unwrap_or(hint.into()));
-    part("span").class("blank").follows("data-text", wide).add(input)
+        move || Some(Some(wide.text()).filter(|text| !text.is_empty()).unwrap_or(hint.clone()));
+    part("span")
+        .class("blank")
+        .follows("data-text", wide)
+        .follows("data-unit", move || unit.unit())
+        .add(input)
 }
 
 impl Filling {
     fn text(&self) -> String {
         self.draft.get().unwrap_or_else(|| (self.gap.shown)())
+    }
+
+    /// The unit that a bare number was given, as long as it does not stand in the gap itself.
+    fn unit(&self) -> Option<String> {
+        let draft = self.draft.get()?;
+        let shown = (self.gap.shown)();
+        let rest = shown.strip_prefix(draft.trim_end()).filter(|rest| rest.starts_with(' '))?;
+        let is_read = self.gap.complaint.get().is_none() && !draft.trim().is_empty();
+        is_read.then(|| rest.to_owned())
     }
 
     fn notice(&self) {

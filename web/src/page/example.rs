@@ -46,9 +46,28 @@ pub fn is_shown(study: &Study) -> bool {
     study.title == TITLE
 }
 
+/// Takes away what only the example asks and is called; its first question is one that everybody
+/// has, and what the user asked stays.
+pub fn leave(study: &mut Study) {
+    study.title.clear();
+    let of_example = self::study().asked;
+    let special = of_example.get(1..).unwrap_or_default();
+    study.asked.retain(|asked| !special.contains(asked));
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn ones_own_questions_outlast_the_example() {
+        let mut study = study();
+        study.asked[2]["time"]["value"] = json!(24);
+        let kept = vec![study.asked[0].clone(), study.asked[2].clone()];
+        leave(&mut study);
+        assert_eq!(study.asked, kept);
+        assert!(!is_shown(&study));
+    }
 
     #[test]
     fn the_example_is_read_and_answered_without_a_complaint() {

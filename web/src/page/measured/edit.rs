@@ -10,12 +10,12 @@ pub fn with_cell(text: &str, table: &Table, row: usize, column: usize, typed: &s
         Some(row) => {
             table.with_cell(text, row.line, column, &typed).unwrap_or_else(|| text.to_owned())
         }
-        None => with_line(text, table.separator, column, &typed),
+        None => with_line(text, table.separator, column, &[&typed]),
     }
 }
 
-/// The text with a new last line that holds one cell.
-fn with_line(text: &str, separator: Separator, column: usize, typed: &str) -> String {
+/// The text with a new last line that holds some cells, from a column on.
+pub fn with_line(text: &str, separator: Separator, column: usize, typed: &[&str]) -> String {
     let (sign, empty) = match separator {
         Separator::Tab => ("\t", ""),
         Separator::Comma => (",", ""),
@@ -33,10 +33,13 @@ fn with_line(text: &str, separator: Separator, column: usize, typed: &str) -> St
         longer.push_str(empty);
         longer.push_str(sign);
     }
-    if empty.is_empty() && (typed.contains(sign) || typed.contains('"')) {
-        longer.push_str(&format!("\"{}\"", typed.replace('"', "\"\"")));
-    } else {
-        longer.push_str(typed);
+    for (at, typed) in typed.iter().enumerate() {
+        longer.push_str(if at > 0 { sign } else { "" });
+        if empty.is_empty() && (typed.contains(sign) || typed.contains('"')) {
+            longer.push_str(&format!("\"{}\"", typed.replace('"', "\"\"")));
+        } else {
+            longer.push_str(if typed.is_empty() { empty } else { typed });
+        }
     }
     longer.push('\n');
     longer

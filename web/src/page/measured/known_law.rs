@@ -1,7 +1,6 @@
 //! A known law as a sentence: an activation energy, and a rate constant at one temperature.
 
-use kinetics_core::quantity::Quantity;
-use kinetics_core::study::{Measured, StatedQuantity, Study};
+use kinetics_core::study::{Measured, Study};
 use kinetics_core::table::Form;
 
 use super::super::amount::{Amount, amount, complaints, quantity, without_sd};
@@ -13,9 +12,12 @@ use super::super::sheet::Sheet;
 /// The name under which a study lists an assumed activation energy.
 const ASSUMED_ENERGY: &str = "activation_energy";
 
+/// The name of the first blank's element.
+pub const FIRST_BLANK: &str = "known-energy";
+
 const ENERGY: Amount = Amount {
     name: "Activation energy",
-    id: "known-energy",
+    id: FIRST_BLANK,
     hint: "90 ± 4 kJ/mol",
     get: |study| study.measured.activation_energy.clone(),
     set: |study, stated| study.measured.activation_energy = stated,
@@ -38,18 +40,10 @@ const TEMPERATURE: Amount = Amount {
     check: |quantity| quantity.kelvin().map(drop),
 };
 
-/// A law to be changed to what is known; that of the example, so that it can be seen at work.
+/// A law with empty blanks.
 pub fn begin(study: &mut Study) {
     super::take_text(study, String::new());
-    let stated =
-        |value, sd, unit: &str| Some(StatedQuantity { value, sd: Some(sd), unit: unit.into() });
-    study.measured = Measured {
-        form: Form::KnownLaw,
-        activation_energy: stated(90.0, 4.0, "kJ/mol"),
-        rate_constant: stated(0.068, 0.003, "1/h"),
-        temperature: Some(Quantity::new(63.0, "°C")),
-        ..Measured::default()
-    };
+    study.measured = Measured { form: Form::KnownLaw, ..Measured::default() };
 }
 
 /// The sentence with its blanks.

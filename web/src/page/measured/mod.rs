@@ -6,6 +6,7 @@ mod known_law;
 mod more;
 mod notes;
 mod paste;
+mod range;
 mod row;
 mod rows;
 mod sentence;
@@ -13,6 +14,7 @@ mod sentence;
 use kinetics_core::study::{Measured, Study};
 use kinetics_core::table::{Form, Hints, read_table};
 
+use super::asked::focus_later;
 use super::live::State;
 use super::part::{Part, button, part};
 use super::sheet::Sheet;
@@ -53,6 +55,7 @@ pub fn section(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
             vec![
                 part("div").when(move || asked.get(), again),
                 rows::table(sheet, around.clone()),
+                rows::about_marks(sheet),
                 sentence::reading(sheet),
                 more::more(sheet),
                 notes::notes(sheet),
@@ -90,22 +93,30 @@ fn actions(sheet: Sheet, shape: Shape, is_example: bool, wants_paste: &State<boo
     let wants_paste = wants_paste.clone();
     match shape {
         Shape::Table if !is_example => {
-            let toggle = move || wants_paste.set(!wants_paste.get());
+            let toggle = move || {
+                wants_paste.set(!wants_paste.get());
+                focus_later(paste::PASTE_ID);
+            };
             actions.push(button("Paste something else", toggle));
         }
         Shape::KnownLaw => {
-            let clear = move || sheet.change("", start_again);
-            actions.push(button("Paste measurements", clear));
+            actions.push(button("Paste measurements", move || start_again(sheet)));
         }
         Shape::Table | Shape::Nothing => {}
     }
     actions.push(file_button(sheet, "Choose a file"));
     if shape == Shape::Nothing {
-        let begin = move || sheet.change("", rows::begin_typing);
+        let begin = move || {
+            sheet.change("", rows::begin_typing);
+            focus_later(&row::cell_id(0, 0));
+        };
         actions.push(button("Type into an empty table", begin));
     }
     if shape != Shape::KnownLaw {
-        let begin = move || sheet.change("", known_law::begin);
+        let begin = move || {
+            sheet.change("", known_law::begin);
+            focus_later(known_law::FIRST_BLANK);
+        };
         actions.push(button("State a known law", begin));
     }
     if shape == Shape::Nothing {
@@ -116,7 +127,7 @@ fn actions(sheet: Sheet, shape: Shape, is_example: bool, wants_paste: &State<boo
 
 /// Above the invented example.
 fn welcome(sheet: Sheet) -> Part {
-    let start = button("Start with your own data", move || sheet.change("", start_again));
+    let start = button("Start with your own data", move || start_again(sheet));
     part("div")
         .class("welcome")
         .add(part("p").text(
@@ -141,15 +152,16 @@ fn progress(sheet: Sheet) -> Part {
 }
 
 /// Clears what was measured and leaves the questions.
-fn start_again(study: &mut Study) {
-    take_text(study, String::new());
+fn start_again(sheet: Sheet) {
+    sheet.change("", |study| take_text(study, String::new()));
+    focus_later(paste::PASTE_ID);
 }
 
 /// Puts a new text in the place of what was measured. What was chosen for the old text, its
 /// columns and its order for instance, says nothing about the new one.
 pub fn take_text(study: &mut Study, text: String) {
     if example::is_shown(study) {
-        study.title.clear();
+        example::leave(study);
     }
     let form = form_of(&text);
     study.measured = Measured { form, text, ..Measured::default() };

@@ -1,8 +1,11 @@
 //! Under the table: what was decided on the user's behalf, and what could not be used.
 
+use kinetics_core::problem::Problem;
+
 use super::super::once::once;
 use super::super::part::{Part, part};
 use super::super::sheet::Sheet;
+use super::rows::is_untouched;
 
 /// More than this in a list is counted, not shown.
 const MOST: usize = 40;
@@ -15,8 +18,11 @@ pub fn notes(sheet: Sheet) -> Part {
     let choices = once(sheet, |_, evaluation| {
         some(evaluation.findings.read.choices.iter().map(String::as_str))
     });
-    let problems = once(sheet, |_, evaluation| {
-        some(evaluation.findings.problems.iter().map(|problem| problem.sentence.as_str()))
+    let problems = once(sheet, |study, evaluation| {
+        // A table that is about to be typed has nothing wrong yet.
+        let found: &[Problem] =
+            if is_untouched(study) { &[] } else { &evaluation.findings.problems };
+        some(found.iter().map(|problem| problem.sentence.as_str()))
     });
     let count = problems.clone();
     let heading = move || match count().1 {

@@ -8,6 +8,9 @@ use super::super::live::State;
 use super::super::part::{Part, button, part, value_of};
 use super::super::sheet::Sheet;
 
+/// The name of the area's element.
+pub const PASTE_ID: &str = "paste";
+
 /// What a paste may look like.
 const SAMPLE: &str = "T/°C\tk, 1/h\ts(k)\n50\t0.0184\t0.0009\n60\t0.0547\t0.0027\n…";
 
@@ -25,7 +28,7 @@ pub fn first(sheet: Sheet) -> Vec<Part> {
 pub fn area(sheet: Sheet, wanted: Option<State<bool>>) -> Part {
     let typed = State::new(String::new());
     let take = move |text: String| {
-        arrivals::take_text(sheet, text);
+        arrivals::take_text(sheet, text, arrivals::PASTE);
         if let Some(wanted) = &wanted {
             wanted.set(false);
         }
@@ -34,7 +37,7 @@ pub fn area(sheet: Sheet, wanted: Option<State<bool>>) -> Part {
     let (take_paste, take_typed) = (std::rc::Rc::clone(&take), take);
     let (content, writing) = (typed.clone(), typed.clone());
     let area = part("textarea")
-        .with("id", "paste")
+        .with("id", PASTE_ID)
         .with("spellcheck", "false")
         .with("autocomplete", "off")
         .with("placeholder", SAMPLE)
@@ -54,7 +57,7 @@ pub fn area(sheet: Sheet, wanted: Option<State<bool>>) -> Part {
     };
     part("div")
         .class("paste")
-        .add(part("label").class("unseen").with("for", "paste").text("Table of what was measured"))
+        .add(part("label").class("unseen").with("for", PASTE_ID).text("Table of what was measured"))
         .add(area)
         .when(move || !is_typed.get().trim().is_empty(), read)
 }

@@ -9,13 +9,15 @@ use kinetics_core::quantity::Quantity;
 use kinetics_core::study::Excluded;
 use kinetics_core::table::{Content, Role, Table};
 use wasm_bindgen::JsCast;
-use web_sys::{HtmlInputElement, KeyboardEvent};
+use web_sys::{ClipboardEvent, HtmlInputElement, KeyboardEvent};
 
+use super::super::arrivals;
 use super::super::blank::{Complaint, Gap, blank};
 use super::super::live::State;
 use super::super::part::{Part, drawn, part, value_of};
 use super::super::sheet::Sheet;
 use super::edit::with_cell;
+use super::range;
 use super::rows::Rows;
 use crate::figure::geometry::Point;
 use crate::figure::scene::{self, Dash, Marker, Shape, Stroke};
@@ -132,9 +134,14 @@ fn use_mark(rows: &Rc<Rows>, at: usize, line: usize) -> Part {
         .with("aria-hidden", "true")
         .styled("color", colour)
         .add(drawn("path").follows("d", outline));
+    let does = move || {
+        let does = if is_left_out(sheet, at) { "take it back in" } else { "leave it out" };
+        Some(does.to_owned())
+    };
     part("label")
         .class("use")
         .with("title", "Leave this row out, or take it back in")
+        .follows("data-does", does)
         .add(tick)
         .add(drawing)
 }
@@ -188,6 +195,11 @@ fn look(rows: &Rows, at: usize, column: usize) -> &'static str {
     }
 }
 
+/// The name of a cell's element.
+pub fn cell_id(at: usize, column: usize) -> String {
+    format!("cell-{at}-{column}")
+}
+
 /// A cell in which one types.
 struct Typing {
     rows: Rc<Rows>,
@@ -210,10 +222,11 @@ fn cell(rows: &Rc<Rows>, at: usize, column: usize) -> Part {
         let mode = if look(&kind, at, column) == "words" { "text" } else { "decimal" };
         Some(mode.to_owned())
     };
-    let (text, write, leave, enter) =
-        (Rc::clone(&typing), Rc::clone(&typing), Rc::clone(&typing), typing);
+    let (text, write, leave, enter, paste) =
+        (Rc::clone(&typing), Rc::clone(&typing), Rc::clone(&typing), Rc::clone(&typing), typing);
     let input = part("input")
         .with("type", "text")
+        .with("id", &cell_id(at, column))
         .with("autocomplete", "off")
         .with("spellcheck", "false")
         .follows("inputmode", mode)
@@ -227,6 +240,13 @@ fn cell(rows: &Rc<Rows>, at: usize, column: usize) -> Part {
         .on("keydown", move |event| {
             if event.dyn_ref::<KeyboardEvent>().is_some_and(|key| key.key() == "Enter") {
                 enter.left();
+            }
+        })
+        .on("paste", move |event| {
+            let pasted = event.dyn_ref::<ClipboardEvent>().and_then(arrivals::text_of_paste);
+            if let Some(pasted) = pasted.filter(|text| range::is_range(text)) {
+                event.prevent_default();
+                paste.pasted(&pasted);
             }
         });
     part("td").follows("class", move || Some(look(&looks, at, column).to_owned())).add(input)
@@ -249,6 +269,23 @@ impl Typing {
             self.draft.set(None);
         }
         self.rows.sheet.seal();
+    }
+
+    /// A range of a spreadsheet goes into this cell and those below and to the right.
+    fn pasted(&self, pasted: &str) {
+        let sheet = self.rows.sheet;
+        self.draft.set(None);
+        let (study, prepared) = (sheet.study(), sheet.prepared());
+        let place = (self.at, self.column);
+        let hints = kinetics_core::study::hints(&study);
+        let columns = (self.rows.columns)().len();
+        let filled =
+            range::filled(&study.measured.text, &prepared.table, &hints, columns, place, pasted);
+        sheet.change("", |study| study.measured.text = filled.text);
+        sheet.tell(match filled.left_over {
+            0 => "The range is pasted into the table. Undo takes it out again.",
+            _ => "The range is wider than the table: what lies to the right of it is not pasted.",
+        });
     }
 
     fn keep(&self, typed: &str) {
@@ -310,7 +347,7 @@ fn left_out(rows: &Rc<Rows>, at: usize) -> Part {
         leave: Box::new(move || sheet.seal()),
         complaint: Complaint::new(None),
         id: format!("reason-{at}"),
-        hint: "why?",
+        hint: "why?".into(),
     });
     note(rows, "note left-out-because", part("td").text("left out because ").add(reason))
 }

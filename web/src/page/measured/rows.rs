@@ -34,6 +34,22 @@ pub fn begin_typing(study: &mut Study) {
     super::take_text(study, TYPED_HEADING.to_owned());
 }
 
+/// Whether nothing is typed into an empty table yet.
+pub fn is_untouched(study: &Study) -> bool {
+    study.measured.text == TYPED_HEADING
+}
+
+/// What marks mean, and what they do.
+pub fn about_marks(sheet: Sheet) -> Part {
+    part("p")
+        .class("about-marks quiet")
+        .is("hidden", move || sheet.prepared().table.rows.is_empty())
+        .text(
+            "A row’s mark tells its temperature by colour and by shape, ▼ ■ ● ◆ ▲ from cold to \
+             warm. Press it to leave the row out; it is hollow then.",
+        )
+}
+
 /// What rows need to know of the sheet.
 pub struct Rows {
     /// The sheet.
