@@ -5,7 +5,7 @@ use super::Observation;
 use super::cells::{TemperatureColumn, number, shown, temperature_name, to_sd};
 use crate::problem::{Position, Problem};
 use crate::quantity::Kelvin;
-use crate::table::{Cell, Column, Content, ErrorKind, Role, Row, Table};
+use crate::table::{Cell, Column, Content, ErrorKind, NamedExtent, Role, Row, Table, named_extent};
 use crate::units::{HeatRateUnit, RateUnit, TemperatureUnit, TimeUnit};
 
 /// What was measured at each temperature; each tells ln k up to a constant.
@@ -72,6 +72,8 @@ pub struct Rates {
     pub left_out: Vec<LeftOut>,
     /// Unit of k as stated; none where nothing states it.
     pub unit: Option<RateUnit>,
+    /// The extent that the head of a column of times names.
+    pub extent: Option<NamedExtent>,
     /// Scale of the temperatures as stated or assumed.
     pub temperature_unit: Option<TemperatureUnit>,
     /// Usable runs that state no error although others do.
@@ -160,6 +162,9 @@ impl<'t> Layout<'t> {
         let first = values.first()?.0;
         let unit = columns[first].unit.as_deref().and_then(|unit| RateUnit::parse(unit).ok());
         rates.unit = unit;
+        if measurand == Measurand::Time {
+            rates.extent = named_extent(&columns[first].header);
+        }
         rates.temperature_unit = Some(temperature.unit);
         let label = columns.iter().position(|c| matches!(c.role, Role::Label | Role::Run));
         Some(Self { columns, measurand, temperature, values, label, unit })

@@ -13,7 +13,7 @@ use crate::quantity::Quantity;
 use crate::rate_law::Order;
 use crate::remark::{Remark, Severity};
 use crate::rivals::Rival;
-use crate::table::Form;
+use crate::table::{Form, NamedExtent};
 use crate::temperature_law::{FittedLaw, TemperatureLaw};
 use crate::units::{ConcentrationKind, RateUnit, TimeUnit};
 
@@ -84,8 +84,10 @@ fn build(
         }
         Form::Rates => learn(study, rates, law, remarks)?,
         Form::Times => {
-            times_to_rates(study, rates, order)?;
-            learn(study, rates, law, remarks)?
+            let choice = times_to_rates(study, rates, order)?;
+            let mut learnt = learn(study, rates, law, remarks)?;
+            learnt.choices.extend(choice);
+            learnt
         }
         Form::HeatRates => {
             heat_to_rates(study, rates, order)?;
@@ -115,25 +117,46 @@ fn build(
     Ok((basis, learnt))
 }
 
-/// Times to one stated extent: ln k = ln θ_X − ln t.
-fn times_to_rates(study: &Study, rates: &mut Rates, order: Order) -> Result<(), Refusal> {
+/// Times to one extent, stated or named in their head: ln k = ln θ_X − ln t. Gives what was taken
+/// from the head, in words.
+fn times_to_rates(
+    study: &Study,
+    rates: &mut Rates,
+    order: Order,
+) -> Result<Option<String>, Refusal> {
     if rates.runs.is_empty() {
-        return Ok(());
+        return Ok(None);
     }
     let needs = "State the part that is gone at these times, for example 5 %.";
-    let extent =
-        study.measured.extent.as_ref().ok_or_else(|| {
-            Refusal::new("The times do not say to which extent they belong.", needs)
-        })?;
     let initial = initial_concentration(study, None, order)?;
-    let fraction = match (extent.fraction(), extent.concentration(), initial) {
-        (Ok(fraction), ..) => fraction,
-        (_, Ok((gone, kind)), Some(initial)) if kind == initial.kind => gone / initial.value,
-        _ => {
+    let percent = |fraction: f64| display(study).percent(fraction);
+    let mut choice = None;
+    let fraction = match (&study.measured.extent, rates.extent) {
+        (Some(extent), _) => match (extent.fraction(), extent.concentration(), initial) {
+            (Ok(fraction), ..) => fraction,
+            (_, Ok((gone, kind)), Some(initial)) if kind == initial.kind => gone / initial.value,
+            _ => {
+                return Err(Refusal::new(
+                    format!("The extent {extent} is no part of a stated initial concentration."),
+                    needs,
+                ));
+            }
+        },
+        (None, Some(NamedExtent::Gone(fraction))) => {
+            let part = percent(fraction);
+            choice = Some(format!("The head of the times says that {part} is gone at them."));
+            fraction
+        }
+        (None, Some(NamedExtent::Unclear(fraction))) => {
+            let (part, rest) = (percent(fraction), percent(1.0 - fraction));
             return Err(Refusal::new(
-                format!("The extent {extent} is no part of a stated initial concentration."),
-                needs,
+                format!("The head of the times may mean that {part} is gone, or that it is left."),
+                format!("State the part that is gone at these times, {part} or {rest}."),
             ));
+        }
+        (None, None) => {
+            let reason = "The times do not say to which extent they belong.";
+            return Err(Refusal::new(reason, needs));
         }
     };
     let ln_theta = order
@@ -141,7 +164,7 @@ fn times_to_rates(study: &Study, rates: &mut Rates, order: Order) -> Result<(), 
         .map_err(|error| Refusal::new(format!("The times give no rate: {error}."), needs))?;
     let kind = initial.map_or(ConcentrationKind::Molar, |c| c.kind);
     rates.shift(ln_theta, RateUnit::for_order(order.value(), kind.base(), TimeUnit::Second));
-    Ok(())
+    Ok(choice)
 }
 
 /// Heat rates at the start: k = q/Q for first order, where the heat of reaction Q is stated;

@@ -25,6 +25,7 @@ use std::ops::Range;
 
 use serde::{Deserialize, Serialize};
 
+pub use header::{NamedExtent, named_extent};
 pub use reader::{Reader, read_table};
 pub use role::{ErrorKind, Form, Role, SignalIs};
 pub use view::{CellView, NoteView, RowView, TableView};

@@ -5,12 +5,14 @@
 //! `t in min`, `time h`, until a part is a unit that suits what the words say.
 
 mod cut;
+mod extent;
 mod multiplier;
 mod special;
 mod units;
 mod words;
 
 pub(super) use cut::cut_line;
+pub use extent::{NamedExtent, named_extent};
 use multiplier::{Factor, factor};
 pub(super) use special::without_humidity;
 use units::{Family, Measure, measure};
