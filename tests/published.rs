@@ -16,6 +16,8 @@ mod linear_fit;
 mod linear_laws;
 #[path = "published/nonlinear_fit.rs"]
 mod nonlinear_fit;
+#[path = "published/progress_curves.rs"]
+mod progress_curves;
 #[path = "published/rate_constants.rs"]
 mod rate_constants;
 #[path = "published/rules.rs"]

@@ -6,7 +6,7 @@ use super::cells::{TemperatureColumn, number, shown, temperature_name, to_sd};
 use crate::problem::{Position, Problem};
 use crate::quantity::Kelvin;
 use crate::table::{Cell, Column, Content, ErrorKind, NamedExtent, Role, Row, Table, named_extent};
-use crate::units::{HeatRateUnit, RateUnit, TemperatureUnit, TimeUnit};
+use crate::units::{ConcentrationKind, HeatRateUnit, RateUnit, TemperatureUnit, TimeUnit};
 
 /// What was measured at each temperature; each tells ln k up to a constant.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
@@ -51,6 +51,13 @@ pub struct Run {
     pub groups: Vec<(usize, String)>,
 }
 
+impl Run {
+    /// A run that shares nothing with others.
+    pub fn new(row: usize, name: String, observation: Observation) -> Self {
+        Self { row, name, observation, groups: Vec::new() }
+    }
+}
+
 /// A row that gave no run although it could be read.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct LeftOut {
@@ -74,6 +81,8 @@ pub struct Rates {
     pub unit: Option<RateUnit>,
     /// The extent that the head of a column of times names.
     pub extent: Option<NamedExtent>,
+    /// The initial concentration that the runs themselves tell, in the base unit of its kind.
+    pub initial_concentration: Option<(f64, ConcentrationKind)>,
     /// Scale of the temperatures as stated or assumed.
     pub temperature_unit: Option<TemperatureUnit>,
     /// Usable runs that state no error although others do.

@@ -11,7 +11,7 @@ mod search;
 
 pub use curves::Level;
 pub use noise::Noise;
-pub use orders::{FreeOrder, RankedOrder, USUAL_ORDERS, compare_orders, free_order};
+pub use orders::{FreeOrder, RankedOrder, USUAL_ORDERS, aicc_of, compare_orders, free_order};
 
 use thiserror::Error;
 

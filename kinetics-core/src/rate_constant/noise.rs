@@ -1,11 +1,14 @@
 //! How much signals scatter about their curves, and what that makes of each rate constant.
 
+use serde::{Deserialize, Serialize};
+
 use super::{NoRate, RunFit, Settings};
 use crate::measurements::ProgressRun;
 use crate::numeric::distributions::chi_squared_tail;
 
 /// How the noise of a signal goes with its size, where no errors are stated.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
 pub enum Noise {
     /// The same at every signal.
     #[default]

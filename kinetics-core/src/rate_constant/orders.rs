@@ -47,7 +47,11 @@ struct Total {
 /// All runs at order n; none where one of them has no minimum there.
 fn total(runs: &[ProgressRun], settings: &Settings, order: f64) -> Option<Total> {
     let law = RateLaw::Order(Order::new(order)?);
-    let outcomes: Vec<Result<RunFit, NoRate>> = fit_runs(runs, &Settings { law, ..*settings });
+    total_under(runs, &Settings { law, ..*settings })
+}
+
+fn total_under(runs: &[ProgressRun], settings: &Settings) -> Option<Total> {
+    let outcomes: Vec<Result<RunFit, NoRate>> = fit_runs(runs, settings);
     let mut total = Total { squares: 0.0, points: 0, parameters: 0 };
     for outcome in outcomes {
         let fit = outcome.ok()?;
@@ -87,6 +91,11 @@ pub fn compare_orders(runs: &[ProgressRun], settings: &Settings) -> Vec<RankedOr
     let mut ranked: Vec<RankedOrder> = found.into_iter().map(|(ranked, _)| ranked).collect();
     ranked.sort_by(|a, b| a.weighted_sum_of_squares.total_cmp(&b.weighted_sum_of_squares));
     ranked
+}
+
+/// AICc of all runs under these settings; none where it is undefined or a run has no minimum.
+pub fn aicc_of(runs: &[ProgressRun], settings: &Settings) -> Option<f64> {
+    aicc(&total_under(runs, settings)?, runs.iter().all(ProgressRun::states_errors))
 }
 
 fn aicc(total: &Total, stated: bool) -> Option<f64> {

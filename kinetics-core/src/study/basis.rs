@@ -4,9 +4,10 @@
 use super::assumptions::{
     display, initial_concentration, level, order, stated_order, temperature_law,
 };
+use super::courses::Courses;
 use super::document::Study;
 use super::learning::{Learnt, learn};
-use crate::answer::{Basis, Refusal};
+use crate::answer::{Basis, InitialConcentration, Refusal};
 use crate::grounds::Support;
 use crate::measurements::{Grouped, Rates};
 use crate::quantity::Quantity;
@@ -33,9 +34,9 @@ pub(super) struct Ground {
 }
 
 /// Lays the ground for answers; runs that were not rate constants become such on the way.
-pub(super) fn lay(study: &Study, rates: &mut Rates) -> Ground {
+pub(super) fn lay(study: &Study, rates: &mut Rates, courses: &mut Courses) -> Ground {
     let mut remarks = version_remark(study);
-    let outcome = build(study, rates, &mut remarks);
+    let outcome = build(study, rates, courses, &mut remarks);
     let stated = stated_order(study).or(unit_of(study, rates).map(RateUnit::order));
     match outcome {
         Ok((basis, learnt)) => Ground {
@@ -64,10 +65,12 @@ pub(super) fn lay(study: &Study, rates: &mut Rates) -> Ground {
 fn build(
     study: &Study,
     rates: &mut Rates,
+    courses: &mut Courses,
     remarks: &mut Vec<Remark>,
 ) -> Result<(Basis, Learnt), Refusal> {
     let level = level(study)?;
     let law = temperature_law(study)?;
+    courses.fit(study, rates, remarks)?;
     let order = order(study, unit_of(study, rates), remarks)?;
     let learnt = match study.measured.form {
         Form::KnownLaw => {
@@ -82,7 +85,7 @@ fn build(
                 choices: Vec::new(),
             }
         }
-        Form::Rates => learn(study, rates, law, remarks)?,
+        Form::Rates | Form::Progress => learn(study, rates, law, remarks)?,
         Form::Times => {
             let choice = times_to_rates(study, rates, order)?;
             let mut learnt = learn(study, rates, law, remarks)?;
@@ -101,6 +104,8 @@ fn build(
         }
     };
     let unit = unit_of(study, rates);
+    let inferred =
+        rates.initial_concentration.map(|(value, kind)| InitialConcentration { value, kind });
     let not_excluded = learnt.rivals.iter().filter(|rival| !rival.is_excluded());
     let basis = Basis {
         law: learnt.law.clone(),
@@ -109,7 +114,7 @@ fn build(
         order,
         base_unit: unit.map(RateUnit::base),
         shown_unit: unit,
-        initial_concentration: initial_concentration(study, unit, order)?,
+        initial_concentration: initial_concentration(study, unit, order)?.or(inferred),
         support: learnt.support.clone(),
         level,
         display: display(study),

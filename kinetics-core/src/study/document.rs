@@ -8,7 +8,8 @@ use thiserror::Error;
 
 use crate::problem::{Position, Problem, shortened};
 use crate::quantity::Quantity;
-use crate::table::{Decimal, ErrorKind, Form, Role};
+use crate::rate_constant::Noise;
+use crate::table::{Decimal, ErrorKind, Form, Role, SignalIs};
 use crate::temperature_law::ScatterChoice;
 
 /// The version of the study format that is written here.
@@ -96,6 +97,18 @@ pub struct Measured {
     /// Initial concentration, for orders other than one.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub initial_concentration: Option<Quantity>,
+    /// Progress: whether the signal follows what is left or what forms.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub signal_is: Option<SignalIs>,
+    /// Progress: the signal at time zero; free where absent.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub start: Option<LevelChoice>,
+    /// Progress: the signal when all has reacted.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub end: Option<LevelChoice>,
+    /// Progress: how noise goes with the signal; constant where absent.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub noise: Option<Noise>,
     /// Times: the part gone at each of them.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub extent: Option<Quantity>,
@@ -228,6 +241,26 @@ pub enum OrderWord {
     Free,
     /// Chosen among usual ones.
     Compare,
+}
+
+/// A level of a signal, or how to find it.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(untagged)]
+pub enum LevelChoice {
+    /// `free` or `shared`.
+    Word(LevelWord),
+    /// Given; without a unit where the signal has none.
+    Given(Quantity),
+}
+
+/// How a level is found.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
+pub enum LevelWord {
+    /// For each run.
+    Free,
+    /// Once for all runs; starts only.
+    Shared,
 }
 
 /// The code of a temperature law.

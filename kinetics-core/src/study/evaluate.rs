@@ -2,6 +2,7 @@
 
 use super::assumptions::{USUAL_LEVEL, level};
 use super::basis::{self, Ground};
+use super::courses::{Course, CourseFindings, Courses};
 use super::document::Study;
 use super::findings::{Findings, LawFindings, Read, RunFindings};
 use super::record;
@@ -28,6 +29,8 @@ pub struct Evaluation {
     pub basis: Option<Basis>,
     /// Runs behind it.
     pub rates: Rates,
+    /// Their curves, one a run; progress data only.
+    pub courses: Vec<Course>,
 }
 
 /// How a study's text is to be read.
@@ -75,8 +78,13 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         rates(table, measurand, &excluded, study.measured.error_is)
     });
 
+    let mut courses = Courses::read(study, table, &excluded);
+    if study.measured.form == Form::Progress {
+        rates = courses.rates();
+    }
+
     let Ground { basis, refusal, mut remarks, order, rivals, alternatives, grouped, choices } =
-        basis::lay(study, &mut rates);
+        basis::lay(study, &mut rates, &mut courses);
     let answers: Vec<Answer> = (0..study.asked.len())
         .map(|at| question::answer_among(&study.asked, at, basis.as_ref().ok_or(&refusal)))
         .collect();
@@ -105,8 +113,12 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         answers,
         record: record::empty(&study.measured.text),
     };
+    for (run, course) in findings.runs.iter_mut().zip(&courses.fitted) {
+        run.course = Some(CourseFindings::of(course));
+    }
+    findings.read.choices.append(&mut courses.choices);
     record::write(study, &mut findings);
-    Evaluation { findings, basis, rates }
+    Evaluation { findings, basis, rates, courses: courses.fitted }
 }
 
 /// What was decided in reading that could as well be otherwise and would change every answer.
@@ -199,6 +211,7 @@ fn runs(rates: &Rates, basis: Option<&Basis>, order: Option<f64>, level: f64) ->
             row: run.row,
             temperature_kelvin: run.observation.temperature.0,
             rate_constant: super::findings::stated_rate(run, &unit, level),
+            course: None,
             order,
             ln_residual: basis
                 .map(|b| run.observation.ln_rate - b.law.ln_rate(run.observation.temperature)),

@@ -3,6 +3,7 @@
 use nalgebra::DMatrix;
 use serde::Serialize;
 
+use super::courses::CourseFindings;
 use super::document::Excluded;
 use crate::answer::{Answer, Basis, WhyNoInterval};
 use crate::citation::Citation;
@@ -73,6 +74,9 @@ pub struct RunFindings {
     pub rate_constant: Estimate,
     /// Order of reaction.
     pub order: Option<f64>,
+    /// The curve behind the rate constant; progress data only.
+    #[serde(flatten)]
+    pub course: Option<CourseFindings>,
     /// Measured minus fitted ln k; none without a law.
     pub ln_residual: Option<f64>,
     /// What it shares with other runs, where the data say so.

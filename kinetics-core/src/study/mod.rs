@@ -2,15 +2,17 @@
 
 mod assumptions;
 mod basis;
+mod courses;
 mod document;
 mod evaluate;
 mod findings;
 mod learning;
 mod record;
 
+pub use courses::{Course, CourseFindings};
 pub use document::{
-    Assumed, ColumnChoice, DisplayChoice, Excluded, HeatData, LawChoice, Measured, OrderChoice,
-    StatedQuantity, Study, StudyError, Thermometer, VERSION,
+    Assumed, ColumnChoice, DisplayChoice, Excluded, HeatData, LawChoice, LevelChoice, LevelWord,
+    Measured, OrderChoice, OrderWord, StatedQuantity, Study, StudyError, Thermometer, VERSION,
 };
 pub use evaluate::{Evaluation, Prepared, evaluate, evaluate_prepared, hints, prepare};
 pub use findings::{

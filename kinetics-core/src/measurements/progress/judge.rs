@@ -12,6 +12,9 @@ const STEADY_KELVIN: f64 = 2.0;
 /// A correlation with time beyond this shows which way a signal goes.
 const CLEAR_CORRELATION: f64 = 0.5;
 
+/// A signal below zero by no more than this part of the run's largest is noise about zero.
+const NOISE_ABOUT_ZERO: f64 = 0.05;
+
 pub(super) fn judge(gathered: Gathered, about: AboutSignals) -> ProgressRuns {
     let mut choices = gathered.choices;
     let signal_is = about.signal_is.or(gathered.signal_is).unwrap_or_else(|| {
@@ -121,7 +124,9 @@ fn fault(
             ),
         );
     }
-    if let Some(point) = points.iter().find(|point| point.signal < 0.0)
+    let largest = points.iter().map(|point| point.signal).fold(0.0, f64::max);
+    let too_low = |point: &&Point| point.signal < -NOISE_ABOUT_ZERO * largest;
+    if let Some(point) = points.iter().find(too_low)
         && !may_be_negative
     {
         return found(

@@ -62,7 +62,7 @@ fn each_bad_run_is_said_once_and_the_rest_is_kept() {
         ("60\t0\t100\n60\t20\t90\n60\t10\t95\n", "times that increase"),
         ("60\t0\t100\n", "two times or more"),
         ("60\t5\t100\n60\t5\t99\n", "two times or more"),
-        ("60\t0\t100\n60\t10\t-3\n", "a signal from zero up"),
+        ("60\t0\t100\n60\t10\t-30\n", "a signal from zero up"),
         ("60\t0\t100\n60\t10\t100\n", "a signal that changes"),
         ("60\t0\t80\n60\t10\t100\n", "a signal that falls"),
     ] {
