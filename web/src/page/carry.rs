@@ -88,7 +88,12 @@ impl Carrier {
         let shut = self.shown.clone();
         let close = button("Close", move || shut.set(None));
         let actions = part("div").class("actions");
-        let label = part("label").with("for", self.id).class("quiet").text(shown.hint);
+        // Pictures are no fields: they bear their own words.
+        let label = match shown.content {
+            Content::Text(_) => part("label").with("for", self.id),
+            Content::Picture(..) => part("p"),
+        };
+        let label = label.class("quiet").text(shown.hint);
         let (content, actions) = match &shown.content {
             Content::Text(text) => {
                 let whole = text.clone();
