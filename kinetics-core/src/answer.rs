@@ -373,7 +373,9 @@ pub fn sentence(wording: &Wording, side: Side) -> String {
 
 /// With a capital first letter.
 pub fn capitalised(text: &str) -> String {
-    let mut letters = text.chars();
-    let first: String = letters.next().map(|c| c.to_uppercase().collect()).unwrap_or_default();
-    format!("{first}{}", letters.as_str())
+    let mut text = text.to_owned();
+    if let Some(first) = text.get_mut(..1) {
+        first.make_ascii_uppercase();
+    }
+    text
 }

@@ -2,6 +2,7 @@
 
 use serde::Serialize;
 
+use crate::numeric::sorting::sort_by;
 use crate::quantity::Kelvin;
 use crate::wording::{Display, significant};
 
@@ -58,7 +59,7 @@ impl Support {
     /// The support of runs at these temperatures; none without runs.
     pub fn of_runs(temperatures: &[Kelvin], stated_errors: bool) -> Option<Self> {
         let mut sorted: Vec<f64> = temperatures.iter().map(|t| t.0).collect();
-        sorted.sort_by(f64::total_cmp);
+        sort_by(&mut sorted, |t| *t);
         sorted.dedup();
         let (first, last) = (*sorted.first()?, *sorted.last()?);
         Some(Self {

@@ -8,6 +8,7 @@
 //! known rather than fitted takes jjᵀ/s² directly.
 
 use crate::measurements::Observation;
+use crate::numeric::sorting::sort_by;
 use crate::quantity::Kelvin;
 use crate::temperature_law::{
     Component, Contrast, FittedLaw, LawError, Scatter, ScatterChoice, Target, fit,
@@ -65,7 +66,7 @@ pub fn run_sd(law: &FittedLaw, stated: Option<f64>) -> Option<f64> {
         }
         Scatter::AsStated | Scatter::AsStatedPlusRunToRun => stated.or_else(|| {
             let mut sds: Vec<f64> = law.runs.iter().filter_map(|run| run.ln_sd).collect();
-            sds.sort_by(f64::total_cmp);
+            sort_by(&mut sds, |sd| *sd);
             sds.get(sds.len() / 2).copied()
         }),
     }

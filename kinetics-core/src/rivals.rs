@@ -2,6 +2,7 @@
 //! same scatter choice and ranked by AICc.
 
 use crate::measurements::Observation;
+use crate::numeric::sorting::sort_by;
 use crate::temperature_law::{FittedLaw, Settings, TemperatureLaw, aicc, fit};
 
 /// A law above the best by more than this in AICc counts as excluded (Burnham & Anderson 2002,
@@ -72,7 +73,7 @@ pub fn rivals(
             Some(Rival { law, delta_aicc, weight })
         })
         .collect();
-    found.sort_by(|a, b| a.delta_aicc.unwrap_or(0.0).total_cmp(&b.delta_aicc.unwrap_or(0.0)));
+    sort_by(&mut found, |rival| rival.delta_aicc.unwrap_or(0.0));
     found
 }
 

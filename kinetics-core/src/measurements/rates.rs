@@ -3,6 +3,7 @@
 
 use super::Observation;
 use super::cells::{TemperatureColumn, number, shown, temperature_name, to_sd};
+use crate::numeric::sorting::sort_by;
 use crate::problem::{Position, Problem};
 use crate::quantity::Kelvin;
 use crate::table::{Cell, Column, Content, ErrorKind, NamedExtent, Role, Row, Table, named_extent};
@@ -113,7 +114,7 @@ pub fn rates(
     let Some(layout) = Layout::of(table, measurand, &mut rates) else { return rates };
     // Sorted once: 100,000 rows with as many exclusions stay quick.
     let mut excluded: Vec<&LeftOut> = excluded.iter().collect();
-    excluded.sort_by_key(|row| row.row);
+    sort_by(&mut excluded, |row| row.row as f64);
     for row in &table.rows {
         if let Ok(at) = excluded.binary_search_by_key(&row.line, |e| e.row) {
             rates.left_out.push(excluded[at].clone());

@@ -5,3 +5,4 @@ pub mod errors_in_both;
 pub mod least_squares;
 pub mod nonlinear;
 pub mod roots;
+pub mod sorting;

@@ -1,6 +1,7 @@
 //! Remarks on the runs and the law.
 
 use super::{Evidence, Remark, Severity};
+use crate::numeric::sorting::sort_by;
 use crate::temperature_law::{
     Scatter, Target, curvature as test_curvature, curvature_beyond_errors, influential,
 };
@@ -35,7 +36,7 @@ pub(super) fn negative_activation_energy(evidence: &Evidence) -> Option<Remark> 
 /// Runs at two temperatures only.
 pub(super) fn two_points(evidence: &Evidence) -> Option<Remark> {
     let mut distinct: Vec<f64> = evidence.observations.iter().map(|o| o.temperature.0).collect();
-    distinct.sort_by(f64::total_cmp);
+    sort_by(&mut distinct, |t| *t);
     distinct.dedup();
     // Where groups are too few for intervals, that is said.
     let grouped = evidence.basis.law.settings.within_groups.is_some();

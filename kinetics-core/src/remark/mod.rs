@@ -12,6 +12,7 @@ use serde::Serialize;
 
 use crate::answer::{Answer, Basis};
 use crate::measurements::Observation;
+use crate::numeric::sorting::sort_by;
 use crate::quantity::JoulesPerMole;
 
 /// How much a remark weighs.
@@ -91,6 +92,6 @@ const CHECKS: [Check; 15] = [
 /// All remarks that fire, the weightiest first.
 pub fn remarks(evidence: &Evidence) -> Vec<Remark> {
     let mut found: Vec<Remark> = CHECKS.iter().filter_map(|check| check(evidence)).collect();
-    found.sort_by_key(|remark| remark.severity);
+    sort_by(&mut found, |remark| f64::from(remark.severity as u8));
     found
 }

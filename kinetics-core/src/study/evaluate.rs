@@ -8,6 +8,7 @@ use super::findings::{Findings, LawFindings, Read, RunFindings};
 use super::record;
 use crate::answer::{Answer, Basis};
 use crate::measurements::{Grouped, LeftOut, Measurand, Rates, Run, rates};
+use crate::numeric::sorting::sort_by;
 use crate::question;
 use crate::remark::{Evidence, Remark, Severity, remarks};
 use crate::table::{ColumnHint, Form, Hints, Table, read_table};
@@ -90,7 +91,7 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         .collect();
     remarks.extend(own_remarks(study, &rates, basis.as_ref(), grouped.as_ref(), &answers));
     remarks.extend(doubts(study, table));
-    remarks.sort_by_key(|remark| remark.severity);
+    sort_by(&mut remarks, |remark| f64::from(remark.severity as u8));
 
     let level = level(study).unwrap_or(USUAL_LEVEL);
     let mut problems = study.problems.clone();

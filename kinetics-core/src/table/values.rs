@@ -3,6 +3,7 @@
 
 use super::Row;
 use super::header::without_humidity;
+use crate::numeric::sorting::sort_by;
 use crate::text::number::{Reading, read_cell};
 use crate::text::{Decimal, stamp};
 
@@ -84,7 +85,7 @@ impl Values {
             }
             values.numbers.push(number);
         }
-        values.units.sort_by_key(|(_, count)| std::cmp::Reverse(*count));
+        sort_by(&mut values.units, |(_, count)| -(*count as f64));
         if stamps * 2 > values.filled {
             values.time_shape = TimeShape::Stamps;
         } else if clocks * 2 > values.filled {
@@ -140,7 +141,7 @@ impl Values {
     pub fn repeats(&self) -> bool {
         let mut sorted: Vec<f64> = self.present().collect();
         let count = sorted.len();
-        sorted.sort_by(f64::total_cmp);
+        sort_by(&mut sorted, |value| *value);
         sorted.dedup();
         count >= 4 && sorted.len() * 2 <= count
     }

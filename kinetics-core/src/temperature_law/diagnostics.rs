@@ -7,6 +7,7 @@ use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::measurements::{Observation, independent_runs};
 use crate::numeric::distributions::{f_tail, student_t_quantile};
 use crate::numeric::least_squares;
+use crate::numeric::sorting::sort_by;
 
 /// The F test of a further term in (1/T − 1/T0)² (Draper & Smith, Applied Regression
 /// Analysis, 3rd ed. 1998, §6.1; from memory).
@@ -127,7 +128,7 @@ pub fn influential(fitted: &FittedLaw) -> Vec<Influence> {
             })
         })
         .collect();
-    found.sort_by(|a, b| b.cooks_distance.total_cmp(&a.cooks_distance));
+    sort_by(&mut found, |run| -run.cooks_distance);
     found
 }
 
@@ -154,7 +155,7 @@ pub fn lack_of_fit(fitted: &FittedLaw, observations: &[Observation]) -> Option<L
     }
     let mut order: Vec<usize> = (0..observations.len()).collect();
     let temperature = |i: usize| observations[i].temperature.0;
-    order.sort_by(|a, b| temperature(*a).total_cmp(&temperature(*b)));
+    sort_by(&mut order, |i| temperature(*i));
     let (mut temperatures, mut pure) = (0, 0.0);
     for alike in order.chunk_by(|a, b| temperature(*a) == temperature(*b)) {
         temperatures += 1;

@@ -13,6 +13,7 @@ use super::{Component, FittedLaw, Kernel, MAX_PARAMETERS, TemperatureLaw};
 use crate::measurements::{Observation, independent_runs};
 use crate::numeric::distributions::chi_squared_tail;
 use crate::numeric::least_squares::{self, LeastSquaresError, LinearFit};
+use crate::numeric::sorting::sort_by;
 use crate::quantity::Kelvin;
 
 /// Which scatter is asked for.
@@ -162,7 +163,7 @@ impl Problem {
             return Err(LawError::NothingMeasured);
         }
         let mut distinct: Vec<f64> = observations.iter().map(|o| o.temperature.0).collect();
-        distinct.sort_by(f64::total_cmp);
+        sort_by(&mut distinct, |t| *t);
         distinct.dedup();
         let needed = law.parameters();
         if distinct.len() < needed {

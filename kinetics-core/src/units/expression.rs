@@ -174,8 +174,7 @@ impl Reader<'_> {
                 }
             }
         }
-        whole.factors.retain(|(_, power)| power.abs() > 1e-9);
-        whole.factors.sort_by(|a, b| a.0.cmp(b.0));
+        whole.settle();
         (count > 0).then_some(whole)
     }
 
@@ -351,9 +350,14 @@ impl Expression {
             plain.scale *= libm::pow(size, *power);
             plain.add(plain_symbol, *power);
         }
-        plain.factors.retain(|(_, power)| power.abs() > 1e-9);
-        plain.factors.sort_by(|a, b| a.0.cmp(b.0));
+        plain.settle();
         plain
+    }
+
+    /// Drops what has cancelled and puts the rest into one order.
+    fn settle(&mut self) {
+        self.factors.retain(|(_, power)| power.abs() > 1e-9);
+        self.factors.sort_by(|a, b| a.0.cmp(b.0));
     }
 
     fn equals(&self, other: &Expression) -> bool {

@@ -5,6 +5,7 @@
 
 use super::expression::{Expression, readings};
 use super::{ConcentrationUnit, TimeUnit, UnitError};
+use crate::numeric::sorting::sort_by;
 
 /// The unit of a rate constant.
 #[derive(Clone, Copy, Debug, PartialEq, serde::Serialize, serde::Deserialize)]
@@ -147,7 +148,7 @@ impl RateUnit {
     #[must_use]
     pub fn symbol(self) -> String {
         let mut terms = self.terms();
-        terms.sort_by(|a, b| b.1.signum().total_cmp(&a.1.signum()));
+        sort_by(&mut terms, |(_, power)| -power.signum());
         let written: Vec<String> =
             terms.iter().map(|(symbol, power)| format!("{symbol}{}", raised(*power))).collect();
         written.join(" ")

@@ -5,6 +5,7 @@ use kinetics_core::units::TemperatureUnit;
 use super::scale::Scale;
 use super::scene::FontRole;
 use super::text_size::text_width;
+use kinetics_core::numeric::sorting::sort_by;
 
 /// A number written along an axis.
 #[derive(Debug, Clone, PartialEq)]
@@ -163,7 +164,7 @@ pub fn temperature_ticks(scale: &Scale, unit: TemperatureUnit) -> Vec<Tick> {
         }
     }
     values.retain(|value| (low - 1e-9..=high + 1e-9).contains(value));
-    values.sort_by(f64::total_cmp);
+    sort_by(&mut values, |value| *value);
     values.dedup_by(|a, b| (*a - *b).abs() < 1e-6);
     let mut ticks: Vec<Tick> = values.into_iter().map(|value| window.tick(value)).collect();
     window.fill(&mut ticks, coarse);

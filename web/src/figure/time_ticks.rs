@@ -3,6 +3,7 @@
 
 use super::scale::Scale;
 use super::ticks::{Tick, linear_ticks, number, superscript};
+use kinetics_core::numeric::sorting::sort_by;
 
 const MINUTE: f64 = 60.0;
 const HOUR: f64 = 60.0 * MINUTE;
@@ -111,7 +112,7 @@ pub fn time_ticks(scale: &Scale, least_distance: f64) -> Vec<Tick> {
         return between_rungs(low, high);
     }
     let mut ticks: Vec<Tick> = placed.into_iter().map(|(_, tick)| tick).collect();
-    ticks.sort_by(|a, b| a.value.total_cmp(&b.value));
+    sort_by(&mut ticks, |tick| tick.value);
     ticks
 }
 

@@ -5,6 +5,7 @@ use std::collections::HashMap;
 
 use super::super::cells::{TemperatureColumn, number, shown, temperature_name, to_sd};
 use super::{LeftOut, Point};
+use crate::numeric::sorting::sort_by;
 use crate::problem::{Position, Problem};
 use crate::quantity::Kelvin;
 use crate::table::{Cell, Column, Content, ErrorKind, Role, Row, SignalIs, Table};
@@ -56,7 +57,7 @@ pub(super) fn gather(table: &Table, excluded: &[LeftOut], error_is: Option<Error
     };
     let Some(layout) = Layout::of(table, error_is, &mut gathered) else { return gathered };
     let mut excluded: Vec<&LeftOut> = excluded.iter().collect();
-    excluded.sort_by_key(|row| row.row);
+    sort_by(&mut excluded, |row| row.row as f64);
     let mut places = HashMap::new();
     for row in &table.rows {
         match excluded.binary_search_by_key(&row.line, |e| e.row) {

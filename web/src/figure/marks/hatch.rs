@@ -1,6 +1,7 @@
 //! Slanted strokes: over a surface, or along a line in place of it.
 
 use super::super::geometry::{Area, Point};
+use kinetics_core::numeric::sorting::sort_by;
 
 /// Distance between the strokes over a surface, in CSS pixels.
 const OVER: f64 = 7.0;
@@ -31,7 +32,7 @@ pub fn over(outline: &[Point], area: Area) -> Vec<[Point; 2]> {
                 ((a < 0.0) != (b < 0.0)).then(|| from.toward(*to, a / (a - b)).x)
             })
             .collect();
-        crossings.sort_by(f64::total_cmp);
+        sort_by(&mut crossings, |x| *x);
         for pair in crossings.chunks_exact(2) {
             let (from, to) =
                 (Point::new(pair[0], sum - pair[0]), Point::new(pair[1], sum - pair[1]));

@@ -3,6 +3,7 @@
 
 use std::rc::Rc;
 
+use kinetics_core::numeric::sorting::sort_by;
 use kinetics_core::study::{ColumnChoice, Study};
 use kinetics_core::table::{Column, Origin, Role};
 use kinetics_core::units::{RateUnit, TemperatureUnit};
@@ -78,7 +79,7 @@ fn roles(column: &Column) -> Vec<Choice> {
         .iter()
         .map(|role| Choice::new(role.code(), role.words()).under(group(*role)))
         .collect();
-    choices.sort_by_key(|choice| choice.group.is_empty());
+    sort_by(&mut choices, |choice| f64::from(choice.group.is_empty()));
     choices
 }
 
@@ -102,7 +103,7 @@ fn units(column: &Column) -> Vec<Choice> {
         let shown = symbol(column.role, &unit);
         Choice::new(unit, shown).under(if is_read { "as read" } else { "" })
     }));
-    choices.sort_by_key(|choice| choice.group.is_empty());
+    sort_by(&mut choices, |choice| f64::from(choice.group.is_empty()));
     choices
 }
 

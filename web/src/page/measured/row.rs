@@ -4,6 +4,7 @@ use std::collections::BTreeSet;
 use std::rc::Rc;
 
 use kinetics_core::answer::capitalised;
+use kinetics_core::numeric::sorting::sort_by;
 use kinetics_core::problem::Problem;
 use kinetics_core::quantity::Quantity;
 use kinetics_core::study::Excluded;
@@ -117,7 +118,7 @@ fn use_mark(rows: &Rc<Rows>, at: usize, line: usize) -> Part {
             excluded.retain(|entry| entry.row != line);
             if !is_used {
                 excluded.push(Excluded { row: line, reason: String::new() });
-                excluded.sort_by_key(|entry| entry.row);
+                sort_by(excluded, |entry| entry.row as f64);
             }
         });
     };

@@ -3,6 +3,7 @@
 
 use std::rc::Rc;
 
+use kinetics_core::numeric::sorting::sort_by;
 use kinetics_core::problem::Problem;
 use kinetics_core::study::Study;
 use kinetics_core::table::{Column, read_table};
@@ -179,6 +180,8 @@ fn columns_of(sheet: Sheet) -> Vec<Column> {
 /// Problems with a place, in the order of the text.
 fn in_cells(problems: &[Problem]) -> Vec<Problem> {
     let mut placed: Vec<Problem> = problems.iter().filter(|p| p.row.is_some()).cloned().collect();
-    placed.sort_by_key(|problem| (problem.row, problem.column));
+    let place = |number: Option<usize>| number.map_or(-1.0, |number| number as f64);
+    sort_by(&mut placed, |problem| place(problem.column));
+    sort_by(&mut placed, |problem| place(problem.row));
     placed
 }
