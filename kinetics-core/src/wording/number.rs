@@ -118,16 +118,16 @@ impl Figures {
     }
 
     /// Percentages of which what lacks to 100 must show, of the largest of them at least:
-    /// 99.97 %, not 100 %. Where each has its own figures, two of what it lacks.
+    /// 99.97 %, not 100 %.
     pub fn percent(self, value: f64, largest: f64, decimal: char) -> String {
         const FINEST: i32 = -6;
-        let lacks = |percent: f64, figures: usize| {
-            let place = leading_place(100.0 - percent, figures) + 1 - figures as i32;
-            (percent > 90.0 && percent < 100.0).then_some(place.max(FINEST))
+        let lacks = |percent: f64| {
+            (percent > 90.0 && percent < 100.0)
+                .then(|| leading_place(100.0 - percent, 1).max(FINEST))
         };
         let place = match self.0 {
-            Kind::Common { place, .. } => lacks(largest, 1).map(|needed| needed.min(place)),
-            Kind::Each(figures) => lacks(value, figures),
+            Kind::Common { place, .. } => lacks(largest).map(|needed| needed.min(place)),
+            Kind::Each(_) => lacks(value),
         };
         match place {
             Some(place) => Self(Kind::Common { place, powers: false }).number(value, decimal),
@@ -290,6 +290,20 @@ mod tests {
         is(shown(56.1, 40.2, 79.4), ["56", "40", "79"]);
         is(shown(0.0312, 0.0221, 0.0443), ["0.031", "0.022", "0.044"]);
         is(shown(56.1, 10.2, 104.9), ["56", "10", "100"]);
+    }
+
+    #[test]
+    fn percentages_near_all_show_what_they_lack() {
+        let shown = |gone: f64, low: f64, high: f64| {
+            let figures = Figures::supported(gone, Some((low, high)));
+            [gone, low, high].map(|value| figures.percent(value, high, '.'))
+        };
+        assert_eq!(shown(3.12, 2.21, 4.43), ["3.1", "2.2", "4.4"]);
+        assert_eq!(shown(97.3, 96.1, 98.2), ["97.3", "96.1", "98.2"]);
+        assert_eq!(shown(99.2, 95.0, 99.9), ["99.2", "95.0", "99.9"]);
+        assert_eq!(shown(96.0, 20.0, 99.96), ["96", "20", "99.96"]);
+        assert_eq!(Figures::supported(99.97, None).percent(99.97, 99.97, '.'), "99.97");
+        assert_eq!(Figures::supported(100.0, None).percent(100.0, 100.0, '.'), "100");
     }
 
     #[test]

@@ -43,9 +43,10 @@ pub fn duration(time: Seconds, figures: Figures, display: &Display) -> String {
 const OF_ANOTHER_SIZE: f64 = 50.0;
 
 /// Whether two times read well in one unit.
-fn share(unit: TimeUnit, short_seconds: f64, long_seconds: f64) -> bool {
+fn share(unit: TimeUnit, short_seconds: f64, long_seconds: f64, display: &Display) -> bool {
     let (short, long) = (unit.from_seconds(short_seconds), unit.from_seconds(long_seconds));
-    short >= 0.1 && long < OF_ANOTHER_SIZE * short
+    let small = short < 0.1 && best_unit(short_seconds, display) != unit;
+    short > 0.0 && !small && long < OF_ANOTHER_SIZE * short
 }
 
 /// A bound on a time, rounded to the side on which it still holds, and the best guess beside it
@@ -60,7 +61,7 @@ pub fn duration_bound(
     let (bound, guess) = (unit.from_seconds(limit.0), unit.from_seconds(best.0));
     let figures = Figures::supported(bound, Some((bound, 2.0 * guess - bound)));
     let shown = figures.number(figures.rounded(bound, rounding), display.decimal);
-    let best = if share(unit, limit.0.min(best.0), limit.0.max(best.0)) {
+    let best = if share(unit, limit.0.min(best.0), limit.0.max(best.0), display) {
         with_unit(&figures.number(guess, display.decimal), unit)
     } else {
         duration(best, Figures::exactly(2), display)
@@ -80,7 +81,7 @@ pub fn duration_with_range(
     let (low, high) = (unit.from_seconds(range.0), unit.from_seconds(range.1));
     let figures = Figures::supported(value, Some((low, high)));
     let number = with_unit(&figures.number(value, display.decimal), unit);
-    if share(unit, range.0, range.1) {
+    if share(unit, range.0, range.1, display) {
         let (low, high) = figures.limits(low, high, display.decimal);
         return (number, low, high);
     }
@@ -97,7 +98,7 @@ pub fn duration_range(
     display: &Display,
 ) -> [String; 2] {
     let unit = best_unit(like.0, display);
-    if !share(unit, low.0.min(like.0), high.0.max(like.0)) {
+    if !share(unit, low.0.min(like.0), high.0.max(like.0), display) {
         return [low, high].map(|time| duration(time, Figures::exactly(2), display));
     }
     let [low, high] = [low, high].map(|time| unit.from_seconds(time.0));
