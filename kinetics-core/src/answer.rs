@@ -284,6 +284,26 @@ impl Basis {
         })
     }
 
+    /// ln θ at which no more than a fraction is left.
+    ///
+    /// # Errors
+    /// As [`Basis::ln_theta`], in words about what is kept.
+    pub fn ln_theta_keeping(&self, left: f64) -> Result<f64, Refusal> {
+        self.needs_rate_unit()?;
+        let concentration = self.initial_concentration.map(|c| c.value);
+        self.order.ln_theta(1.0 - left, concentration).map_err(|error| match error {
+            ExtentError::Outside => Refusal::new(
+                "The part that is kept must lie below 100 % and not below 0 %.",
+                "Write a part between 0 and 100 %.",
+            ),
+            ExtentError::NeverComplete => Refusal::new(
+                format!("At {} it takes for ever until nothing is left.", self.order.name()),
+                "Keep more than 0 %, for example 0.1 %.",
+            ),
+            other => self.extent_refusal(other),
+        })
+    }
+
     fn extent_refusal(&self, error: ExtentError) -> Refusal {
         let order = self.order.name();
         match error {
@@ -332,6 +352,9 @@ impl Basis {
             None if self.law.settings.within_groups.is_some() => {
                 "no interval: with so few groups, nothing tells how much groups differ".into()
             }
+            None if self.support.is_known_law() => "no interval: the law is stated without the \
+                                                    standard deviations of both its numbers"
+                .into(),
             None => "no interval: with as many runs as unknowns and no stated errors, nothing \
                      tells how much the runs scatter"
                 .into(),
@@ -339,11 +362,31 @@ impl Basis {
     }
 }
 
-/// The refusal of a question that speaks of one side where no scatter is known.
-pub fn no_bound() -> Refusal {
+/// The refusal of a question that speaks of one side where no scatter is known; the best guess,
+/// in words, is no limit.
+pub fn no_bound(best: &str, basis: &Basis) -> Refusal {
+    let (why, line, needs) = if basis.support.is_known_law() {
+        (
+            "The law is stated without the standard deviations of both its numbers",
+            "the law alone gives",
+            "State the standard deviations of the activation energy and of the rate constant.",
+        )
+    } else if basis.law.settings.within_groups.is_some() {
+        (
+            "With so few groups, nothing tells how much groups differ",
+            "the line alone gives",
+            "Measure runs of another group, as in another oven or batch.",
+        )
+    } else {
+        (
+            "Nothing tells how much the runs scatter",
+            "the line alone gives",
+            "Measure at a third temperature, or state the error of each rate constant.",
+        )
+    };
     Refusal::new(
-        "Nothing tells how much the runs scatter, so nothing can be promised.",
-        "Measure at a third temperature, or state the error of each rate constant.",
+        format!("{why}, so nothing can be promised; {line} {best}, which is no limit."),
+        needs,
     )
 }
 

@@ -6,7 +6,7 @@ use crate::answer::{
 };
 use crate::quantity::{Kelvin, Seconds};
 use crate::temperature_law::Target;
-use crate::wording::{Rounding, duration_bound};
+use crate::wording::{Figures, Rounding, duration, duration_bound};
 
 pub(super) const LONGEST_STAND: Question = Question {
     code: "longest-stand",
@@ -21,7 +21,8 @@ pub(super) const LONGEST_STAND: Question = Question {
         Blank { name: "keep", kind: BlankKind::Part, example: "98 %", optional: false },
     ],
     answer: |blanks, basis| {
-        let time = Allowance::of(blanks, basis, 1.0 - blanks.part("keep", basis)?)?;
+        let ln_theta = basis.ln_theta_keeping(blanks.part("keep", basis)?)?;
+        let time = Allowance::of(blanks, ln_theta)?;
         time.answer(LONGEST_STAND.code, Side::Lower, basis)
     },
     range: ranges::time,
@@ -41,7 +42,7 @@ pub(super) const COMPLETION_TIME: Question = Question {
         Blank { name: "gone", kind: BlankKind::Part, example: "99 %", optional: false },
     ],
     answer: |blanks, basis| {
-        let time = Allowance::of(blanks, basis, blanks.part("gone", basis)?)?;
+        let time = Allowance::of(blanks, basis.ln_theta(blanks.part("gone", basis)?)?)?;
         time.answer(COMPLETION_TIME.code, Side::Upper, basis)
     },
     range: ranges::time,
@@ -56,12 +57,9 @@ struct Allowance {
 }
 
 impl Allowance {
-    fn of(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<Self, Refusal> {
-        Ok(Self {
-            temperature: blanks.temperature("temperature")?,
-            ln_theta: basis.ln_theta(extent)?,
-            bound: blanks.bound,
-        })
+    fn of(blanks: &Blanks, ln_theta: f64) -> Result<Self, Refusal> {
+        let temperature = blanks.temperature("temperature")?;
+        Ok(Self { temperature, ln_theta, bound: blanks.bound })
     }
 
     /// The time that is long or short enough with the basis' level, for one side.
@@ -75,8 +73,10 @@ impl Allowance {
 
     fn answer(&self, code: &str, side: Side, basis: &Basis) -> Result<Answer, Refusal> {
         let best = Seconds(libm::exp(self.ln_theta - basis.law.ln_rate(self.temperature)));
-        let limit = self.limit(basis, side, self.bound).ok_or_else(no_bound)?;
         let display = &basis.display;
+        let limit = self.limit(basis, side, self.bound).ok_or_else(|| {
+            no_bound(&duration(best, Figures::supported(best.0, None), display), basis)
+        })?;
         let (rounding, headline) = if side == Side::Lower {
             (Rounding::Down, "At most")
         } else {

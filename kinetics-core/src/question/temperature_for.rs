@@ -21,7 +21,8 @@ pub(super) const TEMPERATURE_FOR: Question = Question {
     answer: temperature_for,
     range: ranges::temperature,
     aim: |blanks, basis| {
-        let (at, scale) = aimed_at(blanks, basis, blanks.part("gone", basis)?)?;
+        let ln_theta = basis.ln_theta(blanks.part("gone", basis)?)?;
+        let (at, scale) = aimed_at(blanks, basis, ln_theta)?;
         Ok(Aim { kelvins: Some(scale), ..Aim::two_sided(at, basis.level) })
     },
 };
@@ -36,13 +37,14 @@ pub(super) const WARMEST_STORAGE: Question = Question {
     answer: warmest_storage,
     range: ranges::temperature,
     aim: |blanks, basis| {
-        let (at, scale) = aimed_at(blanks, basis, 1.0 - blanks.part("keep", basis)?)?;
+        let ln_theta = basis.ln_theta_keeping(blanks.part("keep", basis)?)?;
+        let (at, scale) = aimed_at(blanks, basis, ln_theta)?;
         Ok(Aim { kelvins: Some(scale), ..Aim::one_sided(at, blanks.bound, basis.level) })
     },
 };
 
 /// ln k at which the extent takes just the time, and the temperature of the best estimate.
-fn needed(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin), Refusal> {
+fn needed(blanks: &Blanks, basis: &Basis, ln_theta: f64) -> Result<(f64, Kelvin), Refusal> {
     let energy = basis.law.law.activation_energy(basis.law.reference, basis.law.reference);
     let low = basis.law.interval(&energy, Target::Mean, basis.level).map(|interval| interval.0);
     if basis.law.estimate(&energy) <= 0.0 {
@@ -59,11 +61,11 @@ fn needed(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin), 
             "Measure over a wider range of temperatures, or more precisely.",
         ));
     }
-    reached(blanks, basis, extent)
+    reached(blanks, basis, ln_theta)
 }
 
-fn reached(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin), Refusal> {
-    let ln_rate = basis.ln_theta(extent)? - libm::log(blanks.time("time")?.0);
+fn reached(blanks: &Blanks, basis: &Basis, ln_theta: f64) -> Result<(f64, Kelvin), Refusal> {
+    let ln_rate = ln_theta - libm::log(blanks.time("time")?.0);
     let best = basis.law.temperature_at(ln_rate).ok_or_else(|| {
         Refusal::new(
             "No temperature between 10 and 10\u{202f}000 K gives that rate under this law.",
@@ -75,14 +77,15 @@ fn reached(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(f64, Kelvin),
 
 /// The temperature of the best estimate, and how many K there are to a unit of ln k. A
 /// measurement may narrow what is too wide for an answer yet.
-fn aimed_at(blanks: &Blanks, basis: &Basis, extent: f64) -> Result<(Kelvin, f64), Refusal> {
-    let (_, best) = reached(blanks, basis, extent)?;
+fn aimed_at(blanks: &Blanks, basis: &Basis, ln_theta: f64) -> Result<(Kelvin, f64), Refusal> {
+    let (_, best) = reached(blanks, basis, ln_theta)?;
     let slope = basis.law.activation_energy(best).0 / (MOLAR_GAS_CONSTANT * best.0 * best.0);
     Ok((best, 1.0 / libm::fabs(slope)))
 }
 
 fn temperature_for(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
-    let (ln_rate, best) = needed(blanks, basis, blanks.part("gone", basis)?)?;
+    let ln_theta = basis.ln_theta(blanks.part("gone", basis)?)?;
+    let (ln_rate, best) = needed(blanks, basis, ln_theta)?;
     let set = |whose| basis.law.temperature_set(ln_rate, whose, basis.level);
     let ends = |set: TemperatureSet| match set {
         TemperatureSet::Between(low, high) => (low, high),
@@ -140,9 +143,11 @@ fn temperature_for(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
 }
 
 fn warmest_storage(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
-    let (ln_rate, best) = needed(blanks, basis, 1.0 - blanks.part("keep", basis)?)?;
+    let ln_theta = basis.ln_theta_keeping(blanks.part("keep", basis)?)?;
+    let (ln_rate, best) = needed(blanks, basis, ln_theta)?;
     if !basis.law.has_intervals() {
-        return Err(no_bound());
+        let best = basis.display.temperature_rounded(best, 0, Rounding::Nearest);
+        return Err(no_bound(&best, basis));
     }
     // Cold enough that even a fast batch holds.
     let limit = |whose| basis.law.temperature_bound(ln_rate, whose, basis.level);

@@ -30,17 +30,22 @@ pub(super) fn extrapolation(evidence: &Evidence) -> Option<Remark> {
     } else {
         Severity::Note
     };
+    let has_intervals = evidence.basis.law.has_intervals();
     let sentence = match numbers.as_slice() {
         [] => return None,
-        [one] => format!(
-            "Question {one} reaches far outside the data: its interval knows scatter, not whether \
-             the law still holds there."
-        ),
+        [one] => {
+            let but =
+                if has_intervals { "its interval knows scatter, not" } else { "nothing tells" };
+            format!(
+                "Question {one} reaches far outside the data: {but} whether the law still holds there."
+            )
+        }
         several => {
             let list: Vec<String> = several.iter().map(usize::to_string).collect();
+            let but =
+                if has_intervals { "their intervals know scatter, not" } else { "nothing tells" };
             format!(
-                "Questions {} reach far outside the data: their intervals know scatter, not whether \
-                 the law still holds there.",
+                "Questions {} reach far outside the data: {but} whether the law still holds there.",
                 list.join(", ")
             )
         }

@@ -74,7 +74,8 @@ pub(super) fn learn(
         remarks.push(Remark::new(
             "rivals-unranked",
             Severity::Note,
-            "Too few runs tell the temperature laws apart: none is ranked and none excluded.",
+            "There are too few runs to tell the temperature laws apart, so each of them is still \
+             possible.",
             "Five runs or more allow a ranking.",
         ));
     }

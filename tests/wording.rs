@@ -1,0 +1,120 @@
+//! What is said where something lacks: an interval, a unit, an extent; and what a law of its own
+//! kind says of itself.
+
+use checks::{close, found};
+use kinetics_core::study::Findings;
+use serde_json::{Value, json};
+
+const TWO: &str = "T/°C\tk, 1/h\n50\t0.0021\n60\t0.0059\n";
+
+fn celsius(t: f64) -> Value {
+    json!({"value": t, "unit": "°C"})
+}
+
+fn percent(part: f64) -> Value {
+    json!({"value": part, "unit": "%"})
+}
+
+fn stand(t: f64, keep: f64) -> Value {
+    json!({"question": "longest-stand", "temperature": celsius(t), "keep": percent(keep)})
+}
+
+fn storage(keep: f64) -> Value {
+    let time = json!({"value": 30.0, "unit": "d"});
+    json!({"question": "warmest-storage", "keep": percent(keep), "time": time})
+}
+
+fn until(t: f64, gone: f64) -> Value {
+    json!({"question": "time-to-extent", "temperature": celsius(t), "gone": percent(gone)})
+}
+
+fn known_law(asked: Value) -> Findings {
+    let measured = json!({
+        "form": "known-law",
+        "activation_energy": {"value": 105.0, "unit": "kJ/mol"},
+        "rate_constant": {"value": 0.0021, "unit": "1/h"},
+        "temperature": celsius(50.0)
+    });
+    found("", json!({"measured": measured, "asked": asked}))
+}
+
+#[test]
+fn a_refused_bound_tells_the_best_guess_in_words_alone() {
+    let asked = json!([stand(40.0, 98.0), until(40.0, 2.0), storage(98.0)]);
+    let findings = found(TWO, json!({"asked": asked}));
+    let [bound, guess, warmest] = findings.answers.as_slice() else { panic!("three answers") };
+    assert_eq!((bound.value, bound.low, bound.high), (None, None, None));
+    let guess = guess.wording.headline.trim_start_matches("About ");
+    let told = format!("the line alone gives {guess}, which is no limit");
+    assert!(bound.sentence.contains(&told), "{} {told}", bound.sentence);
+    assert!(warmest.sentence.contains("the line alone gives") && warmest.value.is_none());
+}
+
+#[test]
+fn what_has_no_interval_is_not_said_to_know_scatter() {
+    for (asked, subject) in [
+        (json!([until(20.0, 2.0)]), "Question 1 reaches"),
+        (json!([until(20.0, 2.0), until(10.0, 2.0)]), "Questions 1, 2 reach"),
+    ] {
+        let findings = found(TWO, json!({"asked": asked}));
+        let remark = findings.remarks.iter().find(|r| r.code == "extrapolation").unwrap();
+        assert!(remark.sentence.starts_with(subject), "{remark:?}");
+        assert!(!remark.sentence.contains("scatter"), "{remark:?}");
+    }
+}
+
+#[test]
+fn a_known_law_without_errors_asks_for_them() {
+    let findings = known_law(json!([stand(50.0, 98.0), until(50.0, 2.0), storage(98.0)]));
+    for answer in [&findings.answers[0], &findings.answers[2]] {
+        let refusal = answer.refused.as_ref().unwrap();
+        assert!(refusal.needs.contains("standard deviations"), "{refusal:?}");
+        assert!(refusal.reason.contains("the law alone gives"), "{refusal:?}");
+    }
+    let said = &findings.answers[1].sentence;
+    assert!(said.contains("standard deviations") && !said.contains("runs"), "{said}");
+}
+
+#[test]
+fn a_known_rate_is_repeated_as_stated() {
+    let findings = known_law(json!([{"question": "rate-at", "temperature": celsius(50.0)}]));
+    let headline = &findings.answers[0].wording.headline;
+    assert_eq!(headline, "k = 0.0021\u{a0}h⁻¹");
+}
+
+#[test]
+fn keeping_nothing_is_refused_in_terms_of_what_is_kept() {
+    let text = "T/°C\tk, 1/h\n50\t0.0021\n60\t0.0059\n70\t0.0152\n";
+    let findings =
+        found(text, json!({"asked": [stand(50.0, 0.0), storage(0.0), stand(50.0, 100.0)]}));
+    for answer in &findings.answers[..2] {
+        let needs = &answer.refused.as_ref().unwrap().needs;
+        assert_eq!(needs, "Keep more than 0 %, for example 0.1 %.");
+    }
+    let reason = &findings.answers[2].refused.as_ref().unwrap().reason;
+    assert!(reason.contains("kept"), "{reason}");
+    let just_above = found(text, json!({"asked": [stand(50.0, 0.1)]}));
+    assert!(just_above.answers[0].low.is_some());
+}
+
+/// A number read a thousandfold larger or smaller is a caution, not only a line among others.
+#[test]
+fn a_decimal_mark_in_doubt_is_a_caution() {
+    let cautioned = |text: &str, more: Value| {
+        let findings = found(text, more);
+        let remark = findings.remarks.iter().find(|r| r.code == "decimal-mark").cloned();
+        (findings.runs[0].rate_constant.value * 3600.0, remark)
+    };
+    let mixed = "T/°C\tk, 1/h\n30,5\t1.210\n40\t4.200\n50\t13.900\n60\t42.100\n";
+    let (rate, remark) = cautioned(mixed, json!({}));
+    close(rate, 1.21, 1e-12);
+    let remark = remark.unwrap();
+    assert!(remark.sentence.contains("1210") && remark.remedy.contains("1210"), "{remark:?}");
+    let plain = mixed.replace("30,5", "30.5");
+    assert_eq!(cautioned(&plain, json!({})).1, None);
+    let thousands = "T/°C\tk, 1/h\n50\t1,234\n60\t2,345\n70\t4,567\n";
+    assert!(cautioned(thousands, json!({})).1.is_some());
+    assert_eq!(cautioned(thousands, json!({"measured": {"decimal": ","}})).1, None);
+    let commas = thousands.replace("50\t", "50,5\t");
+    assert_eq!(cautioned(&commas, json!({})).1, None);
+}
