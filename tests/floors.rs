@@ -20,7 +20,7 @@ const FLOORS: [&[&str]; 8] = [
     // one run
     &["rate_law", "rate_constant"],
     // all runs; reaching an extent
-    &["temperature_law", "rivals", "extent", "heat"],
+    &["temperature_law", "one_stage", "rivals", "extent", "heat"],
     // deciding
     &["grounds", "answer", "question", "curve", "next_measurement", "remark"],
     // memory; its record is a private part of it
@@ -28,7 +28,7 @@ const FLOORS: [&[&str]; 8] = [
 ];
 
 /// Neighbours on a floor: the second may import the first.
-const ARROWS: [(&str, &str); 18] = [
+const ARROWS: [(&str, &str); 19] = [
     ("problem", "units"),
     ("problem", "quantity"),
     ("units", "quantity"),
@@ -36,6 +36,7 @@ const ARROWS: [(&str, &str); 18] = [
     ("quantity", "wording"),
     ("text", "table"),
     ("rate_law", "rate_constant"),
+    ("temperature_law", "one_stage"),
     ("temperature_law", "rivals"),
     ("temperature_law", "extent"),
     ("temperature_law", "heat"),

@@ -103,6 +103,25 @@ fn a_progress_study_answers_every_question() {
 }
 
 #[test]
+fn both_ways_to_a_law_agree_where_runs_differ_by_noise_alone() {
+    let findings = plain(&wide(left));
+    let (value, low, high) = energy(&findings);
+    let at_once = findings.one_stage.as_ref().unwrap();
+    let energy_at_once = &at_once.activation_energy;
+    assert!(low < energy_at_once.value && energy_at_once.value < high, "{value}");
+    assert!(energy_at_once.high.unwrap() - energy_at_once.low.unwrap() < high - low);
+    // 24 points, two parameters of the law and four starts.
+    assert_eq!(at_once.degrees_of_freedom, Some(18));
+    assert!(!remark_codes(&findings).contains(&"stages-disagree"));
+    // One run twice as fast as its temperature makes it.
+    let batch =
+        |celsius: f64, hours: f64| left(celsius, if celsius == 50.0 { 2.0 * hours } else { hours });
+    let codes = plain(&wide(batch));
+    let codes = remark_codes(&codes);
+    assert!(codes.contains(&"stages-disagree") && !codes.contains(&"excess-scatter"), "{codes:?}");
+}
+
+#[test]
 fn the_shape_of_the_table_does_not_matter() {
     let long = plain(&long("T/°C\tt/h\t% left", left));
     let wide = plain(&wide(left));

@@ -29,6 +29,7 @@ pub mod rate_constant;
 pub mod rate_law;
 
 // 5 · all runs
+pub mod one_stage;
 pub mod rivals;
 pub mod temperature_law;
 

@@ -13,6 +13,7 @@ pub use curves::Level;
 pub use noise::Noise;
 pub use orders::{FreeOrder, RankedOrder, USUAL_ORDERS, aicc_of, compare_orders, free_order};
 
+use nalgebra::{DMatrix, DVector};
 use thiserror::Error;
 
 use crate::measurements::ProgressRun;
@@ -143,6 +144,20 @@ fn fit_alone(run: &ProgressRun, settings: &Settings) -> Result<RunFit, NoRate> {
         }
     })?;
     Ok(of_run(&curves, 0, settings, &fit))
+}
+
+/// All runs at once, ln κ of each along a law: `map` is a row of the design for each run, and what
+/// is added to it. Linear parameters follow the nonlinear ones in the covariance.
+///
+/// # Errors
+/// See [`Unfinished`].
+pub fn fit_along(
+    runs: &[&ProgressRun],
+    settings: &Settings,
+    (design, constant): (DMatrix<f64>, DVector<f64>),
+    start: &[f64],
+) -> Result<NonlinearFit, Unfinished> {
+    search::search(&Curves::along(runs, settings, design, constant), settings.noise, start)
 }
 
 /// One start for all runs: those that can be fitted alone are fitted together.

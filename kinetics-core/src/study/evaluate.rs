@@ -91,6 +91,11 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
         .collect();
     remarks.extend(own_remarks(study, &rates, basis.as_ref(), grouped.as_ref(), &answers));
     remarks.extend(doubts(study, table));
+    if let Some(remark) = basis.as_ref().and_then(|basis| courses.disagreement(basis)) {
+        // It says of curves what that one says of stated errors.
+        remarks.retain(|other| other.code != "excess-scatter");
+        remarks.push(remark);
+    }
     sort_by(&mut remarks, |remark| f64::from(remark.severity as u8));
 
     let level = level(study).unwrap_or(USUAL_LEVEL);
@@ -108,7 +113,10 @@ pub fn evaluate_prepared(study: &Study, prepared: &Prepared) -> Evaluation {
             .as_ref()
             .map(|basis| LawFindings::of(basis, &alternatives, &study.measured.assumed))
             .map(|law| LawFindings { groups: grouped.map(|grouped| grouped.groups), ..law }),
-        one_stage: None,
+        one_stage: basis
+            .as_ref()
+            .and_then(|basis| courses.one_stage(basis))
+            .map(|basis| LawFindings::of(&basis, &[], &[])),
         rivals: rivals.iter().map(|rival| super::Rival::of(rival, order)).collect(),
         remarks,
         answers,

@@ -28,7 +28,7 @@ pub struct Findings {
     pub runs: Vec<RunFindings>,
     /// The law; none where none could be fitted.
     pub law: Option<LawFindings>,
-    /// The fit of all raw data at once; progress data only.
+    /// The fit of all raw data at once, which assumes no run-to-run scatter; progress data only.
     pub one_stage: Option<LawFindings>,
     /// Laws that the data do not exclude.
     pub rivals: Vec<Rival>,

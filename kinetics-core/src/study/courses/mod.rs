@@ -2,10 +2,11 @@
 
 use super::assumptions::{initial_concentration, level};
 use super::document::{LevelChoice, LevelWord, OrderChoice, OrderWord, Study};
-use crate::answer::Refusal;
+use crate::answer::{Basis, Refusal};
 use crate::measurements::{
     AboutSignals, LeftOut, Observation, ProgressRun, ProgressRuns, Rates, Run, progress,
 };
+use crate::one_stage::one_stage;
 use crate::problem::{Position, Problem};
 use crate::quantity::Quantity;
 use crate::rate_constant::{Level, RunFit, Settings, fit_runs};
@@ -111,6 +112,20 @@ impl Courses {
             remarks::add(&self.fitted, settings, remarks);
         }
         Ok(())
+    }
+
+    /// The law of a basis fitted to all curves at once, with nothing beside it.
+    pub fn one_stage(&self, basis: &Basis) -> Option<Basis> {
+        let curves: Vec<_> = self.fitted.iter().map(|course| (&course.run, &course.fit)).collect();
+        let law = &basis.law;
+        let settings = self.settings.as_ref().filter(|_| !curves.is_empty())?;
+        let law = one_stage(law.law, law.reference, &curves, settings, &law.parameters).ok()?;
+        Some(Basis { law, rivals: Vec::new(), shifted: Vec::new(), ..basis.clone() })
+    }
+
+    /// A remark where the rate constants scatter more than the noise of their curves explains.
+    pub fn disagreement(&self, basis: &Basis) -> Option<Remark> {
+        remarks::stages_disagree(&self.fitted, basis)
     }
 
     /// What questions reckon with: what was given, else the mean of the runs' own.
