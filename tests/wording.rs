@@ -97,6 +97,52 @@ fn keeping_nothing_is_refused_in_terms_of_what_is_kept() {
     assert!(just_above.answers[0].low.is_some());
 }
 
+/// D falls to a tenth every z, whatever the temperature.
+#[test]
+fn the_log_linear_law_tells_d_and_z() {
+    let text = |unit: &str| {
+        let mut text = format!("T/°C\tk, {unit}\n");
+        for (t, misfit) in
+            [(110.0, 0.02), (115.0, -0.03), (121.1, 0.01), (125.0, 0.02), (130.0, -0.02)]
+        {
+            let d_value = 1.5 * 10f64.powf((121.1 - t) / 10.0);
+            text.push_str(&format!("{t}\t{:e}\n", f64::ln(10.0) / d_value * f64::exp(misfit)));
+        }
+        text
+    };
+    let log_linear = json!({"assumed": {"temperature_law": "log-linear"}});
+    let findings = found(&text("1/min"), log_linear.clone());
+    let law = findings.law.unwrap();
+    let (z, d) = (law.z_value.unwrap(), law.d_value.unwrap());
+    close(z.value, 10.0, 0.02);
+    assert!(z.low.unwrap() < 10.0 && 10.0 < z.high.unwrap() && z.unit == "K");
+    close(d.value, 90.0 * 10f64.powf((394.25 - law.reference_temperature_kelvin) / 10.0), 0.02);
+    assert!(d.low.unwrap() < d.value && d.value < d.high.unwrap() && d.unit == "s");
+    close(
+        d.standard_error.unwrap() / d.value,
+        law.ln_rate_at_reference.standard_error.unwrap(),
+        1e-9,
+    );
+    assert!(findings.record.text.contains("z at the reference"));
+    assert!(findings.record.text.contains("D at the reference"));
+    let second_order = found(&text("L/(mol min)"), log_linear).law.unwrap();
+    assert!(second_order.z_value.is_some() && second_order.d_value.is_none());
+    let arrhenius = found(&text("1/min"), json!({})).law.unwrap();
+    assert!(arrhenius.z_value.is_none() && arrhenius.d_value.is_none());
+}
+
+#[test]
+fn a_rate_without_unit_is_said_to_have_none() {
+    let asked = json!({"asked": [{"question": "rate-at", "temperature": celsius(55.0)}]});
+    let without = found("T/°C\tk\n50\t0.0021\n60\t0.0059\n70\t0.0152\n", asked.clone());
+    let said = "in the unit of the column, which is not stated";
+    assert!(without.answers[0].sentence.contains(said), "{}", without.answers[0].sentence);
+    assert!(without.record.text.contains("Unit of k and A"));
+    let with = found("T/°C\tk, 1/h\n50\t0.0021\n60\t0.0059\n70\t0.0152\n", asked);
+    assert!(!with.answers[0].sentence.contains(said));
+    assert!(!with.record.text.contains("Unit of k and A"));
+}
+
 /// A number read a thousandfold larger or smaller is a caution, not only a line among others.
 #[test]
 fn a_decimal_mark_in_doubt_is_a_caution() {

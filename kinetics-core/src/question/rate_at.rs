@@ -34,7 +34,10 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
 
     // Sentences speak in the unit of the data, findings in the base unit.
     let scale = basis.shown_unit.map_or(1.0, |unit| 1.0 / unit.to_base());
-    let unit = basis.shown_unit.map(|u| format!("\u{a0}{}", u.symbol())).unwrap_or_default();
+    let unit = match basis.shown_unit {
+        Some(unit) => format!("\u{a0}{}", unit.symbol()),
+        None => " in the unit of the column, which is not stated".into(),
+    };
     let decimal = basis.display.decimal;
     let shown_range = rate.mean.map(|(low, high)| (low * scale, high * scale));
     // At its own temperature a stated rate constant is no estimate.

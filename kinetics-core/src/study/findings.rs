@@ -7,13 +7,15 @@ use super::courses::CourseFindings;
 use super::document::Excluded;
 use crate::answer::{Answer, Basis, WhyNoInterval};
 use crate::citation::Citation;
+use crate::constants::MOLAR_GAS_CONSTANT;
 use crate::measurements::Run;
 use crate::numeric::distributions::normal_quantile;
 use crate::problem::Problem;
+use crate::quantity::Kelvin;
 use crate::remark::Remark;
 use crate::table::{Column, Decimal, Form};
-use crate::temperature_law::{Component, Contrast, FittedLaw, Scatter, Target};
-use crate::units::ConcentrationKind;
+use crate::temperature_law::{Component, Contrast, FittedLaw, Scatter, Target, TemperatureLaw};
+use crate::units::{ConcentrationKind, RateUnit};
 
 /// Everything found in a study.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -155,6 +157,38 @@ impl Estimate {
             ..self.clone()
         }
     }
+
+    /// 1/k in the unit given, times `factor`, of an estimate of ln k.
+    fn reciprocal(&self, factor: f64, unit: &str) -> Self {
+        let negative = Self {
+            value: -self.value,
+            low: self.high.map(|high| -high),
+            high: self.low.map(|low| -low),
+            ..self.clone()
+        };
+        let reciprocal = negative.exponential(unit);
+        Self {
+            value: factor * reciprocal.value,
+            standard_error: reciprocal.standard_error.map(|s| factor * s),
+            low: reciprocal.low.map(|low| factor * low),
+            high: reciprocal.high.map(|high| factor * high),
+            ..reciprocal
+        }
+    }
+}
+
+/// z = ln 10·R T²/Ea in K at a temperature, from Ea there; none where Ea may be zero.
+fn z_value(energy: &Estimate, temperature: Kelvin) -> Option<Estimate> {
+    let scale = std::f64::consts::LN_10 * MOLAR_GAS_CONSTANT * temperature.0 * temperature.0;
+    let lowest = energy.low.unwrap_or(energy.value);
+    (lowest > 0.0).then(|| Estimate {
+        value: scale / energy.value,
+        standard_error: energy.standard_error.map(|s| s * scale / (energy.value * energy.value)),
+        low: energy.high.map(|high| scale / high),
+        high: energy.low.map(|low| scale / low),
+        unit: "K".into(),
+        ..energy.clone()
+    })
 }
 
 /// A temperature law with its uncertainty.
@@ -180,6 +214,12 @@ pub struct LawFindings {
     pub pre_exponential_factor: Estimate,
     /// ΔH‡ at T0.
     pub enthalpy_of_activation: Estimate,
+    /// z in K at T0; for the log-linear law alone.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub z_value: Option<Estimate>,
+    /// D in s at T0; for the log-linear law of a first-order reaction alone.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub d_value: Option<Estimate>,
     /// ΔS‡ at T0; none where the unit of k does not convert to mol/L.
     pub entropy_of_activation: Option<Estimate>,
     /// Covariance of (ln k at T0, Ea in J/mol); none where no scatter is known.
@@ -273,6 +313,8 @@ impl LawFindings {
         let converts_to_molar = basis.base_unit.is_some_and(|unit| {
             unit.concentration.is_none_or(|c| c.kind() == ConcentrationKind::Molar)
         });
+        let energy = Estimate::of(&law.activation_energy(reference, reference), basis, "J/mol");
+        let of_thermal_processing = law == TemperatureLaw::LogLinear;
         let mixture = if fitted.scatter == Scatter::AsStatedPlusRunToRun {
             fitted.components.iter().map(MixtureComponent::of).collect()
         } else {
@@ -283,12 +325,6 @@ impl LawFindings {
             assumed: assumed.to_vec(),
             reference_temperature_kelvin: reference.0,
             rate_at_reference: ln_rate.exponential(rate_unit.as_str()),
-            ln_rate_at_reference: ln_rate,
-            activation_energy: Estimate::of(
-                &law.activation_energy(reference, reference),
-                basis,
-                "J/mol",
-            ),
             pre_exponential_factor: ln_factor.exponential(rate_unit.as_str()),
             ln_pre_exponential_factor: ln_factor,
             enthalpy_of_activation: Estimate::of(
@@ -296,6 +332,10 @@ impl LawFindings {
                 basis,
                 "J/mol",
             ),
+            z_value: of_thermal_processing.then(|| z_value(&energy, reference)).flatten(),
+            activation_energy: energy,
+            d_value: (of_thermal_processing && basis.base_unit == Some(RateUnit::PER_SECOND))
+                .then(|| ln_rate.reciprocal(std::f64::consts::LN_10, "s")),
             entropy_of_activation: converts_to_molar
                 .then(|| Estimate::of(&law.entropy_of_activation(reference), basis, "J/(mol K)")),
             covariance: fitted.covariance.as_ref().map(first_two),
@@ -307,6 +347,7 @@ impl LawFindings {
             chi_squared: fitted.chi_squared.map(|c| c.0),
             chi_squared_p: fitted.chi_squared.map(|c| c.1),
             other_scatter: alternatives.iter().map(|law| OtherScatter::of(law, basis)).collect(),
+            ln_rate_at_reference: ln_rate,
             rate_unit,
         }
     }

@@ -6,7 +6,8 @@ mod time;
 
 pub use number::{Figures, Origin, Rounding, fixed, significant};
 pub use quantity::{
-    Number, Shown, bare, energy, entropy, factor, logarithm_of, rate, typed, typed_number,
+    Number, Shown, bare, energy, entropy, factor, kelvins, logarithm_of, rate, time, typed,
+    typed_number,
 };
 pub use time::{duration, duration_bound, duration_range, duration_with_range};
 

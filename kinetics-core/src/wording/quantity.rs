@@ -3,7 +3,8 @@
 
 use super::Display;
 use super::number::{Figures, Origin};
-use crate::quantity::Quantity;
+use super::time::{duration, duration_with_range};
+use crate::quantity::{Quantity, Seconds};
 use crate::units::RateUnit;
 
 /// A number with its unit, and the limits of its interval without.
@@ -54,6 +55,26 @@ pub fn energy(joules_per_mole: Number, display: &Display) -> Shown {
 /// A molar entropy in J/(mol K).
 pub fn entropy(joules_per_mole_kelvin: Number, display: &Display) -> Shown {
     joules_per_mole_kelvin.shown(1.0, "J/(mol\u{a0}K)", display.decimal)
+}
+
+/// A difference of temperatures in K.
+pub fn kelvins(kelvins: Number, display: &Display) -> Shown {
+    kelvins.shown(1.0, "K", display.decimal)
+}
+
+/// A time in s, in the unit that reads best.
+pub fn time(seconds: Number, display: &Display) -> Shown {
+    let time = Seconds(seconds.value);
+    match seconds.range {
+        Some(range) => {
+            let (value, low, high) = duration_with_range(time, range, display);
+            Shown { value, limits: Some((low, high)) }
+        }
+        None => {
+            let value = duration(time, Figures::supported(seconds.value, None), display);
+            Shown { value, limits: None }
+        }
+    }
 }
 
 /// A rate constant given in the base unit, in the unit that the data have: "0.068 h⁻¹".

@@ -84,19 +84,30 @@ fn first(law: &LawFindings, basis: &Basis) -> Vec<Number> {
     let rate = &law.rate_at_reference;
     let at = display.temperature(Kelvin(law.reference_temperature_kelvin), 0);
     let factor = &law.ln_pre_exponential_factor;
-    vec![
+    // What has no unit is said to have none.
+    let unit =
+        if basis.base_unit.is_none() { ", in the unit of the column, not stated" } else { "" };
+    let mut numbers = vec![
         with_limits("activation energy", energy(&law.activation_energy, basis), basis),
         with_limits(
-            &format!("rate constant at {at}"),
+            &format!("rate constant at {at}{unit}"),
             wording::rate(shown(rate, basis), basis.shown_unit, display),
             basis,
         ),
         (
             wording::bare(shown(factor, basis), display).value,
-            wording::logarithm_of("A", basis.base_unit),
+            format!("{}{unit}", wording::logarithm_of("A", basis.base_unit)),
             "moves with the activation energy".to_owned(),
         ),
-    ]
+    ];
+    if let Some(z) = &law.z_value {
+        numbers.push(with_limits("z", wording::kelvins(shown(z, basis), display), basis));
+    }
+    if let Some(d) = &law.d_value {
+        let d = wording::time(shown(d, basis), display);
+        numbers.push(with_limits(&format!("D at {at}"), d, basis));
+    }
+    numbers
 }
 
 fn second(law: &LawFindings, basis: &Basis) -> Vec<Number> {
@@ -133,6 +144,9 @@ fn with_limits(name: &str, shown: Shown, basis: &Basis) -> Number {
     let level = basis.display.percent(basis.level);
     let limits = match shown.limits {
         Some((low, high)) => format!("{low} to {high} ({level})"),
+        None if basis.support.is_known_law() => {
+            "no interval: stated without both standard deviations".to_owned()
+        }
         None => "no interval: no scatter is known".to_owned(),
     };
     (shown.value, name.to_owned(), limits)

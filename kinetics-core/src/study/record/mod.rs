@@ -203,6 +203,9 @@ impl Account {
     }
 
     fn law(&mut self, law: &LawFindings) {
+        if law.rate_unit.is_empty() {
+            self.entry("Unit of k and A", "that of the column, which is not stated");
+        }
         if !law.assumed.is_empty() {
             self.entry("Assumed, not measured", law.assumed.join(", "));
         }
@@ -215,6 +218,8 @@ impl Account {
             ("A", Some(&law.pre_exponential_factor)),
             ("Enthalpy of activation", Some(&law.enthalpy_of_activation)),
             ("Entropy of activation", law.entropy_of_activation.as_ref()),
+            ("z at the reference", law.z_value.as_ref()),
+            ("D at the reference", law.d_value.as_ref()),
         ];
         for (name, estimate) in estimates {
             if let Some(estimate) = estimate {
