@@ -143,6 +143,31 @@ fn a_rate_without_unit_is_said_to_have_none() {
     assert!(!with.record.text.contains("Unit of k and A"));
 }
 
+fn times(header: &str, extent: Value) -> Findings {
+    let text = format!("T/°C\t{header}\n40\t240\n50\t80\n60\t30\n");
+    let mut measured = json!({"form": "times"});
+    if !extent.is_null() {
+        measured["extent"] = extent;
+    }
+    let asked = json!([{"question": "rate-at", "temperature": celsius(50.0)}]);
+    found(&text, json!({"measured": measured, "asked": asked}))
+}
+
+#[test]
+fn rates_from_times_are_told_in_the_unit_of_the_times() {
+    let findings = times("t (days)", percent(10.0));
+    assert!(findings.answers[0].wording.headline.ends_with("\u{a0}d⁻¹"), "{:?}", findings.answers);
+    assert_eq!(findings.law.unwrap().rate_unit, "1/s");
+}
+
+#[test]
+fn times_without_their_extent_are_no_rates() {
+    let findings = times("t (days)", Value::Null);
+    assert!(findings.law.is_none() && findings.runs.is_empty());
+    let refusal = findings.answers[0].refused.as_ref().unwrap();
+    assert!(refusal.needs.contains("part that is gone"), "{refusal:?}");
+}
+
 /// A number read a thousandfold larger or smaller is a caution, not only a line among others.
 #[test]
 fn a_decimal_mark_in_doubt_is_a_caution() {

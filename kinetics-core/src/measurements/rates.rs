@@ -88,17 +88,26 @@ pub struct Rates {
     pub temperature_unit: Option<TemperatureUnit>,
     /// Usable runs that state no error although others do.
     pub errors_missing: usize,
+    /// Unit of the times that were measured in place of k; rates are told in it.
+    pub time_unit: Option<TimeUnit>,
     /// What could not be used.
     pub problems: Vec<Problem>,
 }
 
 impl Rates {
-    /// Adds the constant that makes ln k of what was measured, and states the unit of that k.
+    /// Adds the constant that makes ln k of what was measured, and states the unit of that k; of
+    /// times, k is told in theirs.
     pub fn shift(&mut self, ln_constant: f64, unit: RateUnit) {
         for run in &mut self.runs {
             run.observation.ln_rate += ln_constant;
         }
-        self.unit = Some(unit);
+        let time = self.time_unit.unwrap_or(unit.time);
+        self.unit = Some(RateUnit { time, ..unit });
+    }
+
+    /// Whether these are times that nothing makes into rate constants.
+    pub fn are_bare_times(&self) -> bool {
+        self.time_unit.is_some() && self.unit.is_none()
     }
 }
 
@@ -112,6 +121,11 @@ pub fn rates(
 ) -> Rates {
     let mut rates = Rates::default();
     let Some(layout) = Layout::of(table, measurand, &mut rates) else { return rates };
+    if measurand == Measurand::Time {
+        let column = table.columns.iter().find(|column| column.role == Role::Time);
+        let code = column.and_then(|column| column.unit.as_deref());
+        rates.time_unit = code.and_then(|code| TimeUnit::parse(code).ok());
+    }
     // Sorted once: 100,000 rows with as many exclusions stay quick.
     let mut excluded: Vec<&LeftOut> = excluded.iter().collect();
     sort_by(&mut excluded, |row| row.row as f64);

@@ -211,6 +211,9 @@ fn read(
 }
 
 fn runs(rates: &Rates, basis: Option<&Basis>, order: Option<f64>, level: f64) -> Vec<RunFindings> {
+    if rates.are_bare_times() {
+        return Vec::new();
+    }
     let unit = rates.unit.map(|unit| unit.base().code()).unwrap_or_default();
     rates
         .runs
