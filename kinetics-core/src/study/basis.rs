@@ -87,7 +87,7 @@ fn build(
         }
         Form::Rates | Form::Progress => learn(study, rates, law, remarks)?,
         Form::Times => {
-            let choice = times_to_rates(study, rates, order)?;
+            let choice = times_to_rates(study, rates, order, remarks)?;
             let mut learnt = learn(study, rates, law, remarks)?;
             learnt.choices.extend(choice);
             learnt
@@ -128,6 +128,7 @@ fn times_to_rates(
     study: &Study,
     rates: &mut Rates,
     order: Order,
+    remarks: &mut Vec<Remark>,
 ) -> Result<Option<String>, Refusal> {
     if rates.runs.is_empty() {
         return Ok(None);
@@ -151,6 +152,19 @@ fn times_to_rates(
             let part = percent(fraction);
             choice = Some(format!("The head of the times says that {part} is gone at them."));
             fraction
+        }
+        (None, Some(NamedExtent::ShelfLife(left))) => {
+            let sentence = format!(
+                "The head of the times names a shelf life, which usually means that {} is left: {} \
+                 is taken to be gone at them.",
+                percent(left),
+                percent(1.0 - left)
+            );
+            let remedy = format!("State the part that is gone if it is {}.", percent(left));
+            let code = "extent-by-name";
+            remarks.push(Remark::new(code, Severity::Caution, sentence.as_str(), remedy));
+            choice = Some(sentence);
+            1.0 - left
         }
         (None, Some(NamedExtent::Unclear(fraction))) => {
             let (part, rest) = (percent(fraction), percent(1.0 - fraction));

@@ -5,7 +5,10 @@
 pub enum NamedExtent {
     /// This fraction.
     Gone(f64),
-    /// A fraction that may be what is gone or what is left, as in `t90`.
+    /// All but this fraction, by a name such as `t90`: what is left, as the names of shelf lives
+    /// usually mean it.
+    ShelfLife(f64),
+    /// A fraction that may be what is gone or what is left, as in `time to 10 %`.
     Unclear(f64),
 }
 
@@ -22,7 +25,7 @@ const HALF: [&str; 10] = [
     "half-life",
 ];
 const GONE: [&str; 8] =
-    ["gone", "loss", "lost", "convert", "conversion", "reacted", "degraded", "consumed"];
+    ["gone", "loss", "lost", "conver", "reacted", "degrad", "decompos", "consumed"];
 const LEFT: [&str; 3] = ["left", "remain", "retained"];
 
 /// The extent in a header, if it names one.
@@ -57,8 +60,15 @@ pub fn named_extent(header: &str) -> Option<NamedExtent> {
         (false, true) => NamedExtent::Gone(1.0 - fraction),
         // Half gone is half left.
         _ if fraction == 0.5 => NamedExtent::Gone(0.5),
+        _ if is_short(&squeezed) && fraction < 0.5 => NamedExtent::Gone(fraction),
+        _ if is_short(&squeezed) => NamedExtent::ShelfLife(fraction),
         _ => NamedExtent::Unclear(fraction),
     })
+}
+
+/// `t10%`, `t90`: a letter and a number.
+fn is_short(squeezed: &str) -> bool {
+    squeezed.strip_prefix('t').is_some_and(|rest| rest.starts_with(|c: char| c.is_ascii_digit()))
 }
 
 fn number_at_end(text: &str) -> Option<f64> {
@@ -101,12 +111,15 @@ mod tests {
         assert!(close("t (2,5 % gone)", 0.025));
         assert!(close("t to 95 % left (d)", 0.05));
         assert!(close("t90 / h, conversion", 0.9));
+        assert!(close("time to 10 % degradation (d)", 0.1));
+        assert!(close("t10% (days)", 0.1) && close("t10 / d", 0.1) && close("t5 %", 0.05));
     }
 
     #[test]
     fn what_may_be_gone_or_left_is_unclear_and_the_rest_says_nothing() {
-        assert_eq!(named_extent("t90"), Some(NamedExtent::Unclear(0.9)));
-        assert_eq!(named_extent("t95, months"), Some(NamedExtent::Unclear(0.95)));
+        assert_eq!(named_extent("t90"), Some(NamedExtent::ShelfLife(0.9)));
+        assert_eq!(named_extent("t95, months"), Some(NamedExtent::ShelfLife(0.95)));
+        assert_eq!(named_extent("t90 %"), Some(NamedExtent::ShelfLife(0.9)));
         assert_eq!(named_extent("time to 10 %"), Some(NamedExtent::Unclear(0.1)));
         for header in ["", "t", "t/h", "time", "t0", "t100", "temperature", "%", "t500 / s", "T1"] {
             assert_eq!(named_extent(header), None, "{header}");
