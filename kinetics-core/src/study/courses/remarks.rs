@@ -19,6 +19,9 @@ const SIGNIFICANCE: f64 = 0.05;
 /// Q, the sum of squares of ln k about the law in units of what the curves allow, beyond its 0.95
 /// point: χ² where errors are stated, F where the noise is known from the curves.
 pub(super) fn stages_disagree(courses: &[Course], basis: &Basis) -> Option<Remark> {
+    if courses.is_empty() {
+        return None;
+    }
     let (excess, p_stated) = basis.law.chi_squared?;
     let freedom = basis.law.degrees_of_freedom.filter(|freedom| *freedom > 0)? as f64;
     let noise: f64 = courses.iter().map(|course| course.fit.degrees_of_freedom as f64).sum();
