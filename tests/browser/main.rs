@@ -18,6 +18,7 @@ mod driver;
 mod page;
 
 // The steps, by subject.
+mod first_hour;
 mod frames;
 mod handling;
 mod hostile;

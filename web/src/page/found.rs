@@ -3,12 +3,13 @@
 use kinetics_core::answer::Basis;
 use kinetics_core::quantity::Kelvin;
 use kinetics_core::remark::{Remark, Severity};
-use kinetics_core::study::{Estimate, Evaluation, LawFindings};
+use kinetics_core::study::{Estimate, Evaluation, LawFindings, Study};
 use kinetics_core::wording::{self, Origin, Shown};
 
 use super::choices;
 use super::once::once;
 use super::part::{Part, part};
+use super::pictures::has_gap;
 use super::sheet::Sheet;
 
 /// A number of the law as it is shown: its value, its name, and its limits or what is to say
@@ -51,15 +52,21 @@ pub fn section(sheet: Sheet) -> Part {
         .when(has_law, law)
         .when(
             move || !has_law(),
-            move || part("p").class("nothing").says(move || nothing(&sheet.evaluation())),
+            move || {
+                part("p")
+                    .class("nothing")
+                    .says(move || nothing(&sheet.study(), &sheet.evaluation()))
+            },
         )
         .add(remarks)
         .add(choices::display(sheet))
 }
 
-/// Why there is no law.
-fn nothing(evaluation: &Evaluation) -> String {
-    let refused = evaluation.findings.answers.iter().find_map(|answer| answer.refused.as_ref());
+/// Why there is no law, as questions without a gap are told.
+fn nothing(study: &Study, evaluation: &Evaluation) -> String {
+    let asked = study.asked.iter().zip(&evaluation.findings.answers);
+    let mut whole = asked.filter(|(asked, _)| !has_gap(asked));
+    let refused = whole.find_map(|(_, answer)| answer.refused.as_ref());
     refused.map_or_else(
         || {
             "No law yet: paste rate constants at two temperatures or more, or state a known law."

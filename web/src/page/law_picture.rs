@@ -20,9 +20,15 @@ pub fn figure(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
     });
     let canvas = part("canvas").class("law");
     canvas::paint(&canvas, sheet, Rc::clone(&drawing), surroundings);
+    let has_rivals =
+        move || sheet.evaluation().basis.as_ref().is_some_and(|basis| !basis.rivals.is_empty());
+    let caption = part("figcaption")
+        .is("hidden", move || !has_rivals())
+        .text("Grey lines: other laws, which the data do not exclude.");
     part("figure")
         .class("picture")
         .add(canvas)
+        .add(caption)
         .add(picture_table(sheet, Rc::clone(&drawing)))
         .add(take_along(sheet, drawing, Format { name: "law", slope: 5.0 / 7.0 }))
 }

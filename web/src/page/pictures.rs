@@ -283,6 +283,15 @@ pub fn filled(asked: &Map<String, Value>, blank: &Blank, decimal: char) -> Strin
     }
 }
 
+/// Whether a blank of a question is empty, or holds what cannot be read.
+pub fn has_gap(asked: &Map<String, Value>) -> bool {
+    let blanks = Question::of_code(code(asked)).map(|question| question.blanks);
+    blanks.unwrap_or_default().iter().any(|blank| match asked.get(blank.name) {
+        Some(filled) => blank.kind.quantities(filled).is_empty(),
+        None => !blank.optional,
+    })
+}
+
 /// The code of a question that is asked.
 pub fn code(asked: &Map<String, Value>) -> &str {
     asked.get("question").and_then(Value::as_str).unwrap_or_default()

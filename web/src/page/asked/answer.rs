@@ -5,7 +5,7 @@ use kinetics_core::answer::Answer;
 use kinetics_core::question::Question;
 
 use super::super::part::{Part, part};
-use super::super::pictures::{code, filled};
+use super::super::pictures::{filled, has_gap};
 use super::super::sheet::Sheet;
 
 /// The answer to the question at a place of the list.
@@ -13,7 +13,8 @@ pub fn answer(sheet: Sheet, at: usize) -> Part {
     let now = move || {
         let evaluation = sheet.evaluation();
         let answer = evaluation.findings.answers.get(at).cloned();
-        (answer, evaluation.basis.is_some(), has_gap(sheet, at), sheet.decimal())
+        let has_gap = sheet.study().asked.get(at).is_some_and(has_gap);
+        (answer, evaluation.basis.is_some(), has_gap, sheet.decimal())
     };
     let content = part("div").with("aria-live", "polite").with("aria-atomic", "true");
     content.filled(now, |(answer, has_law, has_gap, decimal)| {
@@ -31,17 +32,6 @@ pub fn answer(sheet: Sheet, at: usize) -> Part {
             (None, Some(rows)) => vec![table(&answer.question, rows, *decimal)],
             (None, None) => alone(answer),
         }
-    })
-}
-
-/// Whether a blank of the question is empty, or holds what cannot be read.
-fn has_gap(sheet: Sheet, at: usize) -> bool {
-    let study = sheet.study();
-    let Some(asked) = study.asked.get(at) else { return false };
-    let blanks = Question::of_code(code(asked)).map(|question| question.blanks);
-    blanks.unwrap_or_default().iter().any(|blank| match asked.get(blank.name) {
-        Some(filled) => blank.kind.quantities(filled).is_empty(),
-        None => !blank.optional,
     })
 }
 
