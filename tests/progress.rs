@@ -122,6 +122,21 @@ fn both_ways_to_a_law_agree_where_runs_differ_by_noise_alone() {
 }
 
 #[test]
+fn the_record_holds_every_point_of_every_curve() {
+    let findings = study(&wide(left), json!({"end": "free"}), json!({}), json!([]));
+    let text = &findings.record.text;
+    for words in ["End of the signal: found for each run", "The curve of 70 °C", "converged"] {
+        assert!(text.contains(words), "{words}:\n{text}");
+    }
+    for run in &findings.runs {
+        for residual in &run.course.as_ref().unwrap().residuals {
+            assert!(text.contains(&format!("{residual:+.3e}")), "{residual}");
+        }
+    }
+    assert!(text.contains("Golub") && text.contains("all curves at once"));
+}
+
+#[test]
 fn the_shape_of_the_table_does_not_matter() {
     let long = plain(&long("T/°C\tt/h\t% left", left));
     let wide = plain(&wide(left));

@@ -33,6 +33,18 @@ citations! {
     /// QR for least squares.
     LEAST_SQUARES = "Å. Björck", 1996, "Numerical Methods for Least Squares Problems, SIAM",
         "weighted least squares by QR";
+    /// Nonlinear least squares.
+    LEVENBERG_MARQUARDT = "J. J. Moré", 1978, "Numerical Analysis (ed. G. A. Watson), Springer, 105",
+        "nonlinear least squares of progress curves (Levenberg and Marquardt's method)";
+    /// Linear parameters eliminated.
+    VARIABLE_PROJECTION = "G. H. Golub and V. Pereyra", 1973, "SIAM J. Numer. Anal. 10, 413",
+        "starts and ends of signals eliminated from that search";
+    /// Ranking by AICc.
+    MODEL_SELECTION = "K. P. Burnham and D. R. Anderson", 2002,
+        "Model Selection and Multimodel Inference, 2nd ed., Springer", "orders compared by AICc";
+    /// Bartlett's test.
+    HOMOGENEITY = "M. S. Bartlett", 1937, "Proc. R. Soc. London A 160, 268",
+        "whether the noise of runs is one";
     /// Q-profile interval of the run-to-run variance.
     Q_PROFILE = "W. Viechtbauer", 2007, "Stat. Med. 26, 37",
         "what the data say of the scatter between runs";

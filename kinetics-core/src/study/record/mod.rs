@@ -1,6 +1,7 @@
 //! The record: a printable, checkable account of a study, as text and as HTML: the same bytes for
 //! the same study on the same build, without clock or locale.
 
+mod courses;
 mod render;
 
 use sha2::{Digest, Sha256};
@@ -41,6 +42,10 @@ fn citations(findings: &Findings) -> Vec<Citation> {
     if law.degrees_of_freedom.is_some() {
         sources.extend([citation::LEAST_SQUARES, citation::REFERENCE_TEMPERATURE]);
         sources.extend([citation::REGRESSION, citation::INFLUENCE]);
+    }
+    if findings.runs.iter().any(|run| run.course.is_some()) {
+        sources.extend([citation::LEVENBERG_MARQUARDT, citation::VARIABLE_PROJECTION]);
+        sources.extend([citation::MODEL_SELECTION, citation::HOMOGENEITY]);
     }
     if law.scatter == Scatter::AsStatedPlusRunToRun {
         sources.extend([citation::Q_PROFILE, citation::GENERALISED_INFERENCE]);
@@ -135,6 +140,7 @@ impl Account {
                 self.entry(name, quantity.to_string());
             }
         }
+        self.signals(study);
         let known = [
             ("Known activation energy", &stated.activation_energy),
             ("Known rate constant", &stated.rate_constant),
@@ -184,6 +190,7 @@ impl Account {
             let head = ["row", "run", "T/K", "k", "residual of ln k"].map(String::from).to_vec();
             self.parts.push(Part::Table(head, rows.collect()));
         }
+        self.courses(findings);
         if !findings.rivals.is_empty() {
             let shown = |number: Option<f64>| number.map_or("none".into(), |n| format!("{n:.2}"));
             let rows = findings
