@@ -1,6 +1,6 @@
-//! Weighted linear least squares by Householder QR of the column-scaled design
-//! (Björck, Numerical Methods for Least Squares Problems, 1996, §2.4): the normal
-//! equations are never formed.
+//! Weighted linear least squares by QR of the column-scaled design (Björck, Numerical Methods for
+//! Least Squares Problems, 1996, §2.4): the normal equations are never formed. The triangle grows
+//! row by row through Givens rotations, so that nothing as large as the design is copied.
 
 use nalgebra::{DMatrix, DVector};
 use thiserror::Error;
@@ -59,47 +59,79 @@ pub fn fit(
         return Err(LeastSquaresError::NotFinite);
     }
 
-    let root_weights: Vec<f64> = weights.iter().map(|w| w.sqrt()).collect();
-    let mut scaled = design.clone();
-    for (mut row, root_weight) in scaled.row_iter_mut().zip(&root_weights) {
-        row *= *root_weight;
-    }
-    let lengths: Vec<f64> = scaled.column_iter().map(|c| c.norm()).collect();
+    let lengths: Vec<f64> = design
+        .column_iter()
+        .map(|column| column.iter().zip(weights).map(|(x, w)| w * x * x).sum::<f64>().sqrt())
+        .collect();
     if lengths.contains(&0.0) {
         return Err(LeastSquaresError::RankDeficient);
     }
-    for (mut column, length) in scaled.column_iter_mut().zip(&lengths) {
-        column /= *length;
+    let scaled_row = |row: usize, into: &mut [f64]| {
+        let root_weight = weights[row].sqrt();
+        for (column, entry) in into.iter_mut().enumerate() {
+            *entry = root_weight * design[(row, column)] / lengths[column];
+        }
+        root_weight * observed[row]
+    };
+    let mut triangle = DMatrix::zeros(parameters, parameters);
+    let mut right = DVector::zeros(parameters);
+    let mut entries = vec![0.0; parameters];
+    for row in 0..rows {
+        let value = scaled_row(row, &mut entries);
+        rotate_in(&mut triangle, &mut right, &mut entries, value);
     }
-    let right =
-        DVector::from_iterator(rows, observed.iter().zip(&root_weights).map(|(y, w)| y * w));
-
-    let decomposition = scaled.qr();
-    let q = decomposition.q();
-    let r = decomposition.r();
-    if r.diagonal().iter().any(|d| d.abs() < RANK_TOLERANCE) {
+    if triangle.diagonal().iter().any(|d| d.abs() < RANK_TOLERANCE) {
         return Err(LeastSquaresError::RankDeficient);
     }
-    let r_inverse = r
+    let inverse = triangle
         .solve_upper_triangular(&DMatrix::identity(parameters, parameters))
         .ok_or(LeastSquaresError::RankDeficient)?;
-    let scaled_coefficients = &r_inverse * q.tr_mul(&right);
+    let scaled_coefficients = &inverse * right;
     let coefficients = DVector::from_iterator(
         parameters,
         scaled_coefficients.iter().zip(&lengths).map(|(b, l)| b / l),
     );
-    let mut covariance = &r_inverse * r_inverse.transpose();
-    for i in 0..parameters {
-        for j in 0..parameters {
-            covariance[(i, j)] /= lengths[i] * lengths[j];
-        }
-    }
+    let covariance = DMatrix::from_fn(parameters, parameters, |i, j| {
+        inverse.row(i).dot(&inverse.row(j)) / (lengths[i] * lengths[j])
+    });
 
     let fitted = design * &coefficients;
     let residuals: Vec<f64> = observed.iter().zip(&fitted).map(|(y, f)| y - f).collect();
     let weighted_sum_of_squares = residuals.iter().zip(weights).map(|(r, w)| w * r * r).sum();
-    let leverages = q.row_iter().map(|row| row.norm_squared()).collect();
+    // The rows of Q are those of the design times R⁻¹.
+    let leverages = (0..rows)
+        .map(|row| {
+            scaled_row(row, &mut entries);
+            let along = |column: usize| -> f64 {
+                (0..=column).map(|i| entries[i] * inverse[(i, column)]).sum()
+            };
+            (0..parameters).map(|column| along(column) * along(column)).sum()
+        })
+        .collect();
     Ok(LinearFit { coefficients, covariance, residuals, leverages, weighted_sum_of_squares })
+}
+
+/// Turns one more row of the design, and its value, into the triangle and its right side (Golub &
+/// Van Loan, Matrix Computations, 4th ed. 2013, §5.2.5).
+fn rotate_in(
+    triangle: &mut DMatrix<f64>,
+    right: &mut DVector<f64>,
+    row: &mut [f64],
+    mut value: f64,
+) {
+    for pivot in 0..row.len() {
+        if row[pivot] == 0.0 {
+            continue;
+        }
+        let above = triangle[(pivot, pivot)];
+        let length = (above * above + row[pivot] * row[pivot]).sqrt();
+        let (cosine, sine) = (above / length, row[pivot] / length);
+        let turn = |up: f64, low: f64| (cosine * up + sine * low, cosine * low - sine * up);
+        for column in pivot..row.len() {
+            (triangle[(pivot, column)], row[column]) = turn(triangle[(pivot, column)], row[column]);
+        }
+        (right[pivot], value) = turn(right[pivot], value);
+    }
 }
 
 #[cfg(test)]

@@ -4,7 +4,8 @@
   "use strict";
 
   // Called when this script has ended: the glue asks for the address of the
-  // running script, which a frame with srcdoc does not have.
+  // running script, which a frame with srcdoc does not have. A promise that is
+  // kept at once would still come before the script's end.
   function glue() {
     /*{{glue}}*/
     return wasm_bindgen;
@@ -19,6 +20,7 @@
   /*{{unlzma}}*/
 
   async function start() {
+    await new Promise((resolve) => setTimeout(resolve));
     const text = document.getElementById("wasm").textContent;
     const packed = Uint8Array.from(atob(text), (letter) => letter.charCodeAt(0));
     const program = glue();
