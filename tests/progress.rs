@@ -225,3 +225,39 @@ fn what_cannot_be_used_is_refused_in_words() {
     assert!(refusal(&timeless, json!({}), json!({})).contains("unit"));
     assert!(refusal("", json!({}), json!({})).contains("Nothing is measured yet"));
 }
+
+#[test]
+fn odd_curves_give_findings_and_never_a_panic() {
+    let odd: [&[(f64, f64)]; 8] = [
+        &[(0.0, 1e300), (1.0, 1e299), (2.0, 1e298)],
+        &[(0.0, 1e-300), (1.0, 1e-301), (2.0, 1e-302)],
+        &[(0.0, 100.0), (0.0, 90.0), (1e-12, 50.0), (1e12, 1.0)],
+        &[(1e300, 5.0), (1.5e300, 4.0), (1.7e300, 1.0)],
+        &[(0.0, 0.0), (1.0, 0.0), (2.0, 5e-324)],
+        &[(0.0, 100.0), (1.0, 0.0), (2.0, 0.0), (3.0, 0.0)],
+        &[(0.0, 1.0), (1.0, 1e9), (2.0, -1e9), (3.0, 1.0)],
+        &[(5.0, 10.0), (5.0, 20.0), (6.0, 10.0)],
+    ];
+    for points in odd {
+        let mut text = String::from("T/°C\tt/h\tsignal\n");
+        for celsius in [40, 50, 60] {
+            for (time, signal) in points {
+                text.push_str(&format!("{celsius}\t{time:e}\t{signal:e}\n"));
+            }
+        }
+        for order in [json!(0), json!(1), json!(2.5), json!("compare"), json!("free")] {
+            for (start, end, noise) in [
+                (json!("free"), json!("free"), "constant"),
+                (json!("shared"), json!({"value": 0, "unit": ""}), "proportional"),
+                (json!({"value": 1, "unit": ""}), json!("shared"), "constant"),
+            ] {
+                let measured = json!({"start": start, "end": end, "noise": noise});
+                let findings = study(&text, measured, json!({"order": order}), questions());
+                assert_eq!(findings.answers.len(), 9);
+                for run in &findings.runs {
+                    assert!(run.rate_constant.value.is_finite(), "{run:?}");
+                }
+            }
+        }
+    }
+}

@@ -23,6 +23,8 @@ const STEP: f64 = 0.4;
 const LEAST_EXTENT: f64 = 1e-3;
 /// … to the fastest that leaves this part at the first.
 const LEAST_LEFT: f64 = 1e-3;
+/// Points of a run on which rates are tried.
+const MOST_TRIED_POINTS: usize = 60;
 /// Most rounds of weighting by the fitted signal.
 const ROUNDS: usize = 30;
 /// A signal counts as at least this part of the largest when noise is proportional: where the
@@ -32,6 +34,7 @@ const LEAST_SIGNAL: f64 = 0.01;
 /// The best ln κ of a ladder of rates that covers all that a run can show: with starts and ends
 /// eliminated one parameter is left, so that no guess is needed.
 pub(super) fn starting_rate(run: &ProgressRun, settings: &Settings) -> Result<(f64, Edge), NoRate> {
+    let run = &thinned(run);
     let times = || run.points.iter().map(|point| point.time_seconds).filter(|time| *time > 0.0);
     let first = times().fold(f64::INFINITY, f64::min);
     let last = times().fold(0.0, f64::max);
@@ -67,6 +70,14 @@ pub(super) fn starting_rate(run: &ProgressRun, settings: &Settings) -> Result<(f
         Edge::Between
     };
     Ok((lowest + STEP * step as f64, edge))
+}
+
+/// A run with few enough points to try many rates on: evenly taken, both ends kept.
+fn thinned(run: &ProgressRun) -> ProgressRun {
+    let stride = run.points.len().div_ceil(MOST_TRIED_POINTS);
+    let last = run.points.len().saturating_sub(1);
+    let kept = run.points.iter().enumerate().filter(|(i, _)| i % stride == 0 || *i == last);
+    ProgressRun { points: kept.map(|(_, point)| *point).collect(), ..run.clone() }
 }
 
 fn without_slopes(

@@ -156,6 +156,15 @@ fn proportional_noise_weighs_by_the_fitted_signal() {
 }
 
 #[test]
+fn many_points_are_no_other_than_few() {
+    let times: Vec<f64> = (0..2000).map(|i| 0.01 * f64::from(i)).collect();
+    let fit = only(run(&times, |t| 100.0 * (-0.3 * t).exp() + wobble(t)), &LEFT);
+    let off = fit.as_ref().map_or(f64::NAN, |fit| fit.ln_rate - 0.3_f64.ln());
+    assert!(off.abs() < 0.02, "{fit:?}");
+    assert!(fit.is_ok_and(|fit| fit.residuals.len() == 2000));
+}
+
+#[test]
 fn what_tells_no_rate_is_refused_with_its_reason() {
     let flat = run(&TIMES, |t| if [1.0, 4.0, 9.0].contains(&t) { 101.0 } else { 99.5 });
     assert_eq!(only(flat, &LEFT), Err(NoRate::NoReaction));
