@@ -119,7 +119,9 @@ class Fit:
         return float((model.resid**2 / (self.s**2 + tau**2)).sum())
 
     def average(self, step=0.003, last=1e-9):
-        """Masses from F(Q(τ)) on a fine ladder of τ (Iyer, Wang & Mathew 2004; Viechtbauer 2007)."""
+        """Masses from F(Q(τ)) on a fine ladder of τ (Iyer, Wang & Mathew 2004; Viechtbauer 2007);
+        what is left for no τ lies evenly over τ² up to its moment estimate's standard error at 0
+        (DerSimonian & Laird 1986)."""
         nodes = [0.0]
         larger = [stats.chi2.cdf(self.misfit(0.0), self.nu)]
         while larger[-1] >= last:
@@ -127,10 +129,16 @@ class Fit:
             larger.append(stats.chi2.cdf(self.misfit(nodes[-1]), self.nu))
         between = -numpy.diff(larger)
         masses = numpy.zeros(len(nodes))
-        masses[0] = 1.0 - larger[0]
         masses[:-1] += 0.5 * between
         masses[1:] += 0.5 * between
         masses[-1] += larger[-1]
+        weights, (_, covariance) = numpy.diag(1.0 / self.s**2), self.weighted(0.0)
+        weighted = weights @ self.design
+        spread = weights - weighted @ covariance @ weighted.T
+        error = math.sqrt(2.0 * self.nu) / numpy.trace(spread)
+        rungs = 1000
+        nodes += [math.sqrt(error * (i + 0.5) / rungs) for i in range(rungs)]
+        masses = numpy.append(masses, numpy.full(rungs, (1.0 - larger[0]) / rungs))
         self.components = []
         for tau, mass in zip(nodes, masses):
             model, covariance = self.weighted(tau)

@@ -4,7 +4,7 @@
 //! scatter choice. Each replicate draws runs, fits them and answers every question; an answer
 //! covers when the true value (for a single batch: a newly drawn batch's value) lies within it.
 
-use kinetics_core::answer::{Answer, Basis};
+use kinetics_core::answer::{Answer, Basis, Side};
 use kinetics_core::grounds::Support;
 use kinetics_core::measurements::Observation;
 use kinetics_core::quantity::Kelvin;
@@ -42,6 +42,17 @@ pub enum Errors {
     PreciseEnds,
 }
 
+impl Errors {
+    /// What the table calls it.
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::Equal => "equal",
+            Self::Unequal => "log-normal",
+            Self::PreciseEnds => "two precise ends",
+        }
+    }
+}
+
 /// One cell of the calibration.
 #[derive(Debug, Clone, Copy)]
 pub struct Cell {
@@ -55,19 +66,31 @@ pub struct Cell {
     pub scatter: ScatterChoice,
 }
 
+impl Cell {
+    /// Whether what the scatter choice takes for granted is true here.
+    pub fn assumptions_hold(&self) -> bool {
+        match self.scatter {
+            ScatterChoice::AsStated => self.tau == 0.0,
+            ScatterChoice::FromResiduals => self.errors == Errors::Equal,
+            ScatterChoice::AsStatedPlusRunToRun | ScatterChoice::Automatic => true,
+        }
+    }
+}
+
 /// What came out for one question in a cell.
 #[derive(Debug, Clone)]
 pub struct Outcome {
     /// Code of the question, with its bound where it has one.
     pub question: String,
-    /// Share of replicates whose interval covers the truth.
+    /// Share of replicates whose answer does not miss the truth: one that sets no limit holds it,
+    /// and a refusal claims nothing.
     pub coverage: f64,
     /// Mean width on the question's scale (ln, or K for temperatures); for a one-sided bound its
     /// mean distance from the best estimate.
     pub width: f64,
     /// The same for an oracle that knows every variance and uses the normal distribution.
     pub oracle_width: f64,
-    /// Replicates that gave numbers.
+    /// Replicates whose answer has the limits that its question asks for.
     pub answered: usize,
 }
 
@@ -227,7 +250,7 @@ pub fn simulate(cell: &Cell, replicates: usize, seed: u64) -> Vec<Outcome> {
     let mut random = Pcg64Mcg::seed_from_u64(seed);
     let mut normal = || -> f64 { StandardNormal.sample(&mut random) };
     let asked = questions();
-    let mut tallies = vec![(0_usize, 0.0_f64, 0.0_f64, 0_usize); asked.len()];
+    let mut tallies = vec![Tally::default(); asked.len()];
     let tau = cell.tau * TYPICAL_SD;
     for _ in 0..replicates {
         let temperatures: Vec<f64> = (0..cell.runs)
@@ -263,26 +286,34 @@ pub fn simulate(cell: &Cell, replicates: usize, seed: u64) -> Vec<Outcome> {
         let Some(basis) = basis(&runs, cell.scatter) else { continue };
         for (asked, tally) in asked.iter().zip(&mut tallies) {
             let answer = question::answer(&asked.entry, Ok(&basis));
-            let Some((covers, width)) = judge(&answer, asked.truth, batch) else { continue };
-            let one_sided = answer.low.is_none() || answer.high.is_none();
+            tally.missed += usize::from(misses(&answer, asked.truth.value(batch)));
+            let Some(width) = width(&answer, asked.truth) else { continue };
+            let one_sided = answer.side != Some(Side::Two);
             let quantiles = if one_sided { 1.644_853_627 } else { 2.0 * 1.959_963_985 };
-            tally.0 += usize::from(covers);
-            tally.1 += width;
-            tally.2 += quantiles * asked.truth.oracle_sd(oracle, batch_variance);
-            tally.3 += 1;
+            tally.width += width;
+            tally.oracle_width += quantiles * asked.truth.oracle_sd(oracle, batch_variance);
+            tally.answered += 1;
         }
     }
     asked
         .into_iter()
         .zip(tallies)
-        .map(|(asked, (covered, width, oracle_width, answered))| Outcome {
+        .map(|(asked, tally)| Outcome {
             question: asked.label,
-            coverage: covered as f64 / answered as f64,
-            width: width / answered as f64,
-            oracle_width: oracle_width / answered as f64,
-            answered,
+            coverage: 1.0 - tally.missed as f64 / replicates as f64,
+            width: tally.width / tally.answered as f64,
+            oracle_width: tally.oracle_width / tally.answered as f64,
+            answered: tally.answered,
         })
         .collect()
+}
+
+#[derive(Clone, Default)]
+struct Tally {
+    missed: usize,
+    width: f64,
+    oracle_width: f64,
+    answered: usize,
 }
 
 fn basis(runs: &[Observation], scatter: ScatterChoice) -> Option<Basis> {
@@ -302,25 +333,30 @@ fn basis(runs: &[Observation], scatter: ScatterChoice) -> Option<Basis> {
     })
 }
 
-/// Whether an answer covers the truth, and its width on the scale of the question. An answer
-/// that bounds nothing covers, with no width to average; it and refusals are counted out.
-fn judge(answer: &Answer, truth: Truth, batch: f64) -> Option<(bool, f64)> {
-    let value = truth.value(batch);
+/// Whether a limit of the answer excludes the truth.
+fn misses(answer: &Answer, truth: f64) -> bool {
+    answer.low.is_some_and(|low| truth < low) || answer.high.is_some_and(|high| truth > high)
+}
+
+/// The answer's width on the scale of its question; none where it lacks a limit that the question
+/// asks for.
+fn width(answer: &Answer, truth: Truth) -> Option<f64> {
     let scale = |number: f64| {
         if truth.is_temperature() {
             number
         } else if matches!(truth, Truth::Gone { .. }) {
-            (-(-number).ln_1p()).ln()
+            // An extent within the last digit of all is taken a last digit off.
+            (-(-number.clamp(f64::MIN_POSITIVE, 1.0 - f64::EPSILON)).ln_1p()).ln()
         } else {
             number.ln()
         }
     };
     let best = answer.value?;
-    match (answer.low, answer.high) {
-        (Some(low), Some(high)) => Some((low <= value && value <= high, scale(high) - scale(low))),
-        (Some(low), None) => Some((low <= value, scale(best) - scale(low))),
-        (None, Some(high)) => Some((value <= high, scale(high) - scale(best))),
-        (None, None) => None,
+    match (answer.side?, answer.low, answer.high) {
+        (Side::Two, low, high) => Some(scale(high?) - scale(low?)),
+        (_, Some(low), None) => Some(scale(best) - scale(low)),
+        (_, None, high) => Some(scale(high?) - scale(best)),
+        _ => None,
     }
 }
 
