@@ -42,13 +42,6 @@ pub fn read_table(
     to_javascript(&table_value(text, &table::read_table(text, &hints)))
 }
 
-/// The version of Kelvinclock.
-#[wasm_bindgen]
-#[must_use]
-pub fn version() -> String {
-    env!("CARGO_PKG_VERSION").to_owned()
-}
-
 /// The JSON of a value; none where there is no value.
 fn json_text(value: &JsValue) -> Result<Option<String>, JsError> {
     let text = JSON::stringify(value).map_err(|error| {

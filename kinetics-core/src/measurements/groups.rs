@@ -14,9 +14,10 @@
 //! than χ² with G − p degrees of freedom (its weights majorise them), so t with G − p has tails
 //! that are wide enough. Var = s² + τ² is treated alike for each τ.
 
-use std::collections::BTreeMap;
+use std::collections::HashMap;
 
 use super::{Observation, Run};
+use crate::numeric::sorting::sort_by;
 
 /// Runs taken together by their groups.
 #[derive(Debug, Clone, PartialEq)]
@@ -34,31 +35,28 @@ pub struct Grouped {
 /// Takes runs together; none where no two share a group.
 pub fn grouped(runs: &[Run]) -> Option<Grouped> {
     let group_of = groups_of(runs);
-    // Keyed by the first run of the group and the temperature; each holds its runs.
-    let mut cells: BTreeMap<(usize, u64), Vec<usize>> = BTreeMap::new();
-    for (run, group) in group_of.iter().enumerate() {
-        let temperature = runs[run].observation.temperature.0.to_bits();
-        cells.entry((*group, temperature)).or_default().push(run);
-    }
-    let mut sizes: BTreeMap<usize, usize> = BTreeMap::new();
-    for (group, _) in cells.keys() {
-        *sizes.entry(*group).or_default() += 1;
-    }
-    let groups = sizes.len();
+    let groups = group_of.iter().enumerate().filter(|(run, first)| run == *first).count();
     if groups == runs.len() {
         return None;
     }
-    let mut members: Vec<(usize, Vec<usize>)> =
-        cells.into_iter().map(|((group, _), runs)| (group, runs)).collect();
-    members.sort_by_key(|(_, runs)| runs.first().copied());
+    // Runs of one group and one temperature side by side, each set in the order of its runs.
+    let temperature = |run: usize| runs[run].observation.temperature.0;
+    let mut order: Vec<usize> = (0..runs.len()).collect();
+    sort_by(&mut order, |run| temperature(*run));
+    sort_by(&mut order, |run| group_of[*run] as f64);
+    let mut members: Vec<Vec<usize>> = order
+        .chunk_by(|a, b| group_of[*a] == group_of[*b] && temperature(*a) == temperature(*b))
+        .map(<[usize]>::to_vec)
+        .collect();
+    sort_by(&mut members, |cell| cell[0] as f64);
+    let mut sizes = vec![0.0; runs.len()];
+    for cell in &members {
+        sizes[group_of[cell[0]]] += 1.0;
+    }
     let observations = members
         .iter()
-        .map(|(group, cell)| {
-            let share = 1.0 / sizes.get(group).copied().unwrap_or(1) as f64;
-            Observation { share, ..mean(runs, cell) }
-        })
+        .map(|cell| Observation { share: 1.0 / sizes[group_of[cell[0]]], ..mean(runs, cell) })
         .collect();
-    let members: Vec<Vec<usize>> = members.into_iter().map(|(_, runs)| runs).collect();
     Some(Grouped { observations, within: within(runs, &members), members, groups })
 }
 
@@ -73,10 +71,10 @@ fn groups_of(runs: &[Run]) -> Vec<usize> {
         run
     }
     let mut of: Vec<usize> = (0..runs.len()).collect();
-    let mut seen: BTreeMap<&(usize, String), usize> = BTreeMap::new();
+    let mut seen: HashMap<String, usize> = HashMap::new();
     for (run, names) in runs.iter().map(|run| &run.groups).enumerate() {
-        for name in names {
-            let other = *seen.entry(name).or_insert(run);
+        for (column, name) in names {
+            let other = *seen.entry(format!("{column} {name}")).or_insert(run);
             let (one, other) = (first(&mut of, run), first(&mut of, other));
             of[one.max(other)] = one.min(other);
         }

@@ -73,7 +73,8 @@ async fn package_into(
 }
 
 /// Compiler flags that shorten the paths of source files, which panics name
-/// and the program thus carries, to what is the same on every machine.
+/// and the program thus carries, to what is the same on every machine, and
+/// that keep small functions apart, which packs a little better.
 fn compiler_flags(root: &Path) -> OsString {
     let mut shortened = vec![(root.to_owned(), ".")];
     if let Some(home) = cargo_home() {
@@ -84,12 +85,9 @@ fn compiler_flags(root: &Path) -> OsString {
             shortened.push((registry.path(), "crates"));
         }
     }
-    let mut flags = OsString::new();
+    let mut flags = OsString::from("-Cllvm-args=-inline-threshold=-10");
     for (from, to) in shortened {
-        if !flags.is_empty() {
-            flags.push("\u{1f}");
-        }
-        flags.push("--remap-path-prefix=");
+        flags.push("\u{1f}--remap-path-prefix=");
         flags.push(from);
         flags.push("=");
         flags.push(to);

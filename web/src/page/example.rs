@@ -1,44 +1,24 @@
 //! What a new user sees: an invented study, already evaluated.
 
 use kinetics_core::study::Study;
-use serde_json::json;
 
 /// The title of the example, by which it is known until the user begins with data of their own.
 const TITLE: &str = "Glaze hardener, batch 7 (invented example)";
 
-/// The measured text of the example.
-const TEXT: &str = "T/°C\tk / 10^-3 h^-1\ts(k) / 10^-3 h^-1\n\
-                    50\t18.4\t0.9\n\
-                    55\t33.2\t1.7\n\
-                    60\t54.7\t2.7\n\
-                    65\t81.9\t4.1\n\
-                    70\t133\t6.7\n\
-                    78\t275\t13.7\n";
-
 /// A hardener of a small maker of glazes: six rate constants and three questions. Invented.
+const STUDY: &str = r#"{
+"kelvinclock": 1,
+"title": "Glaze hardener, batch 7 (invented example)",
+"measured": {"text": "T/°C\tk / 10^-3 h^-1\ts(k) / 10^-3 h^-1\n50\t18.4\t0.9\n55\t33.2\t1.7\n60\t54.7\t2.7\n65\t81.9\t4.1\n70\t133\t6.7\n78\t275\t13.7\n"},
+"asked": [
+{"question": "time-to-extent", "temperature": {"value": 25, "unit": "°C"}, "gone": {"value": 5, "unit": "%"}},
+{"question": "longest-stand", "temperature": {"value": 40, "unit": "°C"}, "keep": {"value": 98, "unit": "%"}},
+{"question": "temperature-for", "gone": {"value": 99, "unit": "%"}, "time": {"value": 8, "unit": "h"}}
+]}"#;
+
+/// The example's study.
 pub fn study() -> Study {
-    let asked = json!([
-        {
-            "question": "time-to-extent",
-            "temperature": {"value": 25, "unit": "°C"},
-            "gone": {"value": 5, "unit": "%"}
-        },
-        {
-            "question": "longest-stand",
-            "temperature": {"value": 40, "unit": "°C"},
-            "keep": {"value": 98, "unit": "%"}
-        },
-        {
-            "question": "temperature-for",
-            "gone": {"value": 99, "unit": "%"},
-            "time": {"value": 8, "unit": "h"}
-        }
-    ]);
-    let mut study = Study::new();
-    study.title = TITLE.into();
-    study.measured.text = TEXT.into();
-    study.asked = serde_json::from_value(asked).unwrap_or_default();
-    study
+    Study::from_json(STUDY).unwrap_or_default()
 }
 
 /// Whether the study is the example, however much it was played with.
@@ -57,6 +37,8 @@ pub fn leave(study: &mut Study) {
 
 #[cfg(test)]
 mod tests {
+    use serde_json::json;
+
     use super::*;
 
     #[test]

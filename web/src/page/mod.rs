@@ -101,7 +101,7 @@ fn build(place: Element, fragment: &Fragment, linked: Option<Result<Study, Strin
 }
 
 fn footer() -> Part {
-    let version = crate::api::version();
+    let version = crate::version();
     part("footer")
         .class("foot")
         .add(part("p").text(

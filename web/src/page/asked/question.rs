@@ -133,7 +133,7 @@ fn read(text: &str, kind: BlankKind, decimal: char, unit: &str) -> Result<Vec<Qu
         if kind != BlankKind::Temperature {
             return Err(said);
         }
-        let large = text.to_uppercase().replace('C', "°C").replace("°°", "°");
+        let large = text.to_ascii_uppercase().replace('C', "°C").replace("°°", "°");
         parse_blank(&large, kind, decimal).map_err(|_| said)
     })
 }

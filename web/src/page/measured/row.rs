@@ -1,6 +1,5 @@
 //! One line of the table: the cells of a row, or what is to say about it.
 
-use std::collections::BTreeSet;
 use std::rc::Rc;
 
 use kinetics_core::answer::capitalised;
@@ -34,14 +33,14 @@ pub enum Line {
     LeftOut(u32),
 }
 
-/// All lines, the empty one for the next row included.
-pub fn lines(table: &Table, problems: &[Problem], left_out: BTreeSet<usize>) -> Vec<Line> {
+/// All lines, the empty one for the next row included; the rows left out come in order.
+pub fn lines(table: &Table, problems: &[Problem], left_out: &[usize]) -> Vec<Line> {
     let mut lines = Vec::with_capacity(table.rows.len() + 1);
     let mut problems = problems.iter().filter_map(|problem| problem.row).peekable();
     for (row, at) in table.rows.iter().zip(0..) {
         lines.push(Line::Cells(at));
         while problems.next_if(|line| *line < row.line).is_some() {}
-        if left_out.contains(&row.line) {
+        if left_out.binary_search(&row.line).is_ok() {
             lines.push(Line::LeftOut(at));
         } else if problems.peek() == Some(&row.line) {
             lines.push(Line::Problems(at));

@@ -91,8 +91,10 @@ pub fn table(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
     });
     let problems = Rc::clone(&rows.problems);
     let lines = once(sheet, move |study, _| {
-        let left_out = study.measured.excluded.iter().map(|entry| entry.row).collect();
-        Rc::new(row::lines(&sheet.prepared().table, &problems(), left_out))
+        let mut left_out: Vec<usize> =
+            study.measured.excluded.iter().map(|entry| entry.row).collect();
+        sort_by(&mut left_out, |row| *row as f64);
+        Rc::new(row::lines(&sheet.prepared().table, &problems(), &left_out))
     });
 
     // From the top of what is seen, and how much is seen, in CSS pixels.
