@@ -1,5 +1,6 @@
 //! Numerical methods that know no chemistry.
 
+pub mod decimals;
 pub mod distributions;
 pub mod errors_in_both;
 pub mod least_squares;

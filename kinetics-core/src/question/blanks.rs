@@ -5,6 +5,7 @@ use serde_json::{Map, Value};
 use super::subject::Subject;
 use super::{Blank, MOST_ROWS, Question};
 use crate::answer::{Basis, Refusal, capitalised};
+use crate::numeric::decimals::read_decimal;
 use crate::problem::shortened;
 use crate::quantity::{Kelvin, Quantity, Seconds};
 use crate::temperature_law::Target;
@@ -325,7 +326,7 @@ fn split_number(piece: &str, decimal: char) -> Option<(f64, &str)> {
     if decimal == ',' {
         number = number.replace(',', ".");
     }
-    number.parse().ok().filter(|n: &f64| n.is_finite()).map(|n| (n, piece[end..].trim()))
+    read_decimal(&number).map(|n| (n, piece[end..].trim()))
 }
 
 #[cfg(test)]

@@ -7,6 +7,7 @@ use super::layout::Layout;
 use super::roles::{self, Roles};
 use super::values::{TimeShape, Values};
 use super::{Choice, Column, ColumnHint, Decimal, Form, Hints, Origin, Role};
+use crate::numeric::decimals::read_decimal;
 use crate::problem::{Position, Problem};
 use crate::units::RateUnit;
 
@@ -321,7 +322,7 @@ fn share_rate_unit(columns: &mut [Column]) {
 
 /// A number for a sentence: 12 digits hide what binary fractions leave behind.
 pub(super) fn shown(value: f64) -> String {
-    let rounded: f64 = format!("{value:.11e}").parse().unwrap_or(value);
+    let rounded = read_decimal(&format!("{value:.11e}")).unwrap_or(value);
     let size = rounded.abs();
     if size != 0.0 && !(1e-4..1e7).contains(&size) {
         format!("{rounded:e}")

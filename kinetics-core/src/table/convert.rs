@@ -6,6 +6,7 @@ use super::header::without_humidity;
 use super::tally::Tally;
 use super::values::TimeShape;
 use super::{Column, Content, Form, Role, Row};
+use crate::numeric::decimals::read_decimal;
 use crate::problem::{Position, Problem};
 use crate::text::decimal::{Evidence, evidence};
 use crate::text::number::{Number, Reading, read_cell};
@@ -297,12 +298,15 @@ impl Converter {
 /// that 2.1 in a column of 10³ k is 0.0021 and not 0.0021000000000000003.
 fn times(value: f64, multiplier: f64) -> f64 {
     let power = libm::round(libm::log10(multiplier));
-    if multiplier == 1.0 || power.abs() > 300.0 || format!("1e{power}").parse() != Ok(multiplier) {
+    if multiplier == 1.0
+        || power.abs() > 300.0
+        || read_decimal(&format!("1e{power}")) != Some(multiplier)
+    {
         return value * multiplier;
     }
     let written = format!("{value:e}");
     let shifted = written.split_once('e').and_then(|(digits, own)| {
-        format!("{digits}e{}", own.parse::<f64>().ok()? + power).parse().ok()
+        read_decimal(&format!("{digits}e{}", read_decimal(own)? + power))
     });
     shifted.unwrap_or(value * multiplier)
 }
@@ -363,48 +367,51 @@ fn expected(cell: &str, plan: &Plan) -> String {
     let zeros: String =
         if short { cell.replace(['O', 'o'], "0").replace(['l', 'I'], "1") } else { String::new() };
     let digits = |c: char| c.is_ascii_digit() || matches!(c, '.' | ',' | 'e' | 'E' | '-' | '+');
-    let hint =
-        if cell.to_lowercase().trim_matches(['-', '+', '∞']).trim_start_matches("inf").is_empty()
-        {
-            "infinity is none"
-        } else if cell.starts_with(['>', '≥']) {
-            "a value beyond a limit says too little"
-        } else if cell.starts_with('#') {
-            "this is an error of the spreadsheet"
-        } else if cell.starts_with('=') {
-            "this is a formula, not its result"
-        } else if short && zeros != cell && reads(&zeros) {
-            "a letter stands where a digit is meant"
-        } else if matches!(read_cell(cell, plan.decimal.other()), Reading::Number(_)) {
-            match plan.decimal {
-                Decimal::Point => "the comma is not read as a decimal mark here",
-                Decimal::Comma => "the point is not read as a decimal mark here",
-            }
-        } else if cell.contains(['e', 'E'])
-            && cell.chars().all(digits)
-            && cell.matches(['e', 'E']).count() == 1
-            && cell.ends_with(|c: char| c.is_ascii_digit())
-        {
-            "its size is beyond what can be computed with"
-        } else if cell.contains('±') && cell.contains("10") {
-            "put value and error in brackets before the power of ten, as in (2.1 ± 0.1)e-3"
-        } else if cell.contains("×10")
-            || cell.contains("x10")
-            || cell.contains("× 10")
-            || cell.contains("x 10")
-        {
-            "write the power of ten as in 1.2e-3"
-        } else if plan.role == Role::Time && cell.contains(':') && cell.contains(['.', '/']) {
-            "write dates as in 2024-03-01 08:00"
-        } else if plan.role == Role::Time && cell.contains(':') {
-            "or a duration as in 1:30"
-        } else if cell.chars().filter(char::is_ascii_digit).count() > 0
-            && cell.chars().filter(|c| matches!(c, '.' | ',')).count() > 1
-        {
-            "it has more than one decimal mark"
-        } else {
-            return number.to_string();
-        };
+    let hint = if cell
+        .to_ascii_lowercase()
+        .trim_matches(['-', '+', '∞'])
+        .trim_start_matches("inf")
+        .is_empty()
+    {
+        "infinity is none"
+    } else if cell.starts_with(['>', '≥']) {
+        "a value beyond a limit says too little"
+    } else if cell.starts_with('#') {
+        "this is an error of the spreadsheet"
+    } else if cell.starts_with('=') {
+        "this is a formula, not its result"
+    } else if short && zeros != cell && reads(&zeros) {
+        "a letter stands where a digit is meant"
+    } else if matches!(read_cell(cell, plan.decimal.other()), Reading::Number(_)) {
+        match plan.decimal {
+            Decimal::Point => "the comma is not read as a decimal mark here",
+            Decimal::Comma => "the point is not read as a decimal mark here",
+        }
+    } else if cell.contains(['e', 'E'])
+        && cell.chars().all(digits)
+        && cell.matches(['e', 'E']).count() == 1
+        && cell.ends_with(|c: char| c.is_ascii_digit())
+    {
+        "its size is beyond what can be computed with"
+    } else if cell.contains('±') && cell.contains("10") {
+        "put value and error in brackets before the power of ten, as in (2.1 ± 0.1)e-3"
+    } else if cell.contains("×10")
+        || cell.contains("x10")
+        || cell.contains("× 10")
+        || cell.contains("x 10")
+    {
+        "write the power of ten as in 1.2e-3"
+    } else if plan.role == Role::Time && cell.contains(':') && cell.contains(['.', '/']) {
+        "write dates as in 2024-03-01 08:00"
+    } else if plan.role == Role::Time && cell.contains(':') {
+        "or a duration as in 1:30"
+    } else if cell.chars().filter(char::is_ascii_digit).count() > 0
+        && cell.chars().filter(|c| matches!(c, '.' | ',')).count() > 1
+    {
+        "it has more than one decimal mark"
+    } else {
+        return number.to_string();
+    };
     format!("{number} ({hint})")
 }
 

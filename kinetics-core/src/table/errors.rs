@@ -7,6 +7,7 @@ use super::convert::factor;
 use super::header::Reading;
 use super::values::Values;
 use super::{Column, Form, Hints, Origin, Role};
+use crate::text::lower;
 
 /// Ties the errors in column `at`; a sentence where their scale needs one.
 pub(super) fn tie(
@@ -116,7 +117,7 @@ fn value_of(at: usize, columns: &[Column], form: Option<Form>) -> Option<usize> 
 fn follows_unused_mean(at: usize, columns: &[Column]) -> bool {
     let before = at.checked_sub(1).and_then(|before| columns.get(before));
     before.is_some_and(|column| {
-        let name = column.header.to_lowercase();
+        let name = lower(&column.header);
         column.role == Role::Ignore
             && ["mean", "average", "avg", "mittel", "moyenne"]
                 .iter()
@@ -126,7 +127,7 @@ fn follows_unused_mean(at: usize, columns: &[Column]) -> bool {
 
 /// In per cent of the value, by name, unit or cells.
 fn is_relative(error: &Column, reading: &Reading, value: &Column, cells: Option<&Values>) -> bool {
-    let lower = error.header.to_lowercase();
+    let lower = lower(&error.header);
     let by_name = ["rsd", "cv", "relativ"].iter().any(|word| lower.contains(word));
     // Beside values in per cent, errors in per cent are taken as absolute.
     let value_in_percent = matches!(value.unit.as_deref(), Some("%" | "fraction"));

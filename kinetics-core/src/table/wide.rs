@@ -2,6 +2,7 @@
 
 use super::roles::Roles;
 use super::{Origin, Role};
+use crate::numeric::decimals::read_decimal;
 use crate::quantity::Quantity;
 use crate::units::TimeUnit;
 
@@ -53,14 +54,7 @@ impl Roles<'_> {
         let bare: Vec<(usize, f64)> = unknown
             .iter()
             .filter_map(|column| {
-                Some((
-                    *column,
-                    self.header(*column)
-                        .replace(',', ".")
-                        .parse::<f64>()
-                        .ok()
-                        .filter(|value| value.is_finite())?,
-                ))
+                Some((*column, read_decimal(&self.header(*column).replace(',', "."))?))
             })
             .collect();
         let others: Vec<usize> = unknown
@@ -148,7 +142,7 @@ impl Roles<'_> {
 /// `7 d`, `3 months`, `day 14`, `6 M`, `week 4`.
 fn names_a_time(header: &str) -> bool {
     let words: Vec<&str> = header.split_whitespace().collect();
-    let number = |word: &str| word.replace(',', ".").parse::<f64>().is_ok_and(f64::is_finite);
+    let number = |word: &str| read_decimal(&word.replace(',', ".")).is_some();
     let unit = |word: &str| matches!(word, "M" | "W" | "D") || TimeUnit::parse(word).is_ok();
     match words.as_slice() {
         [first, second] => (number(first) && unit(second)) || (unit(first) && number(second)),

@@ -67,7 +67,7 @@ pub fn marker(cell: &str) -> Option<Marker> {
     if cell.len() > 40 {
         return None;
     }
-    let lower = cell.to_lowercase();
+    let lower = cell.to_ascii_lowercase();
     let word: String = lower
         .trim_start_matches(['<', '≤'])
         .trim_matches(|character: char| {

@@ -25,7 +25,33 @@ pub(crate) fn is_invisible(character: char) -> bool {
     )
 }
 
+/// In small letters: Latin as western Europe writes it, Greek and Cyrillic, which is what heads are
+/// written in. The tables of all other scripts would be as large as the reader of tables.
+pub(crate) fn lower(text: &str) -> String {
+    let small = |letter: char| {
+        let apart = match letter {
+            'A'..='Z' | 'À'..='Ö' | 'Ø'..='Þ' | 'Α'..='Ρ' | 'Σ'..='Ϋ' | 'А'..='Я' => 0x20,
+            'Ѐ'..='Џ' => 0x50,
+            _ => 0,
+        };
+        char::from_u32(u32::from(letter) + apart).unwrap_or(letter)
+    };
+    text.chars().map(small).collect()
+}
+
 /// White space of any kind, and what cannot be seen.
 pub(crate) fn is_blank(character: char) -> bool {
     character.is_whitespace() || is_invisible(character)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn small_letters_are_those_of_unicode() {
+        for letter in ('\0'..='\u{ff}').chain('Α'..='Ϋ').chain('Ѐ'..='я') {
+            assert_eq!(lower(&letter.to_string()), letter.to_lowercase().to_string(), "{letter}");
+        }
+    }
 }

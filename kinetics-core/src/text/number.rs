@@ -5,6 +5,7 @@ use super::decimal::Decimal;
 use super::marker::{Marker, marker, without_marks};
 use super::scan::{scan, vanished};
 use super::{is_blank, is_invisible};
+use crate::numeric::decimals::read_decimal;
 
 /// A longer cell is no number.
 const LONGEST: usize = 120;
@@ -99,7 +100,7 @@ fn plain(cell: &str, decimal: Decimal) -> Option<f64> {
     if bytes.len() > LONGEST || !bytes.iter().all(|byte| simple(byte) || point(byte)) {
         return None;
     }
-    cell.parse().ok().filter(|value: &f64| value.is_finite() && !vanished(*value, cell))
+    read_decimal(cell).filter(|value| !vanished(*value, cell))
 }
 
 #[cfg(test)]

@@ -4,6 +4,7 @@
 use super::decimal::{Decimal, is_group_space};
 use super::is_blank;
 use super::number::Number;
+use crate::numeric::decimals::read_decimal;
 
 /// Reads the whole of `cell` as a number, or not at all.
 pub(super) fn scan(cell: &str, decimal: Decimal) -> Option<Number> {
@@ -333,7 +334,7 @@ impl Mantissa {
             }
             None => format!("{}e{power}", self.written),
         };
-        written.parse().ok().filter(|value: &f64| value.is_finite() && !vanished(*value, &written))
+        read_decimal(&written).filter(|value| !vanished(*value, &written))
     }
 }
 

@@ -1,5 +1,7 @@
 //! Times as clocks and calendars write them: ISO 8601 stamps and `h:mm:ss`.
 
+use crate::numeric::decimals::read_decimal;
+
 /// Seconds since 1970 of a stamp such as `2024-03-01 08:00`,
 /// `2024-03-01T08:00:30`, `2024-03-01T08:00Z` or `2024-03-01`. A stamp without
 /// an offset counts as UTC: only differences are of use.
@@ -25,7 +27,7 @@ pub fn stamp_seconds(text: &str) -> Option<f64> {
     } else {
         let digits = rest.strip_prefix(['.', ','])?;
         let usable = !digits.is_empty() && digits.bytes().all(|byte| byte.is_ascii_digit());
-        if usable { format!("0.{digits}").parse().ok()? } else { return None }
+        if usable { read_decimal(&format!("0.{digits}"))? } else { return None }
     };
     Some(days * DAY + hour * 3600.0 + minute * 60.0 + second + fraction - offset)
 }
@@ -90,7 +92,7 @@ pub fn clock_seconds(text: &str) -> Option<(f64, bool)> {
     }
     let mut seconds = 0.0;
     for (at, part) in parts.iter().enumerate() {
-        let number: f64 = part.parse().ok()?;
+        let number = read_decimal(part)?;
         if at > 0 && (number >= 60.0 || part.len() != 2) {
             return None;
         }

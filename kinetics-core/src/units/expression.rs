@@ -6,6 +6,7 @@
 //! offered, the strict one first.
 
 use super::symbols::meanings;
+use crate::numeric::decimals::read_decimal;
 
 /// Longer texts are no unit, and brackets nest no deeper.
 const LONGEST: usize = 80;
@@ -196,7 +197,7 @@ impl Reader<'_> {
             factor.scale = self.number()?;
         } else {
             let word = self.word()?;
-            if ["per", "pro", "par"].contains(&word.to_lowercase().as_str()) {
+            if ["per", "pro", "par"].contains(&word.to_ascii_lowercase().as_str()) {
                 return Some(None);
             }
             for meaning in meanings(&word)? {
@@ -254,7 +255,7 @@ impl Reader<'_> {
                 self.at += 1;
             }
         }
-        digits.parse().ok()
+        read_decimal(&digits)
     }
 
     /// The power after a factor: `^-1`, `**2`, `⁻¹`, `⁰·⁵`, `-1`, `3`, `^(1/2)`, `^½`.
@@ -322,7 +323,7 @@ impl Reader<'_> {
             }
             self.at += 1;
         }
-        digits.parse().ok()
+        read_decimal(&digits)
     }
 }
 

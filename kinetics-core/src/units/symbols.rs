@@ -71,7 +71,7 @@ fn single(word: &str) -> Option<Meaning> {
     if let Some((_, meaning)) = SYMBOLS.iter().find(|(symbol, _)| *symbol == word) {
         return Some(meaning);
     }
-    let lower = word.to_lowercase();
+    let lower = word.to_ascii_lowercase();
     WORDS.iter().find(|(words, _)| words.contains(&lower.as_str())).map(|(_, meaning)| *meaning)
 }
 

@@ -53,7 +53,7 @@ impl TemperatureUnit {
             .take(20)
             .map(|character| if matches!(character, 'º' | '˚' | '∘') { '°' } else { character })
             .collect();
-        let bare = match folded.to_lowercase() {
+        let bare = match folded.to_ascii_lowercase() {
             lower if lower.starts_with("degrees") => lower[7..].to_string(),
             lower if lower.starts_with("degree") => lower[6..].to_string(),
             lower if lower.starts_with("deg") => lower[3..].to_string(),

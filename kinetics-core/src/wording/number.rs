@@ -1,5 +1,7 @@
 //! Numbers with as many figures as their interval supports.
 
+use crate::numeric::decimals::read_decimal;
+
 /// Down to which decimal place numbers of one kind are printed.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub struct Figures(Kind);
@@ -96,7 +98,7 @@ impl Figures {
         }
         // Converted to and fro, a stated number keeps its figures but for rounding.
         let as_typed = (1..=MOST).find(|figures| {
-            let typed: f64 = format!("{value:.*e}", figures - 1).parse().unwrap_or(f64::NAN);
+            let typed = read_decimal(&format!("{value:.*e}", figures - 1)).unwrap_or(f64::NAN);
             (typed - value).abs() <= 1e-9 * value.abs()
         });
         let stated = |figures: usize| leading_place(value, figures) + 1 - figures as i32;

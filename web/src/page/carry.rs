@@ -127,7 +127,7 @@ pub fn file_name(title: &str, ending: &str) -> String {
     let words: Vec<String> = title
         .split(|letter: char| !letter.is_alphanumeric())
         .filter(|word| !word.is_empty())
-        .map(str::to_lowercase)
+        .map(str::to_ascii_lowercase)
         .take(8)
         .collect();
     let name: String = words.join("-").chars().take(60).collect();

@@ -1,6 +1,7 @@
 //! The choices behind what was found, as menus: the law, where its intervals come from, how sure
 //! they are, and how numbers are shown.
 
+use kinetics_core::numeric::decimals::read_decimal;
 use kinetics_core::study::LawChoice;
 use kinetics_core::table::{Decimal, Form};
 use kinetics_core::temperature_law::{Scatter, ScatterChoice};
@@ -102,7 +103,7 @@ fn level(sheet: Sheet) -> Part {
     };
     menu("Level of the intervals", offer, move |code| {
         sheet.change("", |study| {
-            study.assumed.level = code.parse().ok().filter(|level| *level != USUAL_LEVEL);
+            study.assumed.level = read_decimal(code).filter(|level| *level != USUAL_LEVEL);
         });
     })
 }

@@ -124,7 +124,7 @@ fn undo_by_key(sheet: Sheet, event: &Event) {
     if !is_command || is_field {
         return;
     }
-    match (key.key().to_lowercase().as_str(), key.shift_key()) {
+    match (key.key().to_ascii_lowercase().as_str(), key.shift_key()) {
         ("z", false) => sheet.undo(),
         ("z", true) | ("y", _) => sheet.redo(),
         _ => return,

@@ -4,8 +4,6 @@
 mod courses;
 mod render;
 
-use sha2::{Digest, Sha256};
-
 use self::render::Part;
 use super::document::Study;
 use super::findings::{Estimate, Findings, LawFindings, Record};
@@ -22,7 +20,7 @@ An interval covers the scatter it names, not a change of the reaction outside th
 
 /// Everything but the text, which the findings themselves fill.
 pub(super) fn empty(measured_text: &str) -> Record {
-    let digest = Sha256::digest(measured_text.as_bytes());
+    let digest = hmac_sha256::Hash::hash(measured_text.as_bytes());
     Record {
         text: String::new(),
         html: String::new(),

@@ -1,5 +1,8 @@
 //! The extent that the head of a column of times names: `t½`, `half-life (d)`, `time to 5 % loss`.
 
+use crate::numeric::decimals::read_decimal;
+use crate::text::lower;
+
 /// Which part is gone at the times of a column.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum NamedExtent {
@@ -30,7 +33,7 @@ const LEFT: [&str; 3] = ["left", "remain", "retained"];
 
 /// The extent in a header, if it names one.
 pub fn named_extent(header: &str) -> Option<NamedExtent> {
-    let lower = header.to_lowercase();
+    let lower = lower(header);
     let squeezed: String =
         lower.chars().filter(|c| !c.is_whitespace() && !"_()[]{}".contains(*c)).collect();
     let bare = squeezed.replace('-', "");
@@ -47,7 +50,7 @@ pub fn named_extent(header: &str) -> Option<NamedExtent> {
         None => {
             let rest = squeezed.strip_prefix('t')?;
             let end = rest.find(|c: char| !c.is_ascii_digit()).unwrap_or(rest.len());
-            rest.get(..end).filter(|digits| digits.len() == 2)?.parse().ok()?
+            rest.get(..end).filter(|digits| digits.len() == 2).and_then(read_decimal)?
         }
     };
     let fraction = percent / 100.0;
@@ -78,7 +81,7 @@ fn number_at_end(text: &str) -> Option<f64> {
         .take_while(|(_, c)| c.is_ascii_digit() || matches!(c, '.' | ','))
         .last()
         .map(|(at, _)| at)?;
-    text.get(start..)?.replace(',', ".").parse().ok()
+    read_decimal(&text.get(start..)?.replace(',', "."))
 }
 
 #[cfg(test)]

@@ -19,6 +19,7 @@ use units::{Family, Measure, measure};
 use words::{Named, letter, named};
 
 use super::{ErrorKind, Role, SignalIs};
+use crate::numeric::decimals::read_decimal;
 use crate::quantity::Quantity;
 
 /// What a header says; everything may be missing.
@@ -239,7 +240,7 @@ fn fit(name: &str, unit: &str) -> Option<Reading> {
     let core = taken.as_ref().map_or(name, |factor| factor.name.as_str()).trim();
     let spoken = named(core).or_else(|| letter(core));
     // "7 d" is a time, no column of times.
-    if core.parse::<f64>().is_ok() {
+    if read_decimal(core).is_some() {
         return None;
     }
     let reading = match spoken {

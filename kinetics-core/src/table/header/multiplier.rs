@@ -4,6 +4,8 @@
 //! so that k is the number times 10⁻⁴; but many who write `k × 10⁴` mean the
 //! opposite. How it was taken is therefore always said.
 
+use crate::numeric::decimals::read_decimal;
+
 /// A name without its factor, and the factor.
 #[derive(Clone, Debug, PartialEq)]
 pub(super) struct Factor {
@@ -66,13 +68,13 @@ pub(super) fn leading_power(text: &str) -> Option<(f64, &str)> {
     if number == "10"
         && let Some((power, rest)) = exponent(rest)
     {
-        return Some((format!("1e{power}").parse().ok()?, rest));
+        return Some((read_decimal(&format!("1e{power}"))?, rest));
     }
     if let Some(power) = rest.strip_prefix(['e', 'E'])
         && number == "1"
         && let Some((power, rest)) = signed_integer(power)
     {
-        return Some((format!("1e{power}").parse().ok()?, rest));
+        return Some((read_decimal(&format!("1e{power}"))?, rest));
     }
     let round = number.len() <= 9
         && number.starts_with('1')
@@ -82,8 +84,8 @@ pub(super) fn leading_power(text: &str) -> Option<(f64, &str)> {
         decimals.get(end..)?.strip_prefix('1').map(|rest| (end, rest))
     });
     match decimal {
-        Some((zeros, rest)) => Some((format!("1e-{}", zeros + 1).parse().ok()?, rest)),
-        None => round.then(|| Some((number.parse().ok()?, rest)))?,
+        Some((zeros, rest)) => Some((read_decimal(&format!("1e-{}", zeros + 1))?, rest)),
+        None => round.then(|| Some((read_decimal(number)?, rest)))?,
     }
 }
 

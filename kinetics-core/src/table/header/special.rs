@@ -1,7 +1,9 @@
 //! Headers with a shape of their own: `1000/T`, `ln(k/s⁻¹)`, `50 °C`.
 
 use super::multiplier::leading_power;
+use crate::numeric::decimals::read_decimal;
 use crate::quantity::Quantity;
+use crate::text::lower;
 use crate::units::{RateUnit, TemperatureUnit, inverse_kelvin_scale};
 
 /// What stands above a column of inverse temperatures.
@@ -14,7 +16,7 @@ pub(super) struct Inverse {
 /// `1/T`, `1000/T (K⁻¹)`, `10³ K/T`, `1/T × 10³`, `1/T / 10⁻³ K⁻¹`, `inverse temperature`.
 pub(super) fn inverse(header: &str) -> Option<Inverse> {
     let squeezed: String = header.chars().filter(|c| !c.is_whitespace()).collect();
-    let lower = squeezed.to_lowercase();
+    let lower = lower(&squeezed);
     for word in [
         "inversetemperature",
         "reciprocaltemperature",
@@ -88,7 +90,7 @@ pub(super) struct Logarithm {
 /// `ln k`, `ln(k/s⁻¹)`, `log10 (k · h)`, `lg k, k in 1/h`.
 pub(super) fn logarithm(header: &str) -> Option<Logarithm> {
     let header = header.trim();
-    let lower = header.to_lowercase();
+    let lower = lower(header);
     if lower.len() != header.len() {
         return None;
     }
@@ -179,7 +181,7 @@ pub(super) fn temperature(header: &str) -> Option<(Quantity, String)> {
         let number = rest.get(..length)?.trim_end_matches(['.', ',']);
         let after = rest.get(number.len()..)?;
         if let Some((unit, unit_length)) = leading_degree(after)
-            && let Ok(value) = number.replace(',', ".").parse::<f64>()
+            && let Some(value) = read_decimal(&number.replace(',', "."))
         {
             let negative = header.get(..start)?.ends_with(['-', '−', '–']);
             let sign_start = if negative {

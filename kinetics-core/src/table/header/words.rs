@@ -2,6 +2,7 @@
 //! German and French where they can mean nothing else.
 
 use crate::table::{ErrorKind, Role, SignalIs};
+use crate::text::lower;
 
 /// What the words of a header say.
 #[derive(Clone, Debug, PartialEq)]
@@ -91,7 +92,7 @@ const LIMITS_REFUSED: &str =
 /// What the words of a name say about its column; none if they say nothing.
 pub(super) fn named(name: &str) -> Option<Named> {
     let name = name.trim();
-    let lower = name.to_lowercase();
+    let lower = lower(name);
     if name.is_empty() || name.chars().count() > 120 {
         return None;
     }

@@ -4,6 +4,7 @@
 use std::cell::RefCell;
 use std::rc::Rc;
 
+use kinetics_core::numeric::decimals::read_decimal;
 use kinetics_core::quantity::Quantity;
 use kinetics_core::question::{BlankKind, Question};
 use kinetics_core::study::{Evaluation, Study};
@@ -196,6 +197,6 @@ fn rounded(quantity: Quantity, step: f64) -> Quantity {
     // Back through decimals, so that 0.1 steps do not show binary dust.
     let value = (quantity.value / step).round() * step;
     let decimals = (-step.log10().floor()).clamp(0.0, 12.0) as usize;
-    let tidy = format!("{value:.decimals$}").parse().unwrap_or(value);
+    let tidy = read_decimal(&format!("{value:.decimals$}")).unwrap_or(value);
     Quantity { value: tidy, ..quantity }
 }

@@ -1,6 +1,7 @@
 //! "Read as rate constants with a decimal point, of first order": the choices about the whole
 //! table, as menus in a sentence.
 
+use kinetics_core::numeric::decimals::read_decimal;
 use kinetics_core::rate_law::Order;
 use kinetics_core::study::{HeatData, OrderChoice};
 use kinetics_core::table::{Decimal, ErrorKind, Form, Role};
@@ -153,7 +154,7 @@ fn order(sheet: Sheet) -> Part {
         (choices, stated.map(|order| order.to_string()).unwrap_or_default())
     };
     menu("Order of reaction", offer, move |code| {
-        let order = code.parse().ok().map(OrderChoice::Number);
+        let order = read_decimal(code).map(OrderChoice::Number);
         sheet.change("", |study| study.assumed.order = order);
     })
 }
