@@ -138,7 +138,7 @@ fn the_first_opening_shows_an_evaluated_example() {
         page.text_with(".welcome", "invented example").await;
         page.text_with(ENERGY, "90\u{a0}kJ/mol").await;
         page.text_with(&answer(1), "About 44\u{a0}h").await;
-        page.text_with(&answer(2), "At most 2.7\u{a0}h").await;
+        page.text_with(&answer(2), "At most 2.6\u{a0}h").await;
         page.text_with(&answer(3), "About 86.6\u{a0}°C").await;
         page.text_with(".record", "invented example").await;
         assert_eq!(page.count(".use input:checked").await, 6);
@@ -313,14 +313,14 @@ fn questions_move_and_go() {
     with_page(async |page| {
         page.open("").await;
         page.click("#down-0").await;
-        page.text_with(&answer(1), "At most 2.7\u{a0}h").await;
+        page.text_with(&answer(1), "At most 2.6\u{a0}h").await;
         page.text_with(&answer(2), "About 44\u{a0}h").await;
         page.click("button[aria-label='remove, question 1']").await;
         page.text_with(&answer(1), "About 44\u{a0}h").await;
         assert_eq!(page.count(".asked > li").await, 2);
         page.focused("remove-0").await;
         page.press("Undo").await;
-        page.text_with(&answer(1), "At most 2.7\u{a0}h").await;
+        page.text_with(&answer(1), "At most 2.6\u{a0}h").await;
     });
 }
 

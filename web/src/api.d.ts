@@ -194,14 +194,43 @@ export interface Law {
   pre_exponential_factor: Estimate;
   enthalpy_of_activation: Estimate;
   entropy_of_activation: Estimate | null;
+  /** Log-linear law: z in K, and D at the reference temperature in s for first order. */
+  z_value?: Estimate;
+  d_value?: Estimate;
   /** Of (ln k at the reference temperature, activation energy in J/mol). */
   covariance: number[][] | null;
   degrees_of_freedom: number | null;
+  /** How many groups the degrees of freedom count, where runs share one. */
+  groups?: number;
   scatter: Scatter;
   run_to_run_sd: number | null;
   mixture: unknown[];
   chi_squared: number | null;
   chi_squared_p: number | null;
+  [key: string]: unknown;
+}
+
+/** A run; what tells of a curve is there for form `progress` alone. */
+export interface Run {
+  label: string;
+  row: number;
+  temperature_kelvin: number;
+  rate_constant: Estimate;
+  order: number | null;
+  /** Residual of ln k. */
+  ln_residual: number | null;
+  group?: string;
+  points?: number;
+  residual_sd?: number | null;
+  termination?: string;
+  start?: number;
+  end?: number;
+  /** k times the power of the initial concentration that makes it 1/s. */
+  reduced_rate_constant?: number;
+  extent_followed?: number;
+  times_seconds?: number[];
+  signals?: number[];
+  residuals?: number[];
   [key: string]: unknown;
 }
 
@@ -255,16 +284,16 @@ export interface Findings {
     [key: string]: unknown;
   };
   problems: Problem[];
-  runs: {
-    label: string;
-    temperature_kelvin: number;
-    rate_constant: Estimate;
-    order: number | null;
-    [key: string]: unknown;
-  }[];
+  runs: Run[];
   law: Law | null;
   one_stage: Law | null;
-  rivals: { kind: TemperatureLaw; order: number | null; delta_aicc: number; weight: number }[];
+  /** Unranked where too few runs tell the laws apart. */
+  rivals: {
+    kind: TemperatureLaw;
+    order: number | null;
+    delta_aicc: number | null;
+    weight: number | null;
+  }[];
   remarks: Remark[];
   answers: Answer[];
   record: { text: string; citations: Citation[]; version: string; input_sha256: string };

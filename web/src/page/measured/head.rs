@@ -1,6 +1,7 @@
 //! The heads of the columns: what each holds and in which unit, as the reader decided or the
 //! user chose.
 
+use std::cell::RefCell;
 use std::rc::Rc;
 
 use kinetics_core::numeric::sorting::sort_by;
@@ -21,15 +22,17 @@ pub fn head(sheet: Sheet, at: usize, columns: Rc<dyn Fn() -> Rc<Vec<Column>>>) -
         offer(&column, |column| (roles(column), column.role.code().to_owned())),
         move |code| sheet.change("", |study| choose_role(study, at, code)),
     );
+    let units: Rc<dyn Fn() -> Offer> =
+        Rc::new(offer(&column, |column| (units(column), column.unit.clone().unwrap_or_default())));
+    let offered = Rc::clone(&units);
     let unit = menu(
         &format!("Unit of column {}", at + 1),
-        offer(&column, |column| (units(column), column.unit.clone().unwrap_or_default())),
+        move || offered(),
         move |unit| sheet.change("", |study| choose_unit(study, at, unit)),
     );
     let factor_of = Rc::clone(&column);
-    let no_units = Rc::clone(&column);
     let factor = move || factor_of().as_ref().map(factor).unwrap_or_default();
-    let no_units = move || no_units().is_none_or(|column| units(&column).is_empty());
+    let no_units = move || units().0.is_empty();
     part("th")
         .with("scope", "col")
         .follows("title", move || name().map(|column| column.name))
@@ -45,10 +48,21 @@ pub fn head(sheet: Sheet, at: usize, columns: Rc<dyn Fn() -> Rc<Vec<Column>>>) -
 /// The column of a head, as it is now.
 type Of = Rc<dyn Fn() -> Option<Column>>;
 
-/// What a menu of the head offers.
+/// What a menu of the head offers, worked out when the column changes: units are read from text.
 fn offer(column: &Of, of: fn(&Column) -> Offer) -> impl Fn() -> Offer + 'static {
     let column = Rc::clone(column);
-    move || column().as_ref().map(of).unwrap_or_default()
+    let known: RefCell<Option<(Column, Offer)>> = RefCell::new(None);
+    move || {
+        let Some(now) = column() else { return Offer::default() };
+        if let Some((then, offered)) = known.borrow().as_ref()
+            && *then == now
+        {
+            return offered.clone();
+        }
+        let offered = of(&now);
+        known.replace(Some((now, offered.clone())));
+        offered
+    }
 }
 
 /// A place of the head that tells whether what stands there was read or chosen.
