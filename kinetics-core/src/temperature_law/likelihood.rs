@@ -4,6 +4,7 @@
 use super::scatter::Problem;
 use super::{Scatter, TemperatureLaw};
 use crate::measurements::{Observation, independent_runs};
+use crate::numeric::roots::secant_crossing;
 
 /// AICc of a law fitted to ln k of the runs under a scatter; none where it is undefined
 /// (n ≤ K + 1), where the law cannot be fitted, or where nothing is left to explain.
@@ -45,8 +46,14 @@ fn deviance(problem: &Problem, sd: &[f64], tau: f64) -> Option<f64> {
     Some(normalisation + fit.weighted_sum_of_squares)
 }
 
+/// With more runs than this the deviance has one minimum, and each look at it takes a while.
+const MANY_RUNS: usize = 1000;
+
 /// The least of [`deviance`] over τ ≥ 0: the best of a ladder, then halved steps about it.
 fn least_deviance(problem: &Problem, sd: &[f64]) -> Option<f64> {
+    if sd.len() > MANY_RUNS {
+        return deviance(problem, sd, likeliest_tau(problem, sd)?);
+    }
     const LADDER_STEP: f64 = 0.5;
     const LADDER: i32 = 40;
     const FINEST_STEP: f64 = 1e-4;
@@ -73,6 +80,26 @@ fn least_deviance(problem: &Problem, sd: &[f64]) -> Option<f64> {
         step *= 0.5;
     }
     Some(best)
+}
+
+/// Where the deviance is flat: its change with τ² is Σ w − Σ w² r², as the fit minimises Σ w r².
+fn likeliest_tau(problem: &Problem, sd: &[f64]) -> Option<f64> {
+    let reference = problem.reference(&problem.weights(sd, 0.0));
+    let rising = |tau: f64| {
+        let weights = problem.weights(sd, tau);
+        let fit = problem.solve(reference, &weights).ok()?;
+        let pull: f64 = weights.iter().zip(&fit.residuals).map(|(w, r)| w * w * r * r).sum();
+        Some(1.0 - pull / weights.iter().sum::<f64>())
+    };
+    if rising(0.0)? >= 0.0 {
+        return Some(0.0);
+    }
+    let (mut below, mut above) = (0.0, sd.iter().copied().fold(f64::INFINITY, f64::min));
+    while rising(above)? < 0.0 {
+        below = above;
+        above *= 2.0;
+    }
+    Some(secant_crossing(|tau| rising(tau).unwrap_or(f64::NAN), 0.0, below, above, 1e-9))
 }
 
 #[cfg(test)]
@@ -119,5 +146,27 @@ mod tests {
             aicc(TemperatureLaw::Arrhenius, &runs(None)[..5], Scatter::FromResiduals).is_some()
         );
         assert_eq!(aicc(TemperatureLaw::Curved, &runs(None)[..5], Scatter::FromResiduals), None);
+    }
+
+    #[test]
+    fn many_runs_are_likeliest_where_the_deviance_is_least() {
+        let run = |i: u32| {
+            let t = 320.0 + 0.03 * f64::from(i);
+            let off = f64::from((i * 37) % 101) / 101.0 - 0.5;
+            Observation::new(
+                Kelvin(t),
+                30.0 - 11_000.0 / t + 0.3 * off,
+                Some(0.02 + 1e-5 * f64::from(i)),
+            )
+        };
+        let runs: Vec<Observation> = (0..1200).map(run).collect();
+        let problem = Problem::new(TemperatureLaw::Arrhenius, &runs).unwrap();
+        let sd = problem.stated_sd(&runs).unwrap();
+        let tau = likeliest_tau(&problem, &sd).unwrap();
+        let least = least_deviance(&problem, &sd).unwrap();
+        assert!(tau > 0.0);
+        for beside in [0.99 * tau, 1.01 * tau, 0.0] {
+            assert!(deviance(&problem, &sd, beside).unwrap() > least);
+        }
     }
 }

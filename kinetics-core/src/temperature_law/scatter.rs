@@ -5,6 +5,8 @@
 //! *As stated plus run-to-run*: Var(ln kᵢ) = sᵢ² + τ² with τ unknown, averaged over what the
 //! data say of it (`averaged.rs`).
 
+use std::cell::RefCell;
+
 use nalgebra::DMatrix;
 use serde::{Deserialize, Serialize};
 use thiserror::Error;
@@ -155,6 +157,15 @@ pub(super) struct Problem {
     /// How much each run counts as one of its own.
     pub(super) shares: Vec<f64>,
     pub(super) degrees_of_freedom: usize,
+    /// The last design, as the same is solved with many weights.
+    designed: RefCell<Option<Design>>,
+}
+
+/// The law at each run, about a reference temperature.
+struct Design {
+    reference: Kelvin,
+    matrix: DMatrix<f64>,
+    observed: Vec<f64>,
 }
 
 impl Problem {
@@ -175,6 +186,7 @@ impl Problem {
             ln_rates: observations.iter().map(|o| o.ln_rate).collect(),
             shares: observations.iter().map(|o| o.share).collect(),
             degrees_of_freedom: independent_runs(observations).saturating_sub(needed),
+            designed: RefCell::default(),
         })
     }
 
@@ -196,19 +208,31 @@ impl Problem {
     }
 
     pub(super) fn solve(&self, reference: Kelvin, weights: &[f64]) -> Result<LinearFit, LawError> {
+        let mut designed = self.designed.borrow_mut();
+        let designed = match &mut *designed {
+            Some(designed) if designed.reference == reference => designed,
+            stale => stale.insert(self.design(reference)),
+        };
+        least_squares::fit(&designed.matrix, &designed.observed, weights).map_err(|error| {
+            match error {
+                LeastSquaresError::TooFewRows | LeastSquaresError::RankDeficient => {
+                    LawError::TooFewTemperatures { found: 1, needed: self.law.parameters() }
+                }
+                LeastSquaresError::NotFinite => LawError::NotComputable,
+            }
+        })
+    }
+
+    fn design(&self, reference: Kelvin) -> Design {
         let contrasts: Vec<_> =
             self.temperatures.iter().map(|t| self.law.ln_rate(*t, reference)).collect();
-        let design = DMatrix::from_fn(contrasts.len(), self.law.parameters(), |row, column| {
-            contrasts[row].coefficients[column]
-        });
-        let observed: Vec<f64> =
-            self.ln_rates.iter().zip(&contrasts).map(|(y, c)| y - c.constant).collect();
-        least_squares::fit(&design, &observed, weights).map_err(|error| match error {
-            LeastSquaresError::TooFewRows | LeastSquaresError::RankDeficient => {
-                LawError::TooFewTemperatures { found: 1, needed: self.law.parameters() }
-            }
-            LeastSquaresError::NotFinite => LawError::NotComputable,
-        })
+        Design {
+            reference,
+            matrix: DMatrix::from_fn(contrasts.len(), self.law.parameters(), |row, column| {
+                contrasts[row].coefficients[column]
+            }),
+            observed: self.ln_rates.iter().zip(&contrasts).map(|(y, c)| y - c.constant).collect(),
+        }
     }
 
     pub(super) fn fitted(&self, reference: Kelvin, weights: Vec<f64>, fit: LinearFit) -> FittedLaw {
