@@ -209,3 +209,15 @@ fn a_list_of_places_is_a_table_and_the_record_has_the_curve() {
     assert!(text.contains("duration") && text.contains("Ind. Eng. Chem. Res. 33, 62"));
     assert!(!text.contains("[{"));
 }
+
+/// Runs that scatter by a hundredth learn nothing from one that errs by a twentieth.
+#[test]
+fn a_run_that_would_widen_the_answer_is_not_recommended() {
+    let text = "T/°C\tk, 1/d\n5\t0.00021\n15\t0.00085\n25\t0.0031\n32\t0.0072\n40\t0.0181\n";
+    let exact = text.replace("0.00085", "0.000836").replace("0.0072", "0.00722");
+    let coarse = json!({"relative_error": percent(50.0), "highest": celsius(80.0)});
+    let reason = refusal(&answer(&exact, slow(), next(coarse)));
+    assert!(reason.starts_with("No run more at these temperatures would narrow"), "{reason}");
+    let fine = answer(&exact, slow(), next(json!({"highest": celsius(80.0)})));
+    assert!(detail(&fine, "after") < detail(&fine, "now"), "{}", fine.sentence);
+}

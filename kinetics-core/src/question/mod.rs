@@ -202,11 +202,11 @@ fn under(
     })
 }
 
-/// A question with the examples of its blanks filled in, as an entry of `asked`.
+/// A question with the examples of the blanks that it needs filled in, as an entry of `asked`.
 pub fn example(question: &Question) -> Map<String, Value> {
     let mut asked = Map::new();
     asked.insert("question".into(), question.code.into());
-    for blank in question.blanks {
+    for blank in question.blanks.iter().filter(|blank| !blank.optional) {
         if let Ok([quantity]) = parse_blank(blank.example, blank.kind, '.').as_deref() {
             asked.insert(blank.name.into(), blank.kind.value(quantity));
         }
@@ -228,7 +228,8 @@ mod tests {
                 .collect();
             let declared: Vec<&str> = question.blanks.iter().map(|b| b.name).collect();
             assert_eq!(blanks, declared, "{}", question.code);
-            assert_eq!(example(question).len(), question.blanks.len() + 1, "{}", question.code);
+            let needed = question.blanks.iter().filter(|blank| !blank.optional).count();
+            assert_eq!(example(question).len(), needed + 1, "{}", question.code);
         }
     }
 

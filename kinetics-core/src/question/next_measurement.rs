@@ -72,6 +72,16 @@ fn answer(blanks: &Blanks, basis: &Basis) -> Result<Answer, Refusal> {
         })
         .collect();
     let best = best(&prospects, within, basis)?;
+    if aim.half_width(&basis.law).is_some_and(|now| best.half_width >= now) {
+        let error = basis.display.percent(libm::sqrt(libm::expm1(sd * sd)));
+        return Err(Refusal::new(
+            format!(
+                "No run more at these temperatures would narrow that answer: reckoned with an \
+                 error of {error}, it would scatter more than the runs there are."
+            ),
+            "State the error that a run has, or allow temperatures nearer to what is asked.",
+        ));
+    }
     Ok(recommendation(best, &prospects, &aim, sd, basis))
 }
 

@@ -11,7 +11,7 @@ use crate::answer::{Basis, InitialConcentration, Refusal};
 use crate::grounds::Support;
 use crate::measurements::{Grouped, Rates};
 use crate::quantity::Quantity;
-use crate::rate_law::Order;
+use crate::rate_law::{ExtentError, Order};
 use crate::remark::{Remark, Severity};
 use crate::rivals::Rival;
 use crate::table::{Form, NamedExtent};
@@ -178,9 +178,15 @@ fn times_to_rates(
             return Err(Refusal::new(reason, needs));
         }
     };
-    let ln_theta = order
-        .ln_theta(fraction, initial.map(|c| c.value))
-        .map_err(|error| Refusal::new(format!("The times give no rate: {error}."), needs))?;
+    let ln_theta = order.ln_theta(fraction, initial.map(|c| c.value)).map_err(|error| {
+        let remedy = match error {
+            ExtentError::NeedsInitialConcentration => {
+                "State the initial concentration below the table of what was measured."
+            }
+            _ => needs,
+        };
+        Refusal::new(format!("The times give no rate: {error}."), remedy)
+    })?;
     let kind = initial.map_or(ConcentrationKind::Molar, |c| c.kind);
     rates.shift(ln_theta, RateUnit::for_order(order.value(), kind.base(), TimeUnit::Second));
     Ok(choice)

@@ -71,7 +71,14 @@ fn gap(sheet: Sheet, at: usize, gap: &'static Blank, complaint: &Complaint) -> P
         let asked = study.asked.get(at);
         asked.map(|asked| filled(asked, gap, sheet.decimal())).unwrap_or_default()
     };
-    let unit = Rc::new(RefCell::new(unit_of(&read(gap.example, gap.kind, '.', ""))));
+    // What a bare number gets: the unit that stands in the gap, else the usual one.
+    let usual = move || match gap.kind {
+        BlankKind::Temperature => {
+            sheet.study().display.temperature.unwrap_or_default().symbol().to_owned()
+        }
+        _ => unit_of(&read(gap.example, gap.kind, '.', "")),
+    };
+    let unit = Rc::new(RefCell::new(usual()));
     let last = Rc::clone(&unit);
     let told = complaint.clone();
     follow(move || {
@@ -84,9 +91,8 @@ fn gap(sheet: Sheet, at: usize, gap: &'static Blank, complaint: &Complaint) -> P
             }
             _ => None,
         });
-        if let Some(quantity) = filled.and_then(|filled| gap.kind.quantities(filled).pop()) {
-            last.replace(quantity.unit);
-        }
+        let stands = filled.and_then(|filled| gap.kind.quantities(filled).pop());
+        last.replace(stands.map_or_else(usual, |quantity| quantity.unit));
     });
     let take = move |text: &str| {
         let mut outcome = Ok(());
@@ -127,7 +133,16 @@ fn read(text: &str, kind: BlankKind, decimal: char, unit: &str) -> Result<Vec<Qu
     if numbers.chars().all(is_bare)
         && let Ok(read) = parse_blank(&format!("{numbers} {unit}"), kind, decimal)
     {
-        return Ok(read);
+        let part =
+            read.iter().find(|part| part.unit == "%" && part.value > 0.0 && part.value < 1.0);
+        return match part {
+            // 0.98 may be a fraction, and then the answer would be hundreds of times off.
+            Some(part) => {
+                let (small, large) = (part.value, shown_percent(100.0 * part.value));
+                Err(format!("Found “{text}”: write {large} % for the part {small}, or {small} %."))
+            }
+            None => Ok(read),
+        };
     }
     parse_blank(text, kind, decimal).or_else(|said| {
         if kind != BlankKind::Temperature {
@@ -136,6 +151,11 @@ fn read(text: &str, kind: BlankKind, decimal: char, unit: &str) -> Result<Vec<Qu
         let large = text.to_ascii_uppercase().replace('C', "°C").replace("°°", "°");
         parse_blank(&large, kind, decimal).map_err(|_| said)
     })
+}
+
+/// Without the dust of binary fractions.
+fn shown_percent(percent: f64) -> f64 {
+    (1e9 * percent).round() / 1e9
 }
 
 /// The unit of the last of some quantities.
@@ -214,4 +234,31 @@ fn arrange(sheet: Sheet, at: usize) -> Part {
             .is("disabled", is_last),
         )
         .add(named("remove", "remove", format!("remove, question {number}"), Box::new(remove)))
+}
+
+#[cfg(test)]
+#[allow(clippy::unwrap_used)]
+mod tests {
+    use super::*;
+
+    fn values(text: &str, kind: BlankKind, unit: &str) -> Result<Vec<(f64, String)>, String> {
+        let read = read(text, kind, '.', unit)?;
+        Ok(read.into_iter().map(|quantity| (quantity.value, quantity.unit)).collect())
+    }
+
+    #[test]
+    fn bare_numbers_keep_the_unit_that_stood_there() {
+        let celsius = |value: f64| (value, "°C".to_owned());
+        let read = values("5, 25, 30", BlankKind::Temperature, "°C");
+        assert_eq!(read, Ok(vec![celsius(5.0), celsius(25.0), celsius(30.0)]));
+        assert_eq!(values("25 c", BlankKind::Temperature, "K"), Ok(vec![celsius(25.0)]));
+    }
+
+    #[test]
+    fn a_bare_part_below_one_may_be_a_fraction_and_is_asked_about() {
+        let said = values("0.98", BlankKind::Part, "%").unwrap_err();
+        assert!(said.contains("write 98 % for the part 0.98, or 0.98 %"), "{said}");
+        assert_eq!(values("0.98 %", BlankKind::Part, "%"), Ok(vec![(0.98, "%".into())]));
+        assert_eq!(values("98", BlankKind::Part, "%"), Ok(vec![(98.0, "%".into())]));
+    }
 }

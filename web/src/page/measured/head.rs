@@ -28,7 +28,19 @@ pub fn head(sheet: Sheet, at: usize, columns: Rc<dyn Fn() -> Rc<Vec<Column>>>) -
     let unit = menu(
         &format!("Unit of column {}", at + 1),
         move || offered(),
-        move |unit| sheet.change("", |study| choose_unit(study, at, unit)),
+        move |unit| {
+            let table = &sheet.prepared().table.columns;
+            sheet.change("", |study| {
+                choose_unit(study, at, unit);
+                // Errors in the unit of their values stay in it.
+                for (error, column) in table.iter().enumerate() {
+                    let shares = column.unit == table.get(at).and_then(|own| own.unit.clone());
+                    if column.error_of == Some(at) && shares {
+                        choose_unit(study, error, unit);
+                    }
+                }
+            });
+        },
     );
     let factor_of = Rc::clone(&column);
     let factor = move || factor_of().as_ref().map(factor).unwrap_or_default();
@@ -131,12 +143,14 @@ fn symbol(role: Role, unit: &str) -> String {
 }
 
 /// "10⁻³ ·" before the unit, where the heading states a factor.
+/// What stands before a column's unit: the temperature of its run, and its factor.
 fn factor(column: &Column) -> String {
+    let run = column.run_temperature.as_ref().map(|t| format!("{t}, ")).unwrap_or_default();
     if column.multiplier == 1.0 {
-        return String::new();
+        return run;
     }
     let shown = kinetics_core::wording::factor(column.multiplier);
-    format!("{shown}\u{a0}· ")
+    format!("{run}{shown}\u{a0}· ")
 }
 
 fn choose_role(study: &mut Study, at: usize, code: &str) {
