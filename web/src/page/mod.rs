@@ -102,16 +102,10 @@ fn build(place: Element, fragment: &Fragment, linked: Option<Result<Study, Strin
 
 fn footer() -> Part {
     let version = crate::version();
-    part("footer")
-        .class("foot")
-        .add(part("p").text(
-            "Results are estimates for screening. Decisions that can hurt someone rest on \
-             calorimetry, on local codes and on licensed practice.",
-        ))
-        .add(part("p").text(&format!(
-            "Kelvinclock {version}. It computes in this page: no server, no network, nothing is \
+    part("footer").class("foot").add(part("p").text(&format!(
+        "Kelvinclock {version}. It computes in this page: no server, no network, nothing is \
              sent anywhere."
-        )))
+    )))
 }
 
 /// Undo and redo by keys, outside of fields, which have their own.

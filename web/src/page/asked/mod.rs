@@ -36,10 +36,15 @@ pub fn section(sheet: Sheet, surroundings: State<Surroundings>) -> Part {
         .add(
             part("div")
                 .class("beside")
-                .add(part("div").add(list).add(ask(sheet)))
+                .add(part("div").add(list).add(ask(sheet)).add(part("p").class("care").text(CARE)))
                 .add(time_map::figure(sheet, surroundings)),
         )
 }
+
+/// What every answer is, beside all of them.
+const CARE: &str = "Answers are estimates for screening. Where one can hurt someone (heat, scale-up, food, \
+                    medicine, storage), decide by calorimetry and real-time data, local codes and \
+                    licensed practice.";
 
 /// The name of the menu's element.
 const ASK_ID: &str = "ask";
