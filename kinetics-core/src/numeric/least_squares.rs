@@ -28,8 +28,6 @@ pub struct LinearFit {
     pub covariance: DMatrix<f64>,
     /// n residuals, observed minus fitted, not weighted.
     pub residuals: Vec<f64>,
-    /// n diagonal elements of the hat matrix of the weighted problem.
-    pub leverages: Vec<f64>,
     /// Σ w r².
     pub weighted_sum_of_squares: f64,
 }
@@ -59,78 +57,110 @@ pub fn fit(
         return Err(LeastSquaresError::NotFinite);
     }
 
-    let lengths: Vec<f64> = design
-        .column_iter()
-        .map(|column| column.iter().zip(weights).map(|(x, w)| w * x * x).sum::<f64>().sqrt())
-        .collect();
+    let columns: Vec<&[f64]> = design.as_slice().chunks_exact(rows).collect();
+    let length = |column: &&[f64]| -> f64 {
+        column.iter().zip(weights).map(|(x, w)| w * x * x).sum::<f64>().sqrt()
+    };
+    let lengths: Vec<f64> = columns.iter().map(length).collect();
     if lengths.contains(&0.0) {
         return Err(LeastSquaresError::RankDeficient);
     }
-    let scaled_row = |row: usize, into: &mut [f64]| {
-        let root_weight = weights[row].sqrt();
-        for (column, entry) in into.iter_mut().enumerate() {
-            *entry = root_weight * design[(row, column)] / lengths[column];
-        }
-        root_weight * observed[row]
-    };
-    let mut triangle = DMatrix::zeros(parameters, parameters);
-    let mut right = DVector::zeros(parameters);
+    let mut triangle = Triangle::new(parameters);
     let mut entries = vec![0.0; parameters];
     for row in 0..rows {
-        let value = scaled_row(row, &mut entries);
-        rotate_in(&mut triangle, &mut right, &mut entries, value);
+        let root_weight = weights[row].sqrt();
+        for ((entry, column), length) in entries.iter_mut().zip(&columns).zip(&lengths) {
+            *entry = root_weight * column[row] / length;
+        }
+        triangle.rotate_in(&mut entries, root_weight * observed[row]);
     }
-    if triangle.diagonal().iter().any(|d| d.abs() < RANK_TOLERANCE) {
-        return Err(LeastSquaresError::RankDeficient);
-    }
-    let inverse = triangle
-        .solve_upper_triangular(&DMatrix::identity(parameters, parameters))
-        .ok_or(LeastSquaresError::RankDeficient)?;
-    let scaled_coefficients = &inverse * right;
-    let coefficients = DVector::from_iterator(
-        parameters,
-        scaled_coefficients.iter().zip(&lengths).map(|(b, l)| b / l),
-    );
+    let inverse = triangle.inverse().ok_or(LeastSquaresError::RankDeficient)?;
+    let coefficients = DVector::from_fn(parameters, |i, _| {
+        let along = |j: usize| inverse[i * parameters + j] * triangle.right[j];
+        (i..parameters).map(along).sum::<f64>() / lengths[i]
+    });
     let covariance = DMatrix::from_fn(parameters, parameters, |i, j| {
-        inverse.row(i).dot(&inverse.row(j)) / (lengths[i] * lengths[j])
+        let along = |k: usize| inverse[i * parameters + k] * inverse[j * parameters + k];
+        (i.max(j)..parameters).map(along).sum::<f64>() / (lengths[i] * lengths[j])
     });
 
-    let fitted = design * &coefficients;
-    let residuals: Vec<f64> = observed.iter().zip(&fitted).map(|(y, f)| y - f).collect();
+    let mut residuals = observed.to_vec();
+    for (column, coefficient) in columns.iter().zip(&coefficients) {
+        for (residual, x) in residuals.iter_mut().zip(*column) {
+            *residual -= coefficient * x;
+        }
+    }
     let weighted_sum_of_squares = residuals.iter().zip(weights).map(|(r, w)| w * r * r).sum();
-    // The rows of Q are those of the design times R⁻¹.
-    let leverages = (0..rows)
-        .map(|row| {
-            scaled_row(row, &mut entries);
-            let along = |column: usize| -> f64 {
-                (0..=column).map(|i| entries[i] * inverse[(i, column)]).sum()
-            };
-            (0..parameters).map(|column| along(column) * along(column)).sum()
-        })
-        .collect();
-    Ok(LinearFit { coefficients, covariance, residuals, leverages, weighted_sum_of_squares })
+    Ok(LinearFit { coefficients, covariance, residuals, weighted_sum_of_squares })
 }
 
-/// Turns one more row of the design, and its value, into the triangle and its right side (Golub &
-/// Van Loan, Matrix Computations, 4th ed. 2013, §5.2.5).
-fn rotate_in(
-    triangle: &mut DMatrix<f64>,
-    right: &mut DVector<f64>,
-    row: &mut [f64],
-    mut value: f64,
-) {
-    for pivot in 0..row.len() {
-        if row[pivot] == 0.0 {
-            continue;
+impl LinearFit {
+    /// The n diagonal elements of the hat matrix, w xᵀ(XᵀWX)⁻¹x, of the design and weights that
+    /// this is the fit of.
+    pub fn leverages(&self, design: &DMatrix<f64>, weights: &[f64]) -> Vec<f64> {
+        let parameters = design.ncols();
+        let leverage = |(row, weight): (usize, &f64)| {
+            let mut sum = 0.0;
+            for i in 0..parameters {
+                for j in 0..parameters {
+                    sum += design[(row, i)] * self.covariance[(i, j)] * design[(row, j)];
+                }
+            }
+            weight * sum
+        };
+        weights.iter().enumerate().map(leverage).collect()
+    }
+}
+
+/// R and Qᵀy as they grow, R row by row.
+struct Triangle {
+    parameters: usize,
+    upper: Vec<f64>,
+    right: Vec<f64>,
+}
+
+impl Triangle {
+    fn new(parameters: usize) -> Self {
+        Self { parameters, upper: vec![0.0; parameters * parameters], right: vec![0.0; parameters] }
+    }
+
+    /// Turns one more row of the design, and its value, into the triangle and its right side (Golub
+    /// & Van Loan, Matrix Computations, 4th ed. 2013, §5.2.5).
+    fn rotate_in(&mut self, row: &mut [f64], mut value: f64) {
+        for pivot in 0..self.parameters {
+            let low = row[pivot];
+            if low == 0.0 {
+                continue;
+            }
+            let above = &mut self.upper[pivot * self.parameters..][..self.parameters];
+            let length = (above[pivot] * above[pivot] + low * low).sqrt();
+            let (cosine, sine) = (above[pivot] / length, low / length);
+            let turn = |up: f64, low: f64| (cosine * up + sine * low, cosine * low - sine * up);
+            for (up, low) in above.iter_mut().zip(row.iter_mut()).skip(pivot) {
+                (*up, *low) = turn(*up, *low);
+            }
+            (self.right[pivot], value) = turn(self.right[pivot], value);
         }
-        let above = triangle[(pivot, pivot)];
-        let length = (above * above + row[pivot] * row[pivot]).sqrt();
-        let (cosine, sine) = (above / length, row[pivot] / length);
-        let turn = |up: f64, low: f64| (cosine * up + sine * low, cosine * low - sine * up);
-        for column in pivot..row.len() {
-            (triangle[(pivot, column)], row[column]) = turn(triangle[(pivot, column)], row[column]);
+    }
+
+    /// R⁻¹, row by row; none where a direction hardly counts.
+    fn inverse(&self) -> Option<Vec<f64>> {
+        let p = self.parameters;
+        let mut inverse = vec![0.0; p * p];
+        for column in 0..p {
+            for row in (0..=column).rev() {
+                let pivot = self.upper[row * p + row];
+                if pivot.abs() < RANK_TOLERANCE {
+                    return None;
+                }
+                let known: f64 = (row + 1..=column)
+                    .map(|k| self.upper[row * p + k] * inverse[k * p + column])
+                    .sum();
+                let unit = if row == column { 1.0 } else { 0.0 };
+                inverse[row * p + column] = (unit - known) / pivot;
+            }
         }
-        (right[pivot], value) = turn(right[pivot], value);
+        Some(inverse)
     }
 }
 
@@ -146,15 +176,16 @@ mod tests {
         assert!((line.coefficients[0] - 1.0).abs() < 1e-13);
         assert!((line.coefficients[1] - 2.0).abs() < 1e-13);
         assert!(line.weighted_sum_of_squares < 1e-25);
-        assert!((line.leverages[0] - 1.0).abs() < 1e-13);
+        assert!((line.leverages(&design, &[1.0, 1.0])[0] - 1.0).abs() < 1e-13);
     }
 
     #[test]
     fn leverages_sum_to_the_number_of_parameters() {
         let x = [1.0, 2.0, 4.0, 7.0, 11.0];
         let design = DMatrix::from_fn(5, 2, |i, j| if j == 0 { 1.0 } else { x[i] });
-        let line = fit(&design, &[1.0, 3.0, 2.0, 5.0, 8.0], &[1.0, 4.0, 1.0, 9.0, 1.0]).unwrap();
-        assert!((line.leverages.iter().sum::<f64>() - 2.0).abs() < 1e-12);
+        let weights = [1.0, 4.0, 1.0, 9.0, 1.0];
+        let line = fit(&design, &[1.0, 3.0, 2.0, 5.0, 8.0], &weights).unwrap();
+        assert!((line.leverages(&design, &weights).iter().sum::<f64>() - 2.0).abs() < 1e-12);
     }
 
     #[test]

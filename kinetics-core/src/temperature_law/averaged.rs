@@ -152,12 +152,14 @@ impl Mixture<'_> {
     /// Spreads what is left for no τ evenly over the τ² that cannot be told from none.
     fn near_none(&mut self, none: &Node) -> Result<(), LawError> {
         let mass = 1.0 - none.larger;
+        let leverages =
+            self.problem.leverages(self.reference, &self.problem.weights(self.sd, 0.0), &none.fit);
         // tr P; a run that the law passes through has no share in it, but for rounding.
         let slope: f64 = self
             .sd
             .iter()
             .zip(&self.problem.shares)
-            .zip(&none.fit.leverages)
+            .zip(&leverages)
             .map(|((s, share), leverage)| (share - leverage).max(0.0) / (s * s))
             .sum();
         let largest = libm::sqrt(libm::sqrt(2.0 * self.degrees) / slope);

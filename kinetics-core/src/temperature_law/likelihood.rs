@@ -34,10 +34,10 @@ fn deviance_from_residuals(problem: &Problem, runs: f64) -> Option<f64> {
     (variance > 0.0).then(|| runs * (libm::log(2.0 * std::f64::consts::PI * variance) + 1.0))
 }
 
-/// −2 ln L with variances s² + τ².
+/// −2 ln L with variances s² + τ². About which temperature the law is written changes nothing.
 fn deviance(problem: &Problem, sd: &[f64], tau: f64) -> Option<f64> {
     let weights = problem.weights(sd, tau);
-    let fit = problem.solve(problem.reference(&weights), &weights).ok()?;
+    let fit = problem.solve(problem.reference(&problem.shares), &weights).ok()?;
     let normalisation: f64 = weights
         .iter()
         .zip(&problem.shares)
@@ -54,8 +54,8 @@ fn least_deviance(problem: &Problem, sd: &[f64]) -> Option<f64> {
     if sd.len() > MANY_RUNS {
         return deviance(problem, sd, likeliest_tau(problem, sd)?);
     }
-    const LADDER_STEP: f64 = 0.5;
-    const LADDER: i32 = 40;
+    const LADDER_STEP: f64 = 1.0;
+    const LADDER: i32 = 20;
     const FINEST_STEP: f64 = 1e-4;
     let smallest = sd.iter().copied().fold(f64::INFINITY, f64::min);
     let at = |ln_tau: f64| deviance(problem, sd, libm::exp(ln_tau));
@@ -84,7 +84,7 @@ fn least_deviance(problem: &Problem, sd: &[f64]) -> Option<f64> {
 
 /// Where the deviance is flat: its change with τ² is Σ w − Σ w² r², as the fit minimises Σ w r².
 fn likeliest_tau(problem: &Problem, sd: &[f64]) -> Option<f64> {
-    let reference = problem.reference(&problem.weights(sd, 0.0));
+    let reference = problem.reference(&problem.shares);
     let rising = |tau: f64| {
         let weights = problem.weights(sd, tau);
         let fit = problem.solve(reference, &weights).ok()?;

@@ -208,18 +208,32 @@ impl Problem {
     }
 
     pub(super) fn solve(&self, reference: Kelvin, weights: &[f64]) -> Result<LinearFit, LawError> {
+        self.with_design(reference, |design| {
+            least_squares::fit(&design.matrix, &design.observed, weights)
+        })
+        .map_err(|error| match error {
+            LeastSquaresError::TooFewRows | LeastSquaresError::RankDeficient => {
+                LawError::TooFewTemperatures { found: 1, needed: self.law.parameters() }
+            }
+            LeastSquaresError::NotFinite => LawError::NotComputable,
+        })
+    }
+
+    /// Diagonal of the hat matrix of a fit with these weights.
+    pub(super) fn leverages(
+        &self,
+        reference: Kelvin,
+        weights: &[f64],
+        fit: &LinearFit,
+    ) -> Vec<f64> {
+        self.with_design(reference, |design| fit.leverages(&design.matrix, weights))
+    }
+
+    fn with_design<T>(&self, reference: Kelvin, look: impl FnOnce(&Design) -> T) -> T {
         let mut designed = self.designed.borrow_mut();
-        let designed = match &mut *designed {
+        look(match &mut *designed {
             Some(designed) if designed.reference == reference => designed,
             stale => stale.insert(self.design(reference)),
-        };
-        least_squares::fit(&designed.matrix, &designed.observed, weights).map_err(|error| {
-            match error {
-                LeastSquaresError::TooFewRows | LeastSquaresError::RankDeficient => {
-                    LawError::TooFewTemperatures { found: 1, needed: self.law.parameters() }
-                }
-                LeastSquaresError::NotFinite => LawError::NotComputable,
-            }
         })
     }
 
@@ -236,6 +250,7 @@ impl Problem {
     }
 
     pub(super) fn fitted(&self, reference: Kelvin, weights: Vec<f64>, fit: LinearFit) -> FittedLaw {
+        let leverages = self.leverages(reference, &weights, &fit);
         FittedLaw {
             law: self.law,
             reference,
@@ -249,7 +264,7 @@ impl Problem {
             chi_squared: None,
             residuals: fit.residuals,
             weights,
-            leverages: fit.leverages,
+            leverages,
             runs: Vec::new(),
             settings: Settings::default(),
         }
