@@ -1,5 +1,7 @@
 //! A drawing onto a canvas, sharp on every screen.
 
+use std::cell::Cell;
+
 use wasm_bindgen::{JsCast, JsValue};
 use web_sys::{CanvasRenderingContext2d, HtmlCanvasElement};
 
@@ -39,7 +41,7 @@ pub fn paint(
     let across = f64::from(columns) / scene.width;
     let down = f64::from(rows) / scene.height;
     context.set_transform(across, 0.0, 0.0, down, 0.0, 0.0)?;
-    let painter = Painter { context: &context, palette, ratio: across };
+    let painter = Painter { context: &context, palette, ratio: across, font: Cell::default() };
     painter.rectangle(scene.area(), Role::Paper);
     painter.items(scene.layer.items())
 }
@@ -57,6 +59,8 @@ struct Painter<'a> {
     context: &'a CanvasRenderingContext2d,
     palette: &'a Palette,
     ratio: f64,
+    /// Weight and size of the font in use: a browser takes long to read one, the same or not.
+    font: Cell<Option<(u16, f64)>>,
 }
 
 impl Painter<'_> {
@@ -169,11 +173,10 @@ impl Painter<'_> {
 
     fn text(&self, text: &Text) -> Result<(), JsValue> {
         let colour = self.palette.words(text.role);
-        self.context.set_font(&format!(
-            "{} {}px {FONT_FAMILY}",
-            text.font.weight(),
-            text.font.size()
-        ));
+        let (weight, size) = (text.font.weight(), text.font.size());
+        if self.font.replace(Some((weight, size))) != Some((weight, size)) {
+            self.context.set_font(&format!("{weight} {size}px {FONT_FAMILY}"));
+        }
         self.context.set_text_align(match text.anchor {
             Anchor::Start => "left",
             Anchor::Middle => "center",
