@@ -56,6 +56,10 @@ pub(crate) fn find<Unit: Copy>(
     units: &[Unit],
     code: impl Fn(Unit) -> &'static str,
 ) -> Option<Unit> {
+    // What is written as the code itself needs no reading, and blanks are read again and again.
+    if let Some(exact) = units.iter().find(|unit| code(**unit) == text) {
+        return Some(*exact);
+    }
     let wanted = readings(text);
     if wanted.is_empty() {
         return None;
