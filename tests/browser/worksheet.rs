@@ -137,6 +137,8 @@ fn the_first_opening_shows_an_evaluated_example() {
         page.open("").await;
         page.text_with(".welcome", "invented example").await;
         page.text_with(ENERGY, "90\u{a0}kJ/mol").await;
+        // Every number has its interval, ln A too.
+        page.text_with(".number:nth-of-type(3) .limits", "(95\u{a0}%); moves with").await;
         page.text_with(&answer(1), "About 44\u{a0}h").await;
         page.text_with(&answer(2), "At most 2.6\u{a0}h").await;
         page.text_with(&answer(3), "About 86.6\u{a0}°C").await;

@@ -94,6 +94,11 @@ fn first(law: &LawFindings, basis: &Basis) -> Vec<Number> {
     // What has no unit is said to have none.
     let unit =
         if basis.base_unit.is_none() { ", in the unit of the column, not stated" } else { "" };
+    let (ln_a, name, limits) = with_limits(
+        &format!("{}{unit}", wording::logarithm_of("A", basis.base_unit)),
+        wording::bare(shown(factor, basis), display),
+        basis,
+    );
     let mut numbers = vec![
         with_limits("activation energy", energy(&law.activation_energy, basis), basis),
         with_limits(
@@ -101,11 +106,7 @@ fn first(law: &LawFindings, basis: &Basis) -> Vec<Number> {
             wording::rate(shown(rate, basis), basis.shown_unit, display),
             basis,
         ),
-        (
-            wording::bare(shown(factor, basis), display).value,
-            format!("{}{unit}", wording::logarithm_of("A", basis.base_unit)),
-            "moves with the activation energy".to_owned(),
-        ),
+        (ln_a, name, format!("{limits}; moves with the activation energy")),
     ];
     if let Some(z) = &law.z_value {
         numbers.push(with_limits("z", wording::kelvins(shown(z, basis), display), basis));
